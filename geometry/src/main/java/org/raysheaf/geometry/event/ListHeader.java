@@ -1,0 +1,44 @@
+package org.raysheaf.geometry.event;
+
+import java.time.Instant;
+import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.matter.Nuclide;
+import org.raysheaf.geometry.settings.Problems;
+
+/**
+ * What a list says about itself as a whole.
+ *
+ * @param systemDescription the text of the system description that the elements refer to, exactly as it was written
+ * @param durationS length of the acquisition by the clock (s), greater than 0
+ * @param liveTimeS time in which events could be recorded (s), greater than 0, at most the duration
+ * @param start when the acquisition began; the reference time of all activities
+ * @param nuclide what decayed, or null if it is not known (then nothing is corrected for decay or branching)
+ */
+public record ListHeader(
+        String systemDescription, double durationS, double liveTimeS, Instant start, @Nullable Nuclide nuclide) {
+    /** Checks the times. */
+    public ListHeader {
+        new Problems("list")
+                .above("duration_s", durationS, 0)
+                .above("live_time_s", liveTimeS, 0)
+                .rule(
+                        !(liveTimeS > durationS * (1 + 1e-9)),
+                        "live_time_s",
+                        "expected at most duration_s = " + durationS + ", found " + liveTimeS)
+                .orThrow();
+    }
+
+    /**
+     * Pairs of annihilation photons emitted, while events could be recorded, per becquerel at the start: branching · ∫ exp(−λt) dt ·
+     * live time / duration. Without a nuclide every count is taken as one pair and decay is ignored.
+     *
+     * @return the number (s)
+     */
+    public double pairsPerBecquerel() {
+        double liveFraction = liveTimeS / durationS;
+        if (nuclide == null) {
+            return liveTimeS;
+        }
+        return nuclide.positronBranching() * nuclide.effectiveTimeS(durationS) * liveFraction;
+    }
+}
