@@ -9,7 +9,7 @@ import org.raysheaf.geometry.settings.Problems;
  *
  * @param edgesMm full edge lengths along x, y, z (mm), each greater than 0
  */
-public record Box(Vector3 edgesMm) implements Solid {
+public record Box(Vector3 edgesMm) implements Shape {
     public Box {
         new Problems("box")
                 .above("edges_mm[0]", edgesMm.x(), 0)

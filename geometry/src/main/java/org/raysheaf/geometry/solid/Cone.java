@@ -10,7 +10,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param highRadiusMm radius at the +z end (mm), at least 0; at most one of the two is 0
  * @param lengthMm length along the axis (mm), greater than 0
  */
-public record Cone(double lowRadiusMm, double highRadiusMm, double lengthMm) implements Solid {
+public record Cone(double lowRadiusMm, double highRadiusMm, double lengthMm) implements Shape {
     public Cone {
         new Problems("cone")
                 .atLeast("low_radius_mm", lowRadiusMm, 0)

@@ -9,7 +9,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param radiusMm radius (mm), greater than 0
  * @param lengthMm length along the axis (mm), greater than 0
  */
-public record Cylinder(double radiusMm, double lengthMm) implements Solid {
+public record Cylinder(double radiusMm, double lengthMm) implements Shape {
     public Cylinder {
         new Problems("cylinder")
                 .above("radius_mm", radiusMm, 0)

@@ -10,7 +10,7 @@ import org.raysheaf.geometry.settings.Problems;
  *
  * @param semiAxesMm the semi-axes a, b, c (mm), each greater than 0
  */
-public record Ellipsoid(Vector3 semiAxesMm) implements Solid {
+public record Ellipsoid(Vector3 semiAxesMm) implements Shape {
     public Ellipsoid {
         new Problems("ellipsoid")
                 .above("semi_axes_mm[0]", semiAxesMm.x(), 0)

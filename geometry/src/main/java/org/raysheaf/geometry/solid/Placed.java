@@ -8,7 +8,7 @@ import org.raysheaf.geometry.frame.Vector3;
  * A solid at another place and in another orientation. Keeps the axes at hand, because lines are clipped in hot loops. Immutable.
  */
 public final class Placed implements Solid {
-    private final Solid solid;
+    private final Shape shape;
     private final Pose pose;
     private final Vector3 origin;
     private final Vector3 u;
@@ -18,11 +18,11 @@ public final class Placed implements Solid {
     /**
      * Places a solid.
      *
-     * @param solid the solid in its own frame
+     * @param shape the solid in its own frame
      * @param pose where that frame lies
      */
-    public Placed(Solid solid, Pose pose) {
-        this.solid = solid;
+    public Placed(Shape shape, Pose pose) {
+        this.shape = shape;
         this.pose = pose;
         this.origin = pose.origin();
         this.u = pose.u();
@@ -39,8 +39,8 @@ public final class Placed implements Solid {
      *
      * @return the solid in its own frame
      */
-    public Solid solid() {
-        return solid;
+    public Shape shape() {
+        return shape;
     }
 
     /**
@@ -57,7 +57,7 @@ public final class Placed implements Solid {
         double x = ox - origin.x();
         double y = oy - origin.y();
         double z = oz - origin.z();
-        return solid.clip(
+        return shape.clip(
                 along(u, x, y, z),
                 along(v, x, y, z),
                 along(w, x, y, z),
@@ -72,23 +72,23 @@ public final class Placed implements Solid {
         double x = worldX - origin.x();
         double y = worldY - origin.y();
         double z = worldZ - origin.z();
-        return solid.contains(along(u, x, y, z), along(v, x, y, z), along(w, x, y, z));
+        return shape.contains(along(u, x, y, z), along(v, x, y, z), along(w, x, y, z));
     }
 
     @Override
     public double volumeMm3() {
-        return solid.volumeMm3();
+        return shape.volumeMm3();
     }
 
     @Override
     public double reach(double ux, double uy, double uz) {
-        return solid.reach(along(u, ux, uy, uz), along(v, ux, uy, uz), along(w, ux, uy, uz))
+        return shape.reach(along(u, ux, uy, uz), along(v, ux, uy, uz), along(w, ux, uy, uz))
                 + along(origin, ux, uy, uz);
     }
 
     @Override
     public void pick(DoubleSupplier uniform, double[] point) {
-        solid.pick(uniform, point);
+        shape.pick(uniform, point);
         double x = point[0];
         double y = point[1];
         double z = point[2];
@@ -99,6 +99,6 @@ public final class Placed implements Solid {
 
     @Override
     public String toString() {
-        return "Placed[solid=" + solid + ", pose=" + pose + "]";
+        return "Placed[shape=" + shape + ", pose=" + pose + "]";
     }
 }

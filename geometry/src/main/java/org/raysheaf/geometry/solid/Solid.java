@@ -7,7 +7,7 @@ import org.raysheaf.geometry.frame.Vector3;
  * A convex body with a surface known in closed form. Because it is convex, a line meets it in one segment or not at all. Any NaN makes
  * the answer "no".
  */
-public sealed interface Solid permits Sphere, Ellipsoid, Cylinder, Cone, Box, Placed {
+public sealed interface Solid permits Shape, Placed {
     /**
      * Finds where a line runs inside the solid. Allocates nothing.
      *

@@ -8,7 +8,7 @@ import org.raysheaf.geometry.settings.Problems;
  *
  * @param radiusMm radius (mm), greater than 0
  */
-public record Sphere(double radiusMm) implements Solid {
+public record Sphere(double radiusMm) implements Shape {
     public Sphere {
         new Problems("sphere").above("radius_mm", radiusMm, 0).orThrow();
     }

@@ -19,7 +19,7 @@ class SolidChordTest {
     /** Closed forms, from origins up to 1e3 mm away: rounding only. */
     private static final Offset<Double> EXACT = within(1e-10);
 
-    static List<Solid> solids() {
+    static List<Shape> solids() {
         return Zoo.solids();
     }
 
@@ -107,7 +107,7 @@ class SolidChordTest {
 
     @ParameterizedTest
     @MethodSource("solids")
-    void linesAlongTheAxesAreNoSpecialCase(Solid solid) {
+    void linesAlongTheAxesAreNoSpecialCase(Shape solid) {
         double nudge = 1e-9;
         for (Vector3 along : List.of(Vector3.X, Vector3.Y, Vector3.Z)) {
             Vector3 beside = new Vector3(0.3, -0.2, 0.1);
@@ -120,7 +120,7 @@ class SolidChordTest {
 
     @ParameterizedTest
     @MethodSource("solids")
-    void notANumberAndNoDirectionMiss(Solid solid) {
+    void notANumberAndNoDirectionMiss(Shape solid) {
         double[] line = {0.1, 0.2, 0.3, 1, 2, 3};
         double[] span = new double[2];
         assertThat(solid.clip(line[0], line[1], line[2], line[3], line[4], line[5], span))

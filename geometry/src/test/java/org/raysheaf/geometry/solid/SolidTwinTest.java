@@ -15,13 +15,13 @@ class SolidTwinTest {
     private static final double HALF_LINE = 40;
     private static final double STEP = 0.1;
 
-    static List<Solid> solids() {
+    static List<Shape> solids() {
         return Zoo.solids();
     }
 
     @ParameterizedTest
     @MethodSource("solids")
-    void clipFindsTheSameSegmentAsMarching(Solid solid) {
+    void clipFindsTheSameSegmentAsMarching(Shape solid) {
         UniformRandomProvider random = RandomSource.XO_SHI_RO_256_PP.create(7);
         double[] span = new double[2];
         int hits = 0;
@@ -75,7 +75,7 @@ class SolidTwinTest {
 
     @ParameterizedTest
     @MethodSource("solids")
-    void volumeIsTheShareOfItsBounds(Solid solid) {
+    void volumeIsTheShareOfItsBounds(Shape solid) {
         UniformRandomProvider random = RandomSource.XO_SHI_RO_256_PP.create(8);
         Placed placed = new Placed(solid, Zoo.pose(random));
         Vector3 centre = placed.bounds().centre();
@@ -98,7 +98,7 @@ class SolidTwinTest {
     /** First and second moments of picked points against points found by rejection; every picked point lies inside. */
     @ParameterizedTest
     @MethodSource("solids")
-    void pickedPointsFillTheVolumeEvenly(Solid solid) {
+    void pickedPointsFillTheVolumeEvenly(Shape solid) {
         UniformRandomProvider random = RandomSource.XO_SHI_RO_256_PP.create(9);
         Placed placed = new Placed(solid, Zoo.pose(random));
         Vector3 centre = placed.bounds().centre();

@@ -9,8 +9,8 @@ import org.raysheaf.geometry.frame.Vector3;
 final class Zoo {
     private Zoo() {}
 
-    static List<Solid> solids() {
-        return List.of(
+    static List<Shape> solids() {
+        return List.<Shape>of(
                 new Sphere(10),
                 new Ellipsoid(new Vector3(7, 10, 4)),
                 new Cylinder(6, 14),
