@@ -101,6 +101,6 @@ class DecayTimesTest {
     void steadyAndNearlySteadySourcesAgree() {
         DecayTimes steady = new DecayTimes(10, 1000, null);
         DecayTimes nearly = new DecayTimes(10, 1000, new Nuclide("long", 1e15, 1));
-        assertThat((double) nearly.timePs(0.3)).isCloseTo(steady.timePs(0.3), within(1e3));
+        assertThat((double) nearly.timePs(0.3)).isCloseTo((double) steady.timePs(0.3), within(1e3));
     }
 }

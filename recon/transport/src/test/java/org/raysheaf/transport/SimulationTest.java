@@ -127,7 +127,7 @@ class SimulationTest {
     @Test
     void energiesAreThoseOfAnnihilation() throws IOException {
         Run run = run(acquisition(null, 1, null, null), Trials.phantom(BODY), RINGS, 1);
-        assertThat(run.events().energies()).isNotEmpty().containsOnly(510.99895f);
+        assertThat(run.events().energies()).isNotEmpty().containsOnly((float) Photon.ANNIHILATION_KEV);
         assertThat(Trials.lasting(1, null, 1).attributes())
                 .containsExactly(Attribute.ELEMENT_A, Attribute.ELEMENT_B, Attribute.TIME, Attribute.TIME_DIFFERENCE);
     }
