@@ -4,7 +4,9 @@ import java.util.List;
 import org.raysheaf.geometry.solid.Bounds;
 import org.raysheaf.geometry.solid.Placed;
 
-/** A phantom in its place: what is where, and how much activity there is. Immutable, safe for use by several threads. */
+/**
+ * A phantom in its place: what is where, and how much activity there is. Immutable, safe for use by several threads.
+ */
 public final class Phantom {
     private static final double MM3_PER_ML = 1000;
 
@@ -92,7 +94,8 @@ public final class Phantom {
     }
 
     /**
-     * Volume of a part that no later part replaces: exact where no later part can overlap it, else an estimate, see {@link VisibleVolume}.
+     * Volume of a part that no later part replaces: exact where no later part can overlap it, else an estimate, see
+     * {@link VisibleVolume}.
      *
      * @param part index of the part
      * @return the volume (mm³)

@@ -9,7 +9,8 @@ import org.raysheaf.geometry.settings.Problems;
  * A phantom as a description file ({@code raysheaf: phantom/1}) gives it.
  *
  * @param name how people call the phantom
- * @param parts its parts, at least one, no two of the same name; a later part replaces earlier ones wherever they overlap
+ * @param parts its parts, at least one, no two of the same name; a later part replaces earlier ones wherever they
+ *     overlap
  */
 public record PhantomDescription(String name, List<PhantomPart> parts) {
     public PhantomDescription {

@@ -13,8 +13,9 @@ import org.raysheaf.geometry.solid.Shape;
  * @param name how reports call the part
  * @param shape the solid, in its own frame: centred on the origin, its axis along z
  * @param centreMm where its centre goes (mm)
- * @param turnDeg how it is turned before it is moved there: about the world's x axis by the first angle, then about y by the second, then
- *     about z by the third (degrees, right-hand rule). {@code [90, 0, 0]} lays a cylinder along y, {@code [0, 90, 0]} along x.
+ * @param turnDeg how it is turned before it is moved there: about the world's x axis by the first angle, then about y
+ *     by the second, then about z by the third (degrees, right-hand rule). {@code [90, 0, 0]} lays a cylinder along y,
+ *     {@code [0, 90, 0]} along x.
  * @param material name of what it is made of
  * @param concentrationKBqPerMl activity concentration at the start of the acquisition (kBq/mL), at least 0
  */

@@ -12,10 +12,11 @@ import org.raysheaf.geometry.solid.Placed;
 /**
  * The volume of a part that later parts leave to it.
  *
- * <p>If every later part is separated from it by a plane that is found at once (see {@link #apart}), this is the volume of its solid,
- * exactly. Otherwise it is estimated by randomised quasi-Monte Carlo: a Sobol sequence in three dimensions fills the solid, the share of its points
- * that no later part holds is the answer, and {@value #REPLICATES} copies of the sequence under random shifts modulo 1 (Cranley &amp; Patterson
- * 1976, SIAM J. Numer. Anal. 13:904) give its mean and standard error. The shifts have a fixed seed for each part, so a phantom always gives the same numbers.
+ * <p>If every later part is separated from it by a plane that is found at once (see {@link #apart}), this is the volume
+ * of its solid, exactly. Otherwise it is estimated by randomised quasi-Monte Carlo: a Sobol sequence in three
+ * dimensions fills the solid, the share of its points that no later part holds is the answer, and {@value #REPLICATES}
+ * copies of the sequence under random shifts modulo 1 (Cranley &amp; Patterson 1976, SIAM J. Numer. Anal. 13:904) give
+ * its mean and standard error. The shifts have a fixed seed for each part, so a phantom always gives the same numbers.
  */
 final class VisibleVolume {
     private static final int REPLICATES = 16;
@@ -84,8 +85,9 @@ final class VisibleVolume {
     }
 
     /**
-     * Whether some plane that is easy to guess separates two solids: perpendicular to an axis of either, to the line between their centres, or
-     * to that line's part across an axis of either. That settles spheres, and cylinders, cones and boxes side by side or end to end.
+     * Whether some plane that is easy to guess separates two solids: perpendicular to an axis of either, to the line
+     * between their centres, or to that line's part across an axis of either. That settles spheres, and cylinders,
+     * cones and boxes side by side or end to end.
      */
     static boolean apart(Placed a, Placed b) {
         Vector3 between = b.pose().origin().minus(a.pose().origin());
@@ -104,7 +106,10 @@ final class VisibleVolume {
         return false;
     }
 
-    /** Whether a lies wholly on the near side and b wholly on the far side of a plane across n; touching is allowed, rounding too. */
+    /**
+     * Whether a lies wholly on the near side and b wholly on the far side of a plane across n; touching is allowed,
+     * rounding too.
+     */
     private static boolean separates(Vector3 n, Placed a, Placed b) {
         double farthestOfA = a.reach(n.x(), n.y(), n.z());
         double nearestOfB = -b.reach(-n.x(), -n.y(), -n.z());

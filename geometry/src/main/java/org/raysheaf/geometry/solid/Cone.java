@@ -4,7 +4,8 @@ import java.util.function.DoubleSupplier;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
- * A circular cone or frustum with flat ends, its axis along z from −length/2 to +length/2. Between the ends the radius changes linearly.
+ * A circular cone or frustum with flat ends, its axis along z from −length/2 to +length/2. Between the ends the radius
+ * changes linearly.
  *
  * @param lowRadiusMm radius at the −z end (mm), at least 0
  * @param highRadiusMm radius at the +z end (mm), at least 0; at most one of the two is 0
@@ -30,9 +31,10 @@ public record Cone(double lowRadiusMm, double highRadiusMm, double lengthMm) imp
     /**
      * {@inheritDoc}
      *
-     * <p>Between the end planes the mantle is crossed at the roots of f(t) = x² + y² − r(z)². The roots cut the line's part between the planes
-     * into at most three pieces, and since the frustum is convex just one of them is inside. Asking each piece by its midpoint needs no
-     * distinction between steep and shallow lines, parallels to the mantle, or the mirror cone beyond the tip.
+     * <p>Between the end planes the mantle is crossed at the roots of f(t) = x² + y² − r(z)². The roots cut the line's
+     * part between the planes into at most three pieces, and since the frustum is convex just one of them is inside.
+     * Asking each piece by its midpoint needs no distinction between steep and shallow lines, parallels to the mantle,
+     * or the mirror cone beyond the tip.
      */
     @Override
     public boolean clip(double ox, double oy, double oz, double dx, double dy, double dz, double[] span) {
@@ -116,8 +118,9 @@ public record Cone(double lowRadiusMm, double highRadiusMm, double lengthMm) imp
     /**
      * {@inheritDoc}
      *
-     * <p>The volume below height z grows like r(z)³ − r₁³, so r³ is uniform between r₁³ and r₂³. The share of the length below r,
-     * (r − r₁)/(r₂ − r₁), is written as u (r₁² + r₁r₂ + r₂²)/(r² + r r₁ + r₁²), which also holds for equal radii.
+     * <p>The volume below height z grows like r(z)³ − r₁³, so r³ is uniform between r₁³ and r₂³. The share of the
+     * length below r, (r − r₁)/(r₂ − r₁), is written as u (r₁² + r₁r₂ + r₂²)/(r² + r r₁ + r₁²), which also holds for
+     * equal radii.
      */
     @Override
     public void pick(DoubleSupplier uniform, double[] point) {

@@ -5,8 +5,8 @@ import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
- * An ellipsoid about the origin, x²/a² + y²/b² + z²/c² ≤ 1: the unit ball after stretching each axis. Stretching keeps lines straight and
- * their parameters unchanged, so everything is asked of the unit ball.
+ * An ellipsoid about the origin, x²/a² + y²/b² + z²/c² ≤ 1: the unit ball after stretching each axis. Stretching keeps
+ * lines straight and their parameters unchanged, so everything is asked of the unit ball.
  *
  * @param semiAxesMm the semi-axes a, b, c (mm), each greater than 0
  */

@@ -5,7 +5,8 @@ import org.raysheaf.geometry.frame.Pose;
 import org.raysheaf.geometry.frame.Vector3;
 
 /**
- * A solid at another place and in another orientation. Keeps the axes at hand, because lines are clipped in hot loops. Immutable.
+ * A solid at another place and in another orientation. Keeps the axes at hand, because lines are clipped in hot loops.
+ * Immutable.
  */
 public final class Placed implements Solid {
     private final Shape shape;

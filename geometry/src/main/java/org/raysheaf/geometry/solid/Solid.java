@@ -4,15 +4,15 @@ import java.util.function.DoubleSupplier;
 import org.raysheaf.geometry.frame.Vector3;
 
 /**
- * A convex body with a surface known in closed form. Because it is convex, a line meets it in one segment or not at all. Any NaN makes
- * the answer "no".
+ * A convex body with a surface known in closed form. Because it is convex, a line meets it in one segment or not at
+ * all. Any NaN makes the answer "no".
  */
 public sealed interface Solid permits Shape, Placed {
     /**
      * Finds where a line runs inside the solid. Allocates nothing.
      *
-     * <p>A line that only touches the solid (a tangent, or a line within a flat face) does not run inside it; nor does a "line" without a
-     * direction.
+     * <p>A line that only touches the solid (a tangent, or a line within a flat face) does not run inside it; nor does
+     * a "line" without a direction.
      *
      * @param ox a point of the line (mm)
      * @param oy a point of the line (mm)
@@ -20,8 +20,8 @@ public sealed interface Solid permits Shape, Placed {
      * @param dx direction, any length from 1e-100 to 1e100
      * @param dy direction
      * @param dz direction
-     * @param span receives the parameters of entry and exit in its first two entries, entry below exit, either sign; of no meaning if the
-     *     answer is false
+     * @param span receives the parameters of entry and exit in its first two entries, entry below exit, either sign; of
+     *     no meaning if the answer is false
      * @return whether a segment longer than 0 lies inside
      */
     boolean clip(double ox, double oy, double oz, double dx, double dy, double dz, double[] span);

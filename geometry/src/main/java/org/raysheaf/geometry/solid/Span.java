@@ -1,11 +1,12 @@
 package org.raysheaf.geometry.solid;
 
 /**
- * Pieces of line clipping that several solids share. Each narrows a span {t₀, t₁} of line parameters to its part inside some convex region.
+ * Pieces of line clipping that several solids share. Each narrows a span {t₀, t₁} of line parameters to its part inside
+ * some convex region.
  *
- * <p>{@link Math#max} and {@link Math#min} hand NaN on, and {@link #proper} refuses it, so a NaN anywhere ends in "no". Quadratic surfaces are
- * solved from the point of the line that is nearest to their centre: from a far origin the usual discriminant b² − ac would lose all its
- * digits.
+ * <p>{@link Math#max} and {@link Math#min} hand NaN on, and {@link #proper} refuses it, so a NaN anywhere ends in "no".
+ * Quadratic surfaces are solved from the point of the line that is nearest to their centre: from a far origin the usual
+ * discriminant b² − ac would lose all its digits.
  */
 final class Span {
     private Span() {}

@@ -17,12 +17,15 @@ import org.raysheaf.geometry.settings.Problems;
  * @param phantom path of the phantom description
  * @param nuclide what decays; without one, activity does not decay and every decay gives a pair
  * @param durationS length of the acquisition by the clock (s), greater than 0
- * @param liveTimeS time in which events can be recorded, spread evenly over the acquisition (s); without it, all of the duration
+ * @param liveTimeS time in which events can be recorded, spread evenly over the acquisition (s); without it, all of the
+ *     duration
  * @param start when the acquisition begins; activities in the phantom hold at that time
  * @param seed start of all random numbers; the same seed gives the same list
- * @param maxEvents the acquisition stops early when it has recorded this many events, at least 1; without it, it never does
+ * @param maxEvents the acquisition stops early when it has recorded this many events, at least 1; without it, it never
+ *     does
  * @param timeDifferences whether to record the time differences of pairs (without any resolution blur)
- * @param energies whether to record energies (without any resolution blur: {@value Photon#ANNIHILATION_KEV} keV for every photon)
+ * @param energies whether to record energies (without any resolution blur: {@value Photon#ANNIHILATION_KEV} keV for
+ *     every photon)
  */
 public record Acquisition(
         String system,

@@ -8,9 +8,10 @@ import org.raysheaf.geometry.phantom.PhantomPart;
 import org.raysheaf.geometry.solid.Placed;
 
 /**
- * Where decays happen. A part is chosen in proportion to concentration · volume of its whole solid, then a point in that solid, and the point is
- * dropped if a later part fills it. Candidates therefore come at the rate of all solids as if none were replaced, and what is left has exactly the
- * density that the phantom describes, without any volume of an overlap being known. Immutable.
+ * Where decays happen. A part is chosen in proportion to concentration · volume of its whole solid, then a point in
+ * that solid, and the point is dropped if a later part fills it. Candidates therefore come at the rate of all solids as
+ * if none were replaced, and what is left has exactly the density that the phantom describes, without any volume of an
+ * overlap being known. Immutable.
  */
 final class ActiveParts {
     private static final double MM3_PER_ML = 1000;

@@ -6,9 +6,10 @@ import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.RayPath;
 
 /**
- * Follows a photon along its straight line through the crystals to its first interaction. The optical depth of that point (path over attenuation
- * length, added up) is exponentially distributed with mean 1; gaps add nothing to it, so a photon may slip between crystals, or through them, into the
- * block behind. Holds the photon's fate until the next one; not safe for use by several threads.
+ * Follows a photon along its straight line through the crystals to its first interaction. The optical depth of that
+ * point (path over attenuation length, added up) is exponentially distributed with mean 1; gaps add nothing to it, so a
+ * photon may slip between crystals, or through them, into the block behind. Holds the photon's fate until the next one;
+ * not safe for use by several threads.
  */
 final class CrystalWalk {
     private final DetectorSystem system;

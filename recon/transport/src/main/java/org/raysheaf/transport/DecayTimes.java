@@ -9,9 +9,9 @@ import org.raysheaf.geometry.matter.Nuclide;
 /**
  * When decays happen: a Poisson process whose rate falls exponentially, cut into slices of equal expected number.
  *
- * <p>Times are held as <em>shares</em>: the share of all expected decays that come earlier, F(t) = (1 − e^(−λt))/(1 − e^(−λT)), in which the
- * process is uniform from 0 to 1. Slice k of n is the range k/n to (k + 1)/n. How many slices there are follows from the expected number alone, so
- * they are the same on every machine. Immutable.
+ * <p>Times are held as <em>shares</em>: the share of all expected decays that come earlier, F(t) = (1 − e^(−λt))/(1 −
+ * e^(−λT)), in which the process is uniform from 0 to 1. Slice k of n is the range k/n to (k + 1)/n. How many slices
+ * there are follows from the expected number alone, so they are the same on every machine. Immutable.
  */
 final class DecayTimes {
     /** Few enough that a slice is small in memory, many enough that starting one costs nothing: about 0.1 s of work. */
@@ -47,8 +47,8 @@ final class DecayTimes {
     /**
      * Draws the decays of a slice, in order.
      *
-     * <p>Given their number N, the decays of a Poisson process are N sorted uniform numbers; and the first N of N + 1 sums of exponential
-     * numbers, divided by the last sum, are just that, without any sorting.
+     * <p>Given their number N, the decays of a Poisson process are N sorted uniform numbers; and the first N of N + 1
+     * sums of exponential numbers, divided by the last sum, are just that, without any sorting.
      *
      * @param slice the slice, from 0
      * @param random its stream

@@ -4,8 +4,8 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 
 /**
- * Writes detected pairs into the columns of a block. An ideal readout: the crystal of each first interaction, and the exact difference of flight
- * times. An event's time is that of its decay, which keeps the list in order.
+ * Writes detected pairs into the columns of a block. An ideal readout: the crystal of each first interaction, and the
+ * exact difference of flight times. An event's time is that of its decay, which keeps the list in order.
  */
 final class PairReadout {
     private final EventBlock block;

@@ -2,7 +2,10 @@ package org.raysheaf.transport;
 
 import org.apache.commons.rng.UniformRandomProvider;
 
-/** A photon on its way: a point, a unit direction, an energy. Filled again for every decay; not safe for use by several threads. */
+/**
+ * A photon on its way: a point, a unit direction, an energy. Filled again for every decay; not safe for use by several
+ * threads.
+ */
 final class Photon {
     /** Speed of light in vacuum: 0.299792458 mm/ps (exact, SI definition). */
     static final double SPEED_MM_PER_PS = 0.299792458;
@@ -38,7 +41,10 @@ final class Photon {
         energyKeV = ANNIHILATION_KEV;
     }
 
-    /** A point of the unit sphere from a point of the unit disk, without sines (Marsaglia 1972, Ann. Math. Stat. 43:645). */
+    /**
+     * A point of the unit sphere from a point of the unit disk, without sines (Marsaglia 1972, Ann. Math. Stat.
+     * 43:645).
+     */
     private void aimAnywhere(UniformRandomProvider random) {
         double a;
         double b;

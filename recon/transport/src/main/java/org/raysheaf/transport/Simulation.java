@@ -16,9 +16,9 @@ import org.raysheaf.geometry.settings.Problems;
 /**
  * A simulated acquisition: decays in a phantom, photons into a detector system, pairs into a list.
  *
- * <p>The acquisition is cut into slices of about 65,000 expected decays, each with a random stream of its own. Slices are simulated side by side, a few
- * ahead of the one being written, and written in order of time; so memory stays flat, and the list is the same on any number of threads.
- * Immutable, safe for use by several threads.
+ * <p>The acquisition is cut into slices of about 65,000 expected decays, each with a random stream of its own. Slices
+ * are simulated side by side, a few ahead of the one being written, and written in order of time; so memory stays flat,
+ * and the list is the same on any number of threads. Immutable, safe for use by several threads.
  */
 public final class Simulation {
     private static final double PS_PER_S = 1e12;
@@ -60,8 +60,8 @@ public final class Simulation {
      * @param sink receives the events in order of time; it must take the columns of {@link Acquisition#attributes()}
      * @param pool does the work
      * @param progress hears of it, in decays
-     * @return what came of it; with {@code max_events} the header is known only now. Who must know it first may run twice, the first time with
-     *     a sink that ignores what it gets: both runs give the same.
+     * @return what came of it; with {@code max_events} the header is known only now. Who must know it first may run
+     *     twice, the first time with a sink that ignores what it gets: both runs give the same.
      * @throws IOException if the sink fails
      */
     public Simulated run(EventSink sink, ForkJoinPool pool, Progress progress) throws IOException {

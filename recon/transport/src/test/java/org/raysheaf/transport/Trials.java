@@ -35,7 +35,10 @@ final class Trials {
                 List.of(new Placement.Rings("block", 12, 42, 0, List.of(-20.8, 0.0, 20.8)))));
     }
 
-    /** Two wide single crystals that face each other along y, fronts at y = ±gap/2: photon directions, not edges, matter. */
+    /**
+     * Two wide single crystals that face each other along y, fronts at y = ±gap/2: photon directions, not edges,
+     * matter.
+     */
     static DetectorSystem slabs(double gapMm, double thicknessMm, double attenuationLengthMm) {
         Vector3 size = new Vector3(1000, 1000, thicknessMm);
         return facing(new CrystalBlock("slab", 1, 1, 1, size, size, "crystal"), gapMm, attenuationLengthMm);
