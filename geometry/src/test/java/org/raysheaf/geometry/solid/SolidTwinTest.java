@@ -13,7 +13,7 @@ import org.raysheaf.geometry.frame.Vector3;
 /** Every solid, under random poses, against its own {@code contains}: the slow and obvious way. */
 class SolidTwinTest {
     private static final double HALF_LINE = 40;
-    private static final double STEP = 0.1;
+    private static final double STEP = 0.2;
 
     static List<Shape> solids() {
         return Zoo.solids();
@@ -25,7 +25,7 @@ class SolidTwinTest {
         UniformRandomProvider random = RandomSource.XO_SHI_RO_256_PP.create(7);
         double[] span = new double[2];
         int hits = 0;
-        for (int i = 0; i < 500; i++) {
+        for (int i = 0; i < 400; i++) {
             Placed placed = new Placed(solid, Zoo.pose(random));
             Vector3 direction = Zoo.direction(random);
             Vector3 origin = placed.pose().origin().plus(Zoo.point(random, 8));
@@ -43,7 +43,7 @@ class SolidTwinTest {
                 assertThat(span[1] * length).isCloseTo(last, within(1e-8));
             }
         }
-        assertThat(hits).isGreaterThan(60);
+        assertThat(hits).isGreaterThan(50);
     }
 
     /** The distance of the first surface, stepping forward from far behind, then halving the last step. */
@@ -80,7 +80,7 @@ class SolidTwinTest {
         Placed placed = new Placed(solid, Zoo.pose(random));
         Vector3 centre = placed.bounds().centre();
         Vector3 half = placed.bounds().halfExtents();
-        int points = 400_000;
+        int points = 200_000;
         int inside = 0;
         for (int i = 0; i < points; i++) {
             Vector3 p = Zoo.point(random, 1);
@@ -103,7 +103,7 @@ class SolidTwinTest {
         Placed placed = new Placed(solid, Zoo.pose(random));
         Vector3 centre = placed.bounds().centre();
         Vector3 half = placed.bounds().halfExtents();
-        int points = 200_000;
+        int points = 100_000;
         double[] picked = new double[6];
         double[] rejected = new double[6];
         double[] p = new double[3];

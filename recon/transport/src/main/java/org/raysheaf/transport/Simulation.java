@@ -1,6 +1,7 @@
 package org.raysheaf.transport;
 
 import java.io.IOException;
+import java.io.UncheckedIOException;
 import java.util.ArrayDeque;
 import java.util.Deque;
 import java.util.concurrent.ForkJoinPool;
@@ -55,13 +56,30 @@ public final class Simulation {
     }
 
     /**
-     * Runs the acquisition. The calling thread writes, the pool simulates.
+     * The header of the list, before it is written. If the acquisition may stop early, the time of its last event is found by
+     * running it once without keeping anything, which takes as long as {@link #run} itself.
+     *
+     * @param pool does the work
+     * @return the same header that {@link #run} will return
+     */
+    public ListHeader header(ForkJoinPool pool) {
+        if (acquisition.maxEvents() == null) {
+            return acquisition.header(systemText);
+        }
+        try {
+            return run(block -> {}, pool, Progress.SILENT).header();
+        } catch (IOException e) {
+            throw new UncheckedIOException(e); // that sink cannot fail
+        }
+    }
+
+    /**
+     * Runs the acquisition. The calling thread writes, the pool simulates. Every run gives the same events.
      *
      * @param sink receives the events in order of time; it must take the columns of {@link Acquisition#attributes()}
      * @param pool does the work
      * @param progress hears of it, in decays
-     * @return what came of it; with {@code max_events} the header is known only now. Who must know it first may run
-     *     twice, the first time with a sink that ignores what it gets: both runs give the same.
+     * @return what came of it
      * @throws IOException if the sink fails
      */
     public Simulated run(EventSink sink, ForkJoinPool pool, Progress progress) throws IOException {

@@ -6,6 +6,7 @@ import static org.assertj.core.api.Assertions.within;
 
 import java.io.IOException;
 import java.time.Instant;
+import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
@@ -68,8 +69,12 @@ class SimulationTest {
 
     @Test
     void eventsComeInOrderFromPairsThatTheRuleAdmits() throws IOException {
-        Collected events = run(acquisition(null, 30, null, null), Trials.phantom(BODY), RINGS, 2)
+        // near the crystals, where many lines join blocks fewer than three positions apart
+        PhantomPart aside =
+                PhantomPart.of("aside", new Sphere(2)).at(new Vector3(36, 0, 0)).holding(100);
+        Collected events = run(acquisition(null, 30, null, null), Trials.phantom(aside), RINGS, 2)
                 .events();
+        assertThat(events.size()).isGreaterThan(1000);
         for (int i = 0; i < events.size(); i++) {
             assertThat(RINGS.admits(events.elementA(i), events.elementB(i))).isTrue();
             assertThat(events.timePs(i)).isGreaterThanOrEqualTo(i == 0 ? 0 : events.timePs(i - 1));
@@ -145,6 +150,17 @@ class SimulationTest {
             assertThat(part.outcome().header().liveTimeS()).isEqualTo(0.5 * stopped);
             double pairs = (double) part.outcome().pairs() / full.outcome().pairs();
             assertThat(pairs).isCloseTo(0.5, within(0.02));
+        }
+    }
+
+    @Test
+    void headerIsKnownBeforeTheList() throws IOException {
+        ForkJoinPool pool = ForkJoinPool.commonPool();
+        for (Long limit : Arrays.asList(null, 500L)) {
+            Simulation simulation =
+                    new Simulation(acquisition(null, 20, null, limit), Trials.phantom(BODY), RINGS, "text");
+            Simulated outcome = simulation.run(new Collected(), pool, Progress.SILENT);
+            assertThat(simulation.header(pool)).isEqualTo(outcome.header());
         }
     }
 
