@@ -37,7 +37,11 @@ final class ChunkEncoder implements AutoCloseable {
         deflater.reset();
         deflater.setInput(shuffled, 0, bytes);
         deflater.finish();
-        return ByteBuffer.wrap(stored, 0, deflater.deflate(stored));
+        int length = 0;
+        while (!deflater.finished()) {
+            length += deflater.deflate(stored, length, stored.length - length);
+        }
+        return ByteBuffer.wrap(stored, 0, length);
     }
 
     @Override

@@ -38,11 +38,11 @@ public final class ListWriter implements EventSink, AutoCloseable {
     private final Map<Attribute, ColumnWriter> columns = new EnumMap<>(Attribute.class);
     private long events;
 
-    private ListWriter(Hdf5Writer file, Set<Attribute> attributes, Compression compression) {
+    private ListWriter(Hdf5Writer file, Set<Attribute> attributes, Compression compression, int chunkLength) {
         this.file = file;
         for (Attribute attribute : Attribute.values()) {
             if (attributes.contains(attribute)) {
-                columns.put(attribute, newColumn(attribute, compression));
+                columns.put(attribute, newColumn(attribute, compression, chunkLength));
             }
         }
     }
@@ -78,12 +78,24 @@ public final class ListWriter implements EventSink, AutoCloseable {
     public static ListWriter create(
             ListHeader header, Set<Attribute> attributes, Path path, boolean replace, Compression compression)
             throws IOException {
+        return create(header, attributes, path, replace, compression, ListFormat.CHUNK_LENGTH);
+    }
+
+    /** The same with another chunk length, for tests that want many chunks of few events. */
+    static ListWriter create(
+            ListHeader header,
+            Set<Attribute> attributes,
+            Path path,
+            boolean replace,
+            Compression compression,
+            int chunkLength)
+            throws IOException {
         if (!attributes.contains(Attribute.ELEMENT_A) || !attributes.contains(Attribute.ELEMENT_B)) {
             throw new IllegalArgumentException("a list has at least element_a and element_b, found " + attributes);
         }
         Hdf5Writer file = Hdf5Writer.create(path, replace);
         try {
-            ListWriter writer = new ListWriter(file, attributes, compression);
+            ListWriter writer = new ListWriter(file, attributes, compression, chunkLength);
             writer.writeHeader(header);
             return writer;
         } catch (IOException | RuntimeException e) {
@@ -92,14 +104,14 @@ public final class ListWriter implements EventSink, AutoCloseable {
         }
     }
 
-    private ColumnWriter newColumn(Attribute attribute, Compression compression) {
+    private ColumnWriter newColumn(Attribute attribute, Compression compression, int chunkLength) {
         ElementType type = switch (attribute.type()) {
             case UINT8 -> ElementType.UINT8;
             case UINT32 -> ElementType.UINT32;
             case INT64 -> ElementType.INT64;
             case FLOAT32 -> ElementType.FLOAT32;
         };
-        ColumnWriter column = file.root().column(attribute.columnName(), type, ListFormat.CHUNK_LENGTH, compression);
+        ColumnWriter column = file.root().column(attribute.columnName(), type, chunkLength, compression);
         column.attribute(ListFormat.UNIT, attribute.unit());
         column.attribute(ListFormat.MEANING, attribute.meaning());
         return column;

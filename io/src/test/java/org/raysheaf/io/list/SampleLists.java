@@ -55,8 +55,12 @@ final class SampleLists {
     }
 
     static Path write(Path path, Compression compression, EventBlock... blocks) throws IOException {
+        return write(path, compression, ListFormat.CHUNK_LENGTH, blocks);
+    }
+
+    static Path write(Path path, Compression compression, int chunkLength, EventBlock... blocks) throws IOException {
         Set<Attribute> attributes = blocks.length == 0 ? ALL : blocks[0].attributes();
-        try (ListWriter writer = ListWriter.create(HEADER, attributes, path, true, compression)) {
+        try (ListWriter writer = ListWriter.create(HEADER, attributes, path, true, compression, chunkLength)) {
             for (EventBlock block : blocks) {
                 writer.accept(block);
             }
