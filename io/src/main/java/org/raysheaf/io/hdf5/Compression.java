@@ -4,6 +4,6 @@ package org.raysheaf.io.hdf5;
 public enum Compression {
     /** As they are: fastest. */
     NONE,
-    /** Bytes regrouped by significance (shuffle), then deflate at its fastest level: about half the size for typical lists. */
+    /** Bytes regrouped by significance (shuffle), then deflate at its fastest level. Pays where files are sent or kept. */
     DEFLATE
 }

@@ -125,11 +125,12 @@ public final class StoredDataset {
     }
 
     /**
-     * Starts reading the values as a stream.
+     * Starts reading the values as a stream. Chunks of more than one dimension are gathered in memory first.
      *
      * @param checksums one CRC-32C per chunk ({@link ColumnWriter} says over what), or null to read unverified
      * @return a reader at the first value; it can be used until the file is closed
-     * @throws Hdf5Exception if the values are no numbers, lie in chunks of more than one dimension, or the number of checksums is wrong
+     * @throws Hdf5Exception if the values are no numbers, lie in chunks of several dimensions and exceed an array, or the number of checksums
+     *     is wrong
      * @throws IOException if the file cannot be read
      */
     public ValueReader values(int @Nullable [] checksums) throws IOException {
@@ -147,10 +148,11 @@ public final class StoredDataset {
         if (!layout.chunked()) {
             return Segments.contiguous(file, place, layout.address(), space.count() * type.bytes());
         }
-        if (space.shape().length != 1) {
-            throw file.unsupported(place, "expected one dimension or no chunks, found chunks of more dimensions");
+        ChunkSource chunks = new ChunkSource(file, place, layout, filters, space.shape().length);
+        if (space.shape().length == 1) {
+            return new ChunkSegments(chunks, type.bytes(), space.count());
         }
-        return new ChunkSegments(file, place, layout, filters, type.bytes(), space.count());
+        return ChunkGather.whole(chunks, space.shape(), type.bytes(), arrayLength());
     }
 
     /** Values in a chunk, 0 if the values are not in one-dimensional chunks. */

@@ -31,7 +31,7 @@ import org.raysheaf.io.hdf5.Hdf5Writer;
  * }
  * </pre>
  *
- * <p>The same events give the same bytes, however they were cut into blocks. Not safe for use by several threads.
+ * <p>The same events give the same bytes, however they were cut into blocks (compressed ones if Java brings the same deflate). Not safe for use by several threads.
  */
 public final class ListWriter implements EventSink, AutoCloseable {
     private final Hdf5Writer file;
@@ -48,7 +48,7 @@ public final class ListWriter implements EventSink, AutoCloseable {
     }
 
     /**
-     * Starts a list, its columns compressed.
+     * Starts a list, its columns stored as they are, which is fastest.
      *
      * @param header what the list says about itself
      * @param attributes what it says about every event; at least both elements
@@ -60,11 +60,11 @@ public final class ListWriter implements EventSink, AutoCloseable {
      */
     public static ListWriter create(ListHeader header, Set<Attribute> attributes, Path path, boolean replace)
             throws IOException {
-        return create(header, attributes, path, replace, Compression.DEFLATE);
+        return create(header, attributes, path, replace, Compression.NONE);
     }
 
     /**
-     * Starts a list.
+     * Starts a list. Compressed, a typical list takes three fifths of the room, and its writing several times as long.
      *
      * @param header what the list says about itself
      * @param attributes what it says about every event; at least both elements

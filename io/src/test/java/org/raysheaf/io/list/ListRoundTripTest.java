@@ -94,7 +94,7 @@ class ListRoundTripTest {
     @Test
     void givesTheSameBytesHoweverTheEventsWereCutIntoBlocks() throws IOException {
         EventBlock whole = SampleLists.block(300_000, 6);
-        Path once = SampleLists.write(folder.resolve("once.h5"), whole);
+        Path once = SampleLists.write(folder.resolve("once.h5"), Compression.NONE, whole);
         Path pieces = folder.resolve("pieces.h5");
         EventBlock piece = new EventBlock(SampleLists.ALL, 777);
         try (ListWriter writer = ListWriter.create(SampleLists.HEADER, SampleLists.ALL, pieces, false);
