@@ -8,6 +8,7 @@ import java.util.Map;
 import java.util.Optional;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.matter.Nuclide;
 
 /** One fingerprint for a whole list without reading it: SHA-256 over its header and the checksums of all chunks. */
 final class ListDigest {
@@ -23,7 +24,13 @@ final class ListDigest {
      */
     static Optional<String> of(ListHeader header, long events, Map<Attribute, ColumnsReader.Column> columns) {
         MessageDigest digest = ListFormat.newSha256();
-        add(digest, header + "\n" + events);
+        add(digest, ListFormat.sha256(header.systemDescription()));
+        add(digest, "\n" + header.durationS() + "\n" + header.liveTimeS() + "\n" + header.start());
+        Nuclide nuclide = header.nuclide();
+        if (nuclide != null) {
+            add(digest, "\n" + nuclide.name() + "\n" + nuclide.halfLifeS() + "\n" + nuclide.positronBranching());
+        }
+        add(digest, "\n" + events);
         for (Map.Entry<Attribute, ColumnsReader.Column> column : columns.entrySet()) {
             int[] checksums = column.getValue().checksums;
             if (checksums == null) {
