@@ -51,20 +51,44 @@ public final class ElementResponse {
      * @return the response of all elements
      */
     public static ElementResponse tabulate(DetectorSystem system, ForkJoinPool pool, Progress progress) {
+        ElementResponse response = untabulated(system);
+        int rows = response.classes.classes() * response.u.nodes();
+        progress.begin("element response", rows, "rows");
+        pool.submit(() -> IntStream.range(0, rows).parallel().forEach(row -> {
+                    response.fillRow(row);
+                    progress.advance(1);
+                }))
+                .join();
+        progress.end(String.format(
+                "%d tables of %d x %d directions", response.classes.classes(), response.u.nodes(), response.v.nodes()));
+        return response;
+    }
+
+    /**
+     * Takes tables that were made before, for the same system.
+     *
+     * @param system the system
+     * @param tables what {@link #tables()} gave; copied
+     * @return the response of all elements
+     * @throws IllegalArgumentException if the tables have not the size that this system needs
+     */
+    public static ElementResponse restore(DetectorSystem system, float[] tables) {
+        ElementResponse response = untabulated(system);
+        if (tables.length != response.table.length) {
+            throw new IllegalArgumentException("expected " + response.table.length + " values for this system, found "
+                    + tables.length + "; make the tables again");
+        }
+        System.arraycopy(tables, 0, response.table, 0, tables.length);
+        return response;
+    }
+
+    private static ElementResponse untabulated(DetectorSystem system) {
         ElementClasses classes = new ElementClasses(system);
         double[] most = steepestSlopes(system);
         SlopeAxis u = new SlopeAxis(most[0], STEP);
         SlopeAxis v = new SlopeAxis(most[1], STEP);
-        int rows = classes.classes() * u.nodes();
-        float[] table = new float[Math.multiplyExact(rows, VALUES * v.nodes())];
-        progress.begin("element response", rows, "rows");
-        pool.submit(() -> IntStream.range(0, rows).parallel().forEach(row -> {
-                    fillRow(system, classes.representative(row / u.nodes()), u.slope(row % u.nodes()), v, table, row);
-                    progress.advance(1);
-                }))
-                .join();
-        progress.end(classes.classes() + " tables of " + u.nodes() + " x " + v.nodes() + " directions");
-        return new ElementResponse(system, classes, u, v, table);
+        int nodes = Math.multiplyExact(classes.classes(), u.nodes() * v.nodes());
+        return new ElementResponse(system, classes, u, v, new float[Math.multiplyExact(VALUES, nodes)]);
     }
 
     /**
@@ -87,10 +111,20 @@ public final class ElementResponse {
         return new ElementResponse(system, classes, axis, axis, table);
     }
 
-    private static void fillRow(
-            DetectorSystem system, int element, double slopeU, SlopeAxis v, float[] table, int row) {
+    /**
+     * The tables, to be kept and given to {@link #restore} later.
+     *
+     * @return a copy
+     */
+    public float[] tables() {
+        return table.clone();
+    }
+
+    private void fillRow(int row) {
         ResponseIntegral integral = new ResponseIntegral(system);
         Response response = new Response();
+        int element = classes.representative(row / u.nodes());
+        double slopeU = u.slope(row % u.nodes());
         for (int node = 0; node < v.nodes(); node++) {
             double slopeV = v.slope(node);
             double cosine = 1 / Math.sqrt(1 + slopeU * slopeU + slopeV * slopeV);
