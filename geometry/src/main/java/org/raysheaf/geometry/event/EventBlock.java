@@ -139,7 +139,8 @@ public final class EventBlock {
     public Object column(Attribute attribute) {
         Object column = columns.get(attribute);
         if (column == null) {
-            throw new IllegalArgumentException("the events have no " + attribute.columnName() + ", only " + attributes());
+            throw new IllegalArgumentException(
+                    "the events have no " + attribute.columnName() + ", only " + attributes());
         }
         return column;
     }

@@ -15,8 +15,11 @@ import org.raysheaf.geometry.settings.Problems;
  * @param nuclide what decayed, or null if it is not known (then nothing is corrected for decay or branching)
  */
 public record ListHeader(
-        String systemDescription, double durationS, double liveTimeS, Instant start, @Nullable Nuclide nuclide) {
-    /** Checks the times. */
+        String systemDescription,
+        double durationS,
+        double liveTimeS,
+        Instant start,
+        @Nullable Nuclide nuclide) {
     public ListHeader {
         new Problems("list")
                 .above("duration_s", durationS, 0)

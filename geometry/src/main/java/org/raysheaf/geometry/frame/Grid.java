@@ -18,12 +18,6 @@ import org.raysheaf.geometry.settings.Problems;
  * @param pose centre and orientation
  */
 public record Grid(int nx, int ny, int nz, double spacingXMm, double spacingYMm, double spacingZMm, Pose pose) {
-    /**
-     * Checks the shape.
-     *
-     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if a count or a spacing is out of range, or if there are more voxels
-     *     than one Java array holds
-     */
     public Grid {
         new Problems("grid")
                 .atLeast("nx", nx, 1)
@@ -92,7 +86,9 @@ public record Grid(int nx, int ny, int nz, double spacingXMm, double spacingYMm,
      */
     public Vector3 centre(double x, double y, double z) {
         return pose.apply(new Vector3(
-                (x - 0.5 * (nx - 1)) * spacingXMm, (y - 0.5 * (ny - 1)) * spacingYMm, (z - 0.5 * (nz - 1)) * spacingZMm));
+                (x - 0.5 * (nx - 1)) * spacingXMm,
+                (y - 0.5 * (ny - 1)) * spacingYMm,
+                (z - 0.5 * (nz - 1)) * spacingZMm));
     }
 
     /**

@@ -9,7 +9,6 @@ import org.raysheaf.geometry.settings.Problems;
  * @param attenuationLengthMm mean distance to a photon's first interaction (mm) at the energy in use; 0 for a perfect absorber
  */
 public record Material(String name, double attenuationLengthMm) {
-    /** Checks the length. */
     public Material {
         new Problems("material")
                 .atLeast("attenuation_length_mm", attenuationLengthMm, 0)

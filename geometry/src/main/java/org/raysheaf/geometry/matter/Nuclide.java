@@ -10,7 +10,6 @@ import org.raysheaf.geometry.settings.Problems;
  * @param positronBranching positrons per decay, greater than 0, at most 1
  */
 public record Nuclide(String name, double halfLifeS, double positronBranching) {
-    /** Checks the figures. */
     public Nuclide {
         new Problems("nuclide")
                 .above("half_life_s", halfLifeS, 0)
