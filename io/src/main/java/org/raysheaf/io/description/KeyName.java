@@ -1,11 +1,13 @@
 package org.raysheaf.io.description;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.regex.Matcher;
 import java.util.regex.Pattern;
+import org.jspecify.annotations.Nullable;
 
 /**
  * Spells Java names as keys of files: words joined by underscores, units as physicists write them. {@code energyKeV} becomes {@code
@@ -40,6 +42,27 @@ public final class KeyName {
      */
     public static String of(String javaName) {
         return String.join("_", words(javaName));
+    }
+
+    /**
+     * The name by which descriptions choose a record, as the value of the key {@code kind}.
+     *
+     * @param record the class of a record
+     * @return the name, or null if the record implements no sealed interface and so is no choice
+     */
+    public static @Nullable String ofChoice(Class<?> record) {
+        Class<?> sealed = sealedAbove(record);
+        for (Class<?> above = sealed; above != null; above = sealedAbove(above)) {
+            sealed = above;
+        }
+        return sealed == null ? null : Choices.nameOf(record, sealed);
+    }
+
+    private static @Nullable Class<?> sealedAbove(Class<?> type) {
+        return Arrays.stream(type.getInterfaces())
+                .filter(Class::isSealed)
+                .findFirst()
+                .orElse(null);
     }
 
     static List<String> words(String javaName) {
