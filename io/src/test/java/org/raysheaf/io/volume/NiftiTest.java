@@ -11,6 +11,7 @@ import java.nio.ByteOrder;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.Arrays;
+import java.util.SplittableRandom;
 import java.util.function.Consumer;
 import java.util.zip.GZIPOutputStream;
 import org.junit.jupiter.api.BeforeEach;
@@ -284,5 +285,25 @@ class NiftiTest {
         assertThatExceptionOfType(VolumeException.class)
                 .isThrownBy(() -> read(packed.toByteArray()))
                 .withMessageContaining("expected fewer than 2^31 voxels");
+    }
+
+    /** A flipped bit in a value may go unseen; wherever it is, the file either reads or is refused. */
+    @Test
+    void neitherCrashesNorHangsOnDamagedFiles() throws IOException {
+        SplittableRandom random = new SplittableRandom(20260302);
+        int refused = 0;
+        for (int i = 0; i < 1000; i++) {
+            byte[] damaged = sound.clone();
+            damaged[random.nextInt(NiftiHeader.VOXELS_AT)] ^= (byte) (1 << random.nextInt(8));
+            try {
+                read(damaged);
+            } catch (VolumeException expected) {
+                refused++;
+                assertThat(expected)
+                        .hasMessageStartingWith(folder.resolve("a.nii").toString());
+            }
+        }
+        // Of the header about a third is in use.
+        assertThat(refused).isBetween(50, 500);
     }
 }
