@@ -1,6 +1,7 @@
 package org.raysheaf.geometry.detector;
 
 import org.raysheaf.geometry.frame.Pose;
+import org.raysheaf.geometry.frame.Vector3;
 
 /**
  * Follows rays through one placed block of crystals. The block is a lattice of cells, each holding a crystal and the gap behind it, so a ray
@@ -25,7 +26,10 @@ final class CrystalTracer {
     private final int firstElement;
     private final double attenuationLength;
     private final double[] axes;
-    private final double[] origin;
+    private final double[] corner;
+    private final double perPitchU;
+    private final double perPitchV;
+    private final double perPitchW;
 
     CrystalTracer(PlacedBlock placed, CrystalBlock kind) {
         columns = kind.columns();
@@ -48,32 +52,39 @@ final class CrystalTracer {
             pose.v().x(), pose.v().y(), pose.v().z(),
             pose.w().x(), pose.w().y(), pose.w().z()
         };
-        origin = new double[] {
-            pose.origin().x(), pose.origin().y(), pose.origin().z(),
-        };
+        Vector3 lowest = pose.apply(new Vector3(-0.5 * width, -0.5 * height, 0));
+        corner = new double[] {lowest.x(), lowest.y(), lowest.z()};
+        perPitchU = 1 / pitchU;
+        perPitchV = 1 / pitchV;
+        perPitchW = 1 / pitchW;
     }
 
-    private double along(int axis, double x, double y, double z) {
-        return axes[3 * axis] * x + axes[3 * axis + 1] * y + axes[3 * axis + 2] * z;
+    /** A direction as this block's frame sees it, with what tracing needs of it: three components, then their inverses. */
+    void localDirection(double dx, double dy, double dz, double[] local) {
+        for (int axis = 0; axis < 3; axis++) {
+            local[axis] = notZero(axes[3 * axis] * dx + axes[3 * axis + 1] * dy + axes[3 * axis + 2] * dz);
+            local[3 + axis] = 1 / local[axis];
+        }
     }
 
     private static double notZero(double d) {
         return Math.abs(d) < NEARLY_ZERO ? NEARLY_ZERO : d;
     }
 
+    /** One coordinate of a point, from the corner of the box, so that cell i of an axis begins at i · pitch. */
+    private double fromCorner(int axis, double x, double y, double z) {
+        return axes[3 * axis] * (x - corner[0])
+                + axes[3 * axis + 1] * (y - corner[1])
+                + axes[3 * axis + 2] * (z - corner[2]);
+    }
+
     /** Where a ray enters the block's box (mm, at least 0), or NaN if it misses. */
-    double enter(double ox, double oy, double oz, double dx, double dy, double dz) {
-        double x = ox - origin[0];
-        double y = oy - origin[1];
-        double z = oz - origin[2];
-        double pu = along(0, x, y, z) + 0.5 * width;
-        double pv = along(1, x, y, z) + 0.5 * height;
-        double pw = along(2, x, y, z);
-        double iu = 1 / notZero(along(0, dx, dy, dz));
-        double iv = 1 / notZero(along(1, dx, dy, dz));
-        double iw = 1 / notZero(along(2, dx, dy, dz));
-        double in = Math.max(low(pu, iu, width), Math.max(low(pv, iv, height), low(pw, iw, depth)));
-        double out = Math.min(high(pu, iu, width), Math.min(high(pv, iv, height), high(pw, iw, depth)));
+    double enter(double ox, double oy, double oz, double[] d) {
+        double pu = fromCorner(0, ox, oy, oz);
+        double pv = fromCorner(1, ox, oy, oz);
+        double pw = fromCorner(2, ox, oy, oz);
+        double in = Math.max(low(pu, d[3], width), Math.max(low(pv, d[4], height), low(pw, d[5], depth)));
+        double out = Math.min(high(pu, d[3], width), Math.min(high(pv, d[4], height), high(pw, d[5], depth)));
         in = Math.max(in, 0);
         return in < out ? in : Double.NaN;
     }
@@ -86,24 +97,20 @@ final class CrystalTracer {
         return (inverse > 0 ? size - p : -p) * inverse;
     }
 
-    /** Appends the crystals that a ray crosses, nearest first, from where it enters the block's box. */
-    void trace(double ox, double oy, double oz, double dx, double dy, double dz, double in, RayPath path) {
-        double x = ox - origin[0];
-        double y = oy - origin[1];
-        double z = oz - origin[2];
-        // Corner of the box as origin, so that cell i of an axis begins at i · pitch.
-        double pu = along(0, x, y, z) + 0.5 * width;
-        double pv = along(1, x, y, z) + 0.5 * height;
-        double pw = along(2, x, y, z);
-        double du = notZero(along(0, dx, dy, dz));
-        double dv = notZero(along(1, dx, dy, dz));
-        double dw = notZero(along(2, dx, dy, dz));
-        double iu = 1 / du;
-        double iv = 1 / dv;
-        double iw = 1 / dw;
-        int column = cell((pu + in * du) / pitchU, columns);
-        int row = cell((pv + in * dv) / pitchV, rows);
-        int layer = cell((pw + in * dw) / pitchW, layers);
+    /** Appends the crystals that a ray crosses, nearest first, from where it enters the block's box up to a length. */
+    void trace(double ox, double oy, double oz, double[] d, double in, double length, RayPath path) {
+        double pu = fromCorner(0, ox, oy, oz);
+        double pv = fromCorner(1, ox, oy, oz);
+        double pw = fromCorner(2, ox, oy, oz);
+        double iu = d[3];
+        double iv = d[4];
+        double iw = d[5];
+        int stepU = iu > 0 ? 1 : -1;
+        int stepV = iv > 0 ? 1 : -1;
+        int stepW = iw > 0 ? 1 : -1;
+        int column = cell((pu + in * d[0]) * perPitchU, columns);
+        int row = cell((pv + in * d[1]) * perPitchV, rows);
+        int layer = cell((pw + in * d[2]) * perPitchW, layers);
         while (column >= 0 && column < columns && row >= 0 && row < rows && layer >= 0 && layer < layers) {
             double qu = pu - column * pitchU;
             double qv = pv - row * pitchV;
@@ -118,12 +125,15 @@ final class CrystalTracer {
             double endU = high(qu, iu, pitchU);
             double endV = high(qv, iv, pitchV);
             double endW = high(qw, iw, pitchW);
+            if (Math.min(endU, Math.min(endV, endW)) >= length) {
+                return;
+            }
             if (endU <= endV && endU <= endW) {
-                column += du > 0 ? 1 : -1;
+                column += stepU;
             } else if (endV <= endW) {
-                row += dv > 0 ? 1 : -1;
+                row += stepV;
             } else {
-                layer += dw > 0 ? 1 : -1;
+                layer += stepW;
             }
         }
     }

@@ -1,5 +1,6 @@
 package org.raysheaf.geometry.detector;
 
+import java.util.Arrays;
 import java.util.List;
 import org.raysheaf.geometry.frame.Vector3;
 
@@ -17,7 +18,7 @@ public final class DetectorSystem {
     private final List<PlacedBlock> blocks;
     private final CrystalTracer[] tracers;
     private final int[] blockOfElement;
-    // Bounding spheres, four doubles a block: centre and squared radius. Most blocks are passed over by these alone.
+    // Bounding spheres, four doubles a block: centre and radius. Most blocks are passed over by these alone.
     private final double[] spheres;
 
     /**
@@ -40,7 +41,7 @@ public final class DetectorSystem {
             spheres[4 * b] = centre.x();
             spheres[4 * b + 1] = centre.y();
             spheres[4 * b + 2] = centre.z();
-            spheres[4 * b + 3] = radius * radius;
+            spheres[4 * b + 3] = radius;
             for (int i = 0; i < block.kind().elements(); i++) {
                 blockOfElement[block.firstElement() + i] = b;
             }
@@ -112,7 +113,7 @@ public final class DetectorSystem {
     public boolean admits(int a, int b) {
         int blockA = blockOfElement[a];
         int blockB = blockOfElement[b];
-        return blockA != blockB && pairs().admits(blocks.get(blockA), blocks.get(blockB));
+        return pairs().admits(blocks.get(blockA), blocks.get(blockB));
     }
 
     /**
@@ -170,27 +171,55 @@ public final class DetectorSystem {
     public void trace(double ox, double oy, double oz, double dx, double dy, double dz, RayPath path) {
         path.clear();
         for (int b = 0; b < tracers.length; b++) {
-            if (meetsSphere(b, ox, oy, oz, dx, dy, dz)) {
-                double in = tracers[b].enter(ox, oy, oz, dx, dy, dz);
+            if (comesNear(b, ox, oy, oz, dx, dy, dz, 0)) {
+                double[] local = path.localDirection(b);
+                tracers[b].localDirection(dx, dy, dz, local);
+                double in = tracers[b].enter(ox, oy, oz, local);
                 if (in >= 0) {
                     path.addBlock(b, in);
                 }
             }
         }
         for (int i = 0; i < path.crossedBlocks(); i++) {
-            CrystalTracer tracer = tracers[path.crossedBlock(i)];
-            tracer.trace(ox, oy, oz, dx, dy, dz, tracer.enter(ox, oy, oz, dx, dy, dz), path);
+            int b = path.crossedBlock(i);
+            tracers[b].trace(
+                    ox, oy, oz, path.localDirection(b), path.crossedBlockEnter(i), Double.POSITIVE_INFINITY, path);
         }
     }
 
-    /** Whether a ray comes within a block's bounding sphere, ahead of its origin or around it. */
-    private boolean meetsSphere(int block, double ox, double oy, double oz, double dx, double dy, double dz) {
+    /**
+     * Prepares to follow many parallel rays close to each other.
+     *
+     * @param ox origin of the central ray (mm)
+     * @param oy origin (mm)
+     * @param oz origin (mm)
+     * @param dx direction, of unit length
+     * @param dy direction
+     * @param dz direction
+     * @param radiusMm no ray of the bundle runs farther than this from the central one (mm)
+     * @return the bundle
+     */
+    public ParallelRays parallelRays(
+            double ox, double oy, double oz, double dx, double dy, double dz, double radiusMm) {
+        CrystalTracer[] near = new CrystalTracer[tracers.length];
+        int count = 0;
+        for (int b = 0; b < tracers.length; b++) {
+            if (comesNear(b, ox, oy, oz, dx, dy, dz, radiusMm)) {
+                near[count++] = tracers[b];
+            }
+        }
+        return new ParallelRays(Arrays.copyOf(near, count), dx, dy, dz);
+    }
+
+    /** Whether a ray comes within a margin of a block's bounding sphere, ahead of its origin or around it. */
+    private boolean comesNear(
+            int block, double ox, double oy, double oz, double dx, double dy, double dz, double margin) {
         double x = spheres[4 * block] - ox;
         double y = spheres[4 * block + 1] - oy;
         double z = spheres[4 * block + 2] - oz;
-        double r2 = spheres[4 * block + 3];
+        double r = spheres[4 * block + 3] + margin;
         double along = x * dx + y * dy + z * dz;
         double square = x * x + y * y + z * z;
-        return square - along * along <= r2 && (along >= 0 || square <= r2);
+        return square - along * along <= r * r && (along >= 0 || square <= r * r);
     }
 }

@@ -1,6 +1,8 @@
 package org.raysheaf.geometry.detector;
 
+import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.List;
 
 /**
  * What a ray meets: a growing list of segments, each inside one crystal. Made once and filled again and again by {@link
@@ -14,6 +16,7 @@ public final class RayPath {
     private double[] attenuationLength = new double[64];
 
     // Blocks that the ray crosses, nearest first; kept here so that tracing allocates nothing.
+    private final List<double[]> directions = new ArrayList<>();
     private int blocks;
     private int[] block = new int[8];
     private double[] blockEnter = new double[8];
@@ -88,6 +91,14 @@ public final class RayPath {
         attenuationLength[size++] = attenuationLengthMm;
     }
 
+    /** Room for the ray's direction in the frame of a block, see {@link CrystalTracer#localDirection}. */
+    double[] localDirection(int blockNumber) {
+        while (blockNumber >= directions.size()) {
+            directions.add(new double[6]);
+        }
+        return directions.get(blockNumber);
+    }
+
     /** Keeps the crossed blocks ordered by entry; there are rarely more than a handful. */
     void addBlock(int number, double in) {
         if (blocks == block.length) {
@@ -105,6 +116,10 @@ public final class RayPath {
 
     int crossedBlocks() {
         return blocks;
+    }
+
+    double crossedBlockEnter(int i) {
+        return blockEnter[i];
     }
 
     int crossedBlock(int i) {

@@ -18,6 +18,15 @@ public interface SheafMaker {
     Set<Attribute> attributes();
 
     /**
+     * Attributes that are read as well where the list has them.
+     *
+     * @return further columns, by default none
+     */
+    default Set<Attribute> alsoReads() {
+        return Set.of();
+    }
+
+    /**
      * Rays in every sheaf that this maker makes.
      *
      * @return the count, at least 1

@@ -1,0 +1,123 @@
+package org.raysheaf.geometry.response;
+
+import java.util.ArrayList;
+import java.util.List;
+import java.util.Set;
+import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.PlacedBlock;
+import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.geometry.event.EventTally;
+import org.raysheaf.geometry.sheaf.SheafBundle;
+import org.raysheaf.geometry.sheaf.SheafCatalogue;
+import org.raysheaf.geometry.sheaf.SheafMaker;
+
+/**
+ * Coincident pairs of crystals as sheaves of one ray: the line between the mean interaction points. The catalogue holds every pair that the
+ * system admits, one part per pair of blocks. An event and the catalogue entry of the same pair have the same ray, so a pair that the
+ * sensitivity leaves out is set aside in the list as well.
+ */
+public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
+    private final DetectorSystem system;
+    private final PairLines lines;
+    private final List<PlacedBlock[]> blockPairs = new ArrayList<>();
+
+    /**
+     * The sheaves of a system.
+     *
+     * @param response the tabulated response of its elements
+     */
+    public CoincidenceSheaves(ElementResponse response) {
+        this.system = response.system();
+        this.lines = new PairLines(response);
+        for (PlacedBlock a : system.blocks()) {
+            for (PlacedBlock b : system.blocks().subList(0, a.index())) {
+                if (system.pairs().admits(a, b)) {
+                    blockPairs.add(new PlacedBlock[] {a, b});
+                }
+            }
+        }
+    }
+
+    @Override
+    public Set<Attribute> attributes() {
+        return Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B);
+    }
+
+    @Override
+    public Set<Attribute> alsoReads() {
+        return Set.of(Attribute.DELAYED);
+    }
+
+    @Override
+    public int raysPerSheaf() {
+        return 1;
+    }
+
+    /**
+     * {@inheritDoc}
+     *
+     * <p>If the block has a {@link Attribute#DELAYED} column, delayed pairs are set aside.
+     *
+     * @throws IllegalArgumentException if an element is not one of the system's
+     */
+    @Override
+    public void make(EventBlock events, SheafBundle out, EventTally tally) {
+        PairLines maker = lines.twin();
+        LineOfResponse line = new LineOfResponse();
+        int[] a = events.ints(Attribute.ELEMENT_A);
+        int[] b = events.ints(Attribute.ELEMENT_B);
+        boolean mayBeDelayed = events.has(Attribute.DELAYED);
+        for (int i = 0; i < events.size(); i++) {
+            requireElement(a[i]);
+            requireElement(b[i]);
+            if (mayBeDelayed && events.bytes(Attribute.DELAYED)[i] != 0) {
+                tally.setAside(EventTally.Reason.DELAYED);
+            } else if (!system.admits(a[i], b[i])) {
+                tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
+            } else if (!maker.line(a[i], b[i], line)) {
+                tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
+            } else {
+                append(out, line, 1);
+                tally.use();
+            }
+        }
+    }
+
+    private void requireElement(int element) {
+        if (element < 0 || element >= system.elements()) {
+            throw new IllegalArgumentException(
+                    "expected an element from 0 to " + (system.elements() - 1) + ", found " + element);
+        }
+    }
+
+    @Override
+    public int parts() {
+        return blockPairs.size();
+    }
+
+    @Override
+    public int capacity(int part) {
+        PlacedBlock[] pair = blockPairs.get(part);
+        return Math.multiplyExact(pair[0].kind().elements(), pair[1].kind().elements());
+    }
+
+    @Override
+    public void fill(int part, SheafBundle out) {
+        PairLines maker = lines.twin();
+        LineOfResponse line = new LineOfResponse();
+        PlacedBlock a = blockPairs.get(part)[0];
+        PlacedBlock b = blockPairs.get(part)[1];
+        for (int i = 0; i < a.kind().elements(); i++) {
+            for (int j = 0; j < b.kind().elements(); j++) {
+                if (maker.line(a.firstElement() + i, b.firstElement() + j, line)) {
+                    append(out, line, line.etendue / (2 * Math.PI));
+                }
+            }
+        }
+    }
+
+    private static void append(SheafBundle out, LineOfResponse line, double weight) {
+        out.set(out.append(), line.ax, line.ay, line.az, line.bx, line.by, line.bz, weight);
+    }
+}

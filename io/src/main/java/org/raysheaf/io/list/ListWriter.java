@@ -1,0 +1,195 @@
+package org.raysheaf.io.list;
+
+import java.io.IOException;
+import java.nio.file.Path;
+import java.util.EnumMap;
+import java.util.Map;
+import java.util.Objects;
+import java.util.Set;
+import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.geometry.event.EventSink;
+import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.matter.Nuclide;
+import org.raysheaf.io.hdf5.ArrayWriter;
+import org.raysheaf.io.hdf5.ColumnWriter;
+import org.raysheaf.io.hdf5.Compression;
+import org.raysheaf.io.hdf5.ElementType;
+import org.raysheaf.io.hdf5.GroupWriter;
+import org.raysheaf.io.hdf5.Hdf5Writer;
+
+/**
+ * Writes a list of any size as a stream; memory holds one chunk per column. The file appears under its name, complete, when {@link
+ * #commit()} is called; closed without commit, nothing remains:
+ *
+ * <pre>
+ * try (ListWriter list = ListWriter.create(header, attributes, path, false)) {
+ *     while (more) {
+ *         list.accept(block);
+ *     }
+ *     list.commit();
+ * }
+ * </pre>
+ *
+ * <p>The same events give the same bytes, however they were cut into blocks (compressed ones if Java brings the same deflate). Not safe for use by several threads.
+ */
+public final class ListWriter implements EventSink, AutoCloseable {
+    private final Hdf5Writer file;
+    private final Map<Attribute, ColumnWriter> columns = new EnumMap<>(Attribute.class);
+    private long events;
+
+    private ListWriter(Hdf5Writer file, Set<Attribute> attributes, Compression compression, int chunkLength) {
+        this.file = file;
+        for (Attribute attribute : Attribute.values()) {
+            if (attributes.contains(attribute)) {
+                columns.put(attribute, newColumn(attribute, compression, chunkLength));
+            }
+        }
+    }
+
+    /**
+     * Starts a list, its columns stored as they are, which is fastest.
+     *
+     * @param header what the list says about itself
+     * @param attributes what it says about every event; at least both elements
+     * @param path where the file is to appear; the folder exists
+     * @param replace whether a file that is already there may be replaced
+     * @return the writer; the caller commits and closes it
+     * @throws java.nio.file.FileAlreadyExistsException if the path exists and must not be replaced
+     * @throws IOException if the folder cannot be written to
+     */
+    public static ListWriter create(ListHeader header, Set<Attribute> attributes, Path path, boolean replace)
+            throws IOException {
+        return create(header, attributes, path, replace, Compression.NONE);
+    }
+
+    /**
+     * Starts a list. Compressed, a typical list takes three fifths of the room, and its writing several times as long.
+     *
+     * @param header what the list says about itself
+     * @param attributes what it says about every event; at least both elements
+     * @param path where the file is to appear; the folder exists
+     * @param replace whether a file that is already there may be replaced
+     * @param compression how columns are stored
+     * @return the writer; the caller commits and closes it
+     * @throws java.nio.file.FileAlreadyExistsException if the path exists and must not be replaced
+     * @throws IOException if the folder cannot be written to
+     */
+    public static ListWriter create(
+            ListHeader header, Set<Attribute> attributes, Path path, boolean replace, Compression compression)
+            throws IOException {
+        return create(header, attributes, path, replace, compression, ListFormat.CHUNK_LENGTH);
+    }
+
+    /** The same with another chunk length, for tests that want many chunks of few events. */
+    static ListWriter create(
+            ListHeader header,
+            Set<Attribute> attributes,
+            Path path,
+            boolean replace,
+            Compression compression,
+            int chunkLength)
+            throws IOException {
+        if (!attributes.contains(Attribute.ELEMENT_A) || !attributes.contains(Attribute.ELEMENT_B)) {
+            throw new IllegalArgumentException("a list has at least element_a and element_b, found " + attributes);
+        }
+        Hdf5Writer file = Hdf5Writer.create(path, replace);
+        try {
+            ListWriter writer = new ListWriter(file, attributes, compression, chunkLength);
+            writer.writeHeader(header);
+            return writer;
+        } catch (IOException | RuntimeException e) {
+            file.close();
+            throw e;
+        }
+    }
+
+    private ColumnWriter newColumn(Attribute attribute, Compression compression, int chunkLength) {
+        ElementType type = switch (attribute.type()) {
+            case UINT8 -> ElementType.UINT8;
+            case UINT32 -> ElementType.UINT32;
+            case INT64 -> ElementType.INT64;
+            case FLOAT32 -> ElementType.FLOAT32;
+        };
+        ColumnWriter column = file.root().column(attribute.columnName(), type, chunkLength, compression);
+        column.attribute(ListFormat.UNIT, attribute.unit());
+        column.attribute(ListFormat.MEANING, attribute.meaning());
+        return column;
+    }
+
+    private void writeHeader(ListHeader header) throws IOException {
+        GroupWriter root = file.root();
+        root.attribute(ListFormat.MARK, ListFormat.KIND + ListFormat.VERSION);
+        root.attribute(ListFormat.WRITER, writerName());
+        root.attribute(ListFormat.LIVE_TIME, header.liveTimeS());
+        root.attribute(ListFormat.DURATION, header.durationS());
+        root.attribute(ListFormat.START, header.start().toString());
+        Nuclide nuclide = header.nuclide();
+        if (nuclide != null) {
+            root.attribute(ListFormat.NUCLIDE, nuclide.name());
+            root.attribute(ListFormat.HALF_LIFE, nuclide.halfLifeS());
+            root.attribute(ListFormat.BRANCHING, nuclide.positronBranching());
+        }
+        ArrayWriter system = root.text(ListFormat.SYSTEM, header.systemDescription());
+        system.attribute(ListFormat.SHA256, ListFormat.sha256(header.systemDescription()));
+    }
+
+    private static String writerName() {
+        String version = ListWriter.class.getPackage().getImplementationVersion();
+        return "raysheaf " + Objects.requireNonNullElse(version, "(unpacked)");
+    }
+
+    /**
+     * Appends the events of a block.
+     *
+     * @param block the events; it has every column that the list was made with
+     * @throws IllegalArgumentException if a column is missing or a value cannot be: not a number, a negative time, energy or element
+     * @throws IOException if the disk does not take them
+     */
+    @Override
+    public void accept(EventBlock block) throws IOException {
+        columns.keySet().forEach(attribute -> requirePossible(block, attribute));
+        for (Map.Entry<Attribute, ColumnWriter> column : columns.entrySet()) {
+            append(column.getValue(), block, column.getKey());
+        }
+        events += block.size();
+    }
+
+    private void requirePossible(EventBlock block, Attribute attribute) {
+        int bad = EventRules.firstImpossible(block, attribute, Integer.MAX_VALUE);
+        if (bad != EventRules.NONE) {
+            throw new IllegalArgumentException(attribute.columnName() + ", event " + (events + bad) + ": expected "
+                    + EventRules.expected(attribute, Integer.MAX_VALUE) + ", found "
+                    + EventRules.found(block, attribute, bad));
+        }
+    }
+
+    private static void append(ColumnWriter column, EventBlock block, Attribute attribute) throws IOException {
+        switch (attribute.type()) {
+            case UINT8 -> column.append(block.bytes(attribute), 0, block.size());
+            case UINT32 -> column.append(block.ints(attribute), 0, block.size());
+            case INT64 -> column.append(block.longs(attribute), 0, block.size());
+            case FLOAT32 -> column.append(block.floats(attribute), 0, block.size());
+        }
+    }
+
+    /**
+     * Completes the list and lets it appear under its name. Call once, after the last block.
+     *
+     * @throws IOException if the disk does not take it
+     */
+    public void commit() throws IOException {
+        file.root().attribute(ListFormat.EVENTS, events);
+        file.commit();
+    }
+
+    /**
+     * Ends the writing; without a commit before, nothing remains of the list.
+     *
+     * @throws IOException if the temporary file cannot be removed
+     */
+    @Override
+    public void close() throws IOException {
+        file.close();
+    }
+}

@@ -1,0 +1,245 @@
+package org.raysheaf.engine.ray;
+
+import java.util.Arrays;
+
+/**
+ * Rays prepared for walking through a lattice, in flat arrays: 24 bytes each. A ray visits one voxel plane after another along its
+ * dominant axis, the one across which it crosses most planes. On the j-th plane that it visits, j = 0, 1, …, it stands at
+ *
+ * <pre>
+ * plane first + j,  u = u₀ + j·du,  v = v₀ + j·dv      (lattice coordinates, |du| ≤ 1, |dv| ≤ 1)
+ * </pre>
+ *
+ * <p>where u and v are the other two axes, in order; each plane counts with the length of the ray from plane to plane times the
+ * weight of the ray. Planes lie between the two end points of the ray and within the grid. A ray that visits no plane is empty.
+ */
+public final class Walks {
+    /** Memory that one walk takes (bytes). */
+    public static final int BYTES = 24;
+
+    /**
+     * Coordinates stay below this share of n − 1, so that the upper neighbour exists. Rounding cannot undo that: u + j·du in single
+     * precision, even after {@link #trim}, is off by less than 4 · 2⁻²⁴ · n, a quarter of the 10⁻⁶ · n that is kept free. Below 0 it
+     * may fall by as little, and truncation then still finds row 0.
+     */
+    private static final double BELOW_TOP = 1 - 1e-6;
+
+    private static final int EMPTY = 1 << 15;
+    private static final int PLANE = (1 << 15) - 1;
+
+    private final Lattice lattice;
+    /** Dominant axis, first and last plane, packed: axis · 2³⁰ + first · 2¹⁵ + last. */
+    int[] spans;
+
+    float[] u;
+    float[] du;
+    float[] v;
+    float[] dv;
+    /** Length from plane to plane times the weight of the ray (mm). */
+    float[] steps;
+
+    /**
+     * Room for walks; all are empty at first.
+     *
+     * @param lattice what they walk through
+     * @param capacity how many, at least 0
+     */
+    public Walks(Lattice lattice, int capacity) {
+        this.lattice = lattice;
+        spans = new int[capacity];
+        u = new float[capacity];
+        du = new float[capacity];
+        v = new float[capacity];
+        dv = new float[capacity];
+        steps = new float[capacity];
+        Arrays.fill(spans, EMPTY);
+    }
+
+    /**
+     * What the walks walk through.
+     *
+     * @return the lattice
+     */
+    public Lattice lattice() {
+        return lattice;
+    }
+
+    /**
+     * How many walks there is room for.
+     *
+     * @return the capacity
+     */
+    public int capacity() {
+        return spans.length;
+    }
+
+    /**
+     * The dominant axis of a walk.
+     *
+     * @param k number of the walk
+     * @return 0, 1 or 2
+     */
+    public int axis(int k) {
+        return spans[k] >>> 30;
+    }
+
+    /**
+     * The first plane that a walk visits.
+     *
+     * @param k number of the walk
+     * @return the lattice coordinate along the dominant axis
+     */
+    public int first(int k) {
+        return spans[k] >>> 15 & PLANE;
+    }
+
+    /**
+     * How many planes a walk visits.
+     *
+     * @param k number of the walk
+     * @return the count; 0 if the walk is empty
+     */
+    public int planes(int k) {
+        return (spans[k] & PLANE) - (spans[k] >>> 15 & PLANE) + 1;
+    }
+
+    /**
+     * Prepares a ray. Rays of no length, with ends that are no finite numbers, or that miss the lattice become empty. Different walks
+     * may be set by different threads at once.
+     *
+     * @param k number of the walk
+     * @param rays coordinates, six per ray: start x y z, end x y z (mm)
+     * @param ray which ray of these
+     * @param weight weight of the ray
+     */
+    public void set(int k, float[] rays, int ray, double weight) {
+        spans[k] = EMPTY;
+        int at = 6 * ray;
+        double o0 = lattice.coordinate(0, rays[at], rays[at + 1], rays[at + 2]);
+        double o1 = lattice.coordinate(1, rays[at], rays[at + 1], rays[at + 2]);
+        double o2 = lattice.coordinate(2, rays[at], rays[at + 1], rays[at + 2]);
+        double d0 = lattice.coordinate(0, rays[at + 3], rays[at + 4], rays[at + 5]) - o0;
+        double d1 = lattice.coordinate(1, rays[at + 3], rays[at + 4], rays[at + 5]) - o1;
+        double d2 = lattice.coordinate(2, rays[at + 3], rays[at + 4], rays[at + 5]) - o2;
+        double longest = Math.max(Math.abs(d0), Math.max(Math.abs(d1), Math.abs(d2)));
+        if (!(longest > 0) || !Double.isFinite(longest)) {
+            return;
+        }
+        if (Math.abs(d0) == longest) {
+            set(k, 0, 1, 2, o0, d0, o1, d1 / d0, o2, d2 / d0, weight);
+        } else if (Math.abs(d1) == longest) {
+            set(k, 1, 0, 2, o1, d1, o0, d0 / d1, o2, d2 / d1, weight);
+        } else {
+            set(k, 2, 0, 1, o2, d2, o0, d0 / d2, o1, d1 / d2, weight);
+        }
+    }
+
+    /** Along the dominant axis w the ray starts at ow and extends by dw; along a and b it starts at oa, ob with slopes sa, sb. */
+    private void set(
+            int k, int w, int a, int b, double ow, double dw, double oa, double sa, double ob, double sb, double weight) {
+        double low = Math.max(1, Math.min(ow, ow + dw));
+        double high = Math.min(lattice.planes(w) - 2, Math.max(ow, ow + dw));
+        double topA = (lattice.planes(a) - 1) * BELOW_TOP;
+        double topB = (lattice.planes(b) - 1) * BELOW_TOP;
+        low = Math.max(low, Math.max(ow + enter(oa, sa, topA), ow + enter(ob, sb, topB)));
+        high = Math.min(high, Math.min(ow + leave(oa, sa, topA), ow + leave(ob, sb, topB)));
+        int first = (int) Math.ceil(low);
+        int last = (int) Math.floor(high);
+        if (!(low <= high) || last < first) {
+            return;
+        }
+        spans[k] = w << 30 | first << 15 | last;
+        u[k] = (float) (oa + (first - ow) * sa);
+        du[k] = (float) sa;
+        v[k] = (float) (ob + (first - ow) * sb);
+        dv[k] = (float) sb;
+        double stepA = sa * lattice.spacingMm(a);
+        double stepB = sb * lattice.spacingMm(b);
+        double stepW = lattice.spacingMm(w);
+        steps[k] = (float) (weight * Math.sqrt(stepW * stepW + stepA * stepA + stepB * stepB));
+    }
+
+    /** How far along the dominant axis, from the start of the ray, the coordinate o + s·t enters 0 … top. */
+    private static double enter(double o, double s, double top) {
+        double t = s > 0 ? -o / s : (top - o) / s;
+        return s != 0 ? t : o >= 0 && o <= top ? Double.NEGATIVE_INFINITY : Double.POSITIVE_INFINITY;
+    }
+
+    private static double leave(double o, double s, double top) {
+        return s != 0 ? enter(o, -s, top) * -1 : Double.POSITIVE_INFINITY;
+    }
+
+    /**
+     * Shortens a walk to the planes on which it can meet activity; nothing is lost, because all others contribute 0.
+     *
+     * @param k number of the walk
+     * @param support values on the lattice, above 0 where there may be activity
+     * @return false if no plane is left and the walk is now empty
+     */
+    public boolean trim(int k, float[] support) {
+        int planes = planes(k);
+        int from = 0;
+        while (from < planes && !(Joseph.sample(this, k, from, support) > 0)) {
+            from++;
+        }
+        int to = planes - 1;
+        while (to > from && !(Joseph.sample(this, k, to, support) > 0)) {
+            to--;
+        }
+        if (from > to) {
+            spans[k] = EMPTY;
+            return false;
+        }
+        u[k] += from * du[k];
+        v[k] += from * dv[k];
+        spans[k] = axis(k) << 30 | first(k) + from << 15 | first(k) + to;
+        return true;
+    }
+
+    /**
+     * Copies a walk from elsewhere.
+     *
+     * @param k number of the walk here
+     * @param source walks through the same lattice
+     * @param from number of the walk there
+     */
+    public void copy(int k, Walks source, int from) {
+        spans[k] = source.spans[from];
+        u[k] = source.u[from];
+        du[k] = source.du[from];
+        v[k] = source.v[from];
+        dv[k] = source.dv[from];
+        steps[k] = source.steps[from];
+    }
+
+    /**
+     * Puts runs of walks into a new order and forgets all others. One column is replaced after another, so that only one exists twice.
+     *
+     * @param order the run that comes to each place, in the lower 32 bits of each entry
+     * @param run walks in a run, at least 1
+     */
+    void arrange(long[] order, int run) {
+        spans = arranged(spans, order, run);
+        u = arranged(u, order, run);
+        du = arranged(du, order, run);
+        v = arranged(v, order, run);
+        dv = arranged(dv, order, run);
+        steps = arranged(steps, order, run);
+    }
+
+    private static int[] arranged(int[] column, long[] order, int run) {
+        int[] result = new int[order.length * run];
+        for (int i = 0; i < order.length; i++) {
+            System.arraycopy(column, (int) order[i] * run, result, i * run, run);
+        }
+        return result;
+    }
+
+    private static float[] arranged(float[] column, long[] order, int run) {
+        float[] result = new float[order.length * run];
+        for (int i = 0; i < order.length; i++) {
+            System.arraycopy(column, (int) order[i] * run, result, i * run, run);
+        }
+        return result;
+    }
+}
