@@ -1,0 +1,126 @@
+package org.raysheaf.app.proof;
+
+import java.io.IOException;
+import java.time.Instant;
+import java.util.List;
+import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.engine.FieldOfView;
+import org.raysheaf.engine.ListModeEm;
+import org.raysheaf.engine.PassListener;
+import org.raysheaf.engine.Sensitivity;
+import org.raysheaf.engine.ray.EventBackground;
+import org.raysheaf.engine.ray.EventLoader;
+import org.raysheaf.engine.ray.EventSelection;
+import org.raysheaf.engine.ray.EventStore;
+import org.raysheaf.geometry.detector.CrystalBlock;
+import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.PairRule;
+import org.raysheaf.geometry.detector.Placement;
+import org.raysheaf.geometry.detector.SystemDescription;
+import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.frame.Grid;
+import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.geometry.matter.Material;
+import org.raysheaf.geometry.matter.Nuclide;
+import org.raysheaf.geometry.phantom.Phantom;
+import org.raysheaf.geometry.phantom.PhantomDescription;
+import org.raysheaf.geometry.phantom.PhantomPart;
+import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.solid.Cylinder;
+import org.raysheaf.transport.Acquisition;
+import org.raysheaf.transport.Simulation;
+
+/** A uniform cylinder of F-18 in heron-12: an ideal list of it, and the image that comes back, with no scale factor anywhere. */
+final class UniformCylinder {
+    static final double RADIUS_MM = 18;
+    static final double LENGTH_MM = 44;
+    static final double TRUTH_BQ_PER_ML = 50_000;
+
+    private final DetectorSystem system;
+    private final ForkJoinPool pool;
+    private final Image sensitivity;
+    private final CoincidenceSheaves sheaves;
+
+    UniformCylinder(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
+        this.pool = pool;
+        CrystalBlock tile = new CrystalBlock(
+                "tile", 11, 11, 1, new Vector3(1.85, 1.85, depthMm), new Vector3(1.7, 1.7, depthMm), "crystal");
+        system = new DetectorSystem(new SystemDescription(
+                "heron-12",
+                new org.raysheaf.geometry.detector.FieldOfView(29, 62),
+                new PairRule(3),
+                List.of(new Material("crystal", attenuationLengthMm)),
+                List.of(tile),
+                List.of(new Placement.Rings("tile", 12, 42, 0, List.of(-20.8, 0.0, 20.8)))));
+        sheaves = new CoincidenceSheaves(ElementResponse.tabulate(system, pool, Progress.SILENT));
+        sensitivity = Sensitivity.of(sheaves, Grid.centred(63, 63, 67, 0.925), pool, Progress.SILENT);
+    }
+
+    ListInMemory record(int events) throws IOException {
+        PhantomPart cylinder = PhantomPart.of("cylinder", new Cylinder(RADIUS_MM, LENGTH_MM))
+                .holding(TRUTH_BQ_PER_ML / 1000);
+        Acquisition acquisition = new Acquisition(
+                "",
+                "",
+                new Nuclide("F-18", 109.77 * 60, 0.9673),
+                36_000,
+                27_000.0,
+                Instant.EPOCH,
+                20,
+                (long) events,
+                false,
+                false);
+        Simulation simulation = new Simulation(
+                acquisition, new Phantom(new PhantomDescription("cylinder", List.of(cylinder))), system, "");
+        ListInMemory list = new ListInMemory(simulation.header(pool));
+        simulation.run(list, pool, Progress.SILENT);
+        return list;
+    }
+
+    /** The image, over the true concentration. */
+    Image reconstruct(ListInMemory list, int passes) throws IOException {
+        ListHeader header = list.header();
+        Image counts = sensitivity.copy();
+        for (int j = 0; j < counts.values().length; j++) {
+            counts.values()[j] *= (float) (1e-3 * header.pairsPerBecquerel());
+        }
+        Image support = FieldOfView.support(counts, FieldOfView.cylinder(29));
+        EventStore store = EventLoader.load(
+                list, sheaves, support, EventSelection.ALL, 1, EventBackground.NONE, pool, Progress.SILENT);
+        Image image = new ListModeEm(store, counts, EstimationSettings.mlem(passes), pool)
+                .run(PassListener.SILENT, Progress.SILENT)
+                .image();
+        for (int j = 0; j < image.values().length; j++) {
+            image.values()[j] /= (float) TRUTH_BQ_PER_ML;
+        }
+        return image;
+    }
+
+    /** Mean over the voxels whose centres lie between two radii and below a height, and its standard error from their scatter. */
+    static double[] mean(Image image, double fromMm, double toMm, double lowMm, double highMm) {
+        Grid grid = image.grid();
+        double sum = 0;
+        double squares = 0;
+        int n = 0;
+        for (int x = 0; x < grid.nx(); x++) {
+            for (int y = 0; y < grid.ny(); y++) {
+                for (int z = 0; z < grid.nz(); z++) {
+                    Vector3 p = grid.centre(x, y, z);
+                    double r = Math.hypot(p.x(), p.y());
+                    if (r >= fromMm && r < toMm && p.z() >= lowMm && p.z() < highMm) {
+                        double value = image.at(x, y, z);
+                        sum += value;
+                        squares += value * value;
+                        n++;
+                    }
+                }
+            }
+        }
+        double mean = sum / n;
+        return new double[] {mean, Math.sqrt((squares / n - mean * mean) / n)};
+    }
+}
