@@ -1,8 +1,8 @@
 package org.raysheaf.geometry.settings;
 
+import java.math.BigDecimal;
 import java.util.ArrayList;
 import java.util.List;
-import java.util.Locale;
 
 /**
  * Collects everything that is wrong with a group of settings, so that a user sees all of it at once. A settings record makes one
@@ -132,7 +132,9 @@ public final class Problems {
     }
 
     private static String plain(double value) {
-        boolean whole = value == Math.rint(value) && Math.abs(value) < 1e9;
-        return whole ? String.format(Locale.ROOT, "%.0f", value) : Double.toString(value);
+        if (!Double.isFinite(value)) {
+            return Double.toString(value);
+        }
+        return BigDecimal.valueOf(value).stripTrailingZeros().toPlainString();
     }
 }
