@@ -51,17 +51,10 @@ public final class KeyName {
      * @return the name, or null if the record implements no sealed interface and so is no choice
      */
     public static @Nullable String ofChoice(Class<?> record) {
-        Class<?> sealed = sealedAbove(record);
-        for (Class<?> above = sealed; above != null; above = sealedAbove(above)) {
-            sealed = above;
-        }
-        return sealed == null ? null : Choices.nameOf(record, sealed);
-    }
-
-    private static @Nullable Class<?> sealedAbove(Class<?> type) {
-        return Arrays.stream(type.getInterfaces())
+        return Arrays.stream(record.getInterfaces())
                 .filter(Class::isSealed)
                 .findFirst()
+                .map(sealed -> Choices.nameOf(record, sealed))
                 .orElse(null);
     }
 

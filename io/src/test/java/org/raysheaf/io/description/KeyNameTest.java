@@ -2,8 +2,10 @@ package org.raysheaf.io.description;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
+import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.raysheaf.geometry.solid.Sphere;
 
 class KeyNameTest {
     @ParameterizedTest
@@ -29,5 +31,12 @@ class KeyNameTest {
     })
     void spellsWordsInLowerCaseAndUnitsAsPhysicistsDo(String name, String key) {
         assertThat(KeyName.of(name)).isEqualTo(key);
+    }
+
+    @Test
+    void namesTheChoicesThatRecordsAre() {
+        assertThat(KeyName.ofChoice(Sphere.class)).isEqualTo("sphere");
+        assertThat(KeyName.ofChoice(Cabin.RingPlacement.class)).isEqualTo("ring");
+        assertThat(KeyName.ofChoice(Cabin.Block.class)).isNull();
     }
 }

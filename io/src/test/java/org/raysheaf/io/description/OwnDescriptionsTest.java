@@ -10,8 +10,11 @@ import org.raysheaf.geometry.detector.PairRule;
 import org.raysheaf.geometry.detector.Placement;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.geometry.phantom.PhantomDescription;
+import org.raysheaf.geometry.phantom.PhantomPart;
+import org.raysheaf.geometry.solid.Sphere;
 
-class SystemDescriptionTest {
+class OwnDescriptionsTest {
     private static final String RINGS = """
             raysheaf: system/1
             name: three rings
@@ -58,5 +61,22 @@ class SystemDescriptionTest {
         assertThatExceptionOfType(DescriptionException.class)
                 .isThrownBy(() -> read(text))
                 .withMessage("rings.yaml, line 13, field blocks[0].material: expected one of [crystal], found glass");
+    }
+
+    @Test
+    void readsAPhantom() throws DescriptionException {
+        String text = """
+                raysheaf: phantom/1
+                name: one hot ball
+                parts:
+                  - name: ball
+                    shape: {kind: sphere, radius_mm: 4}
+                    concentration_kBq_per_mL: 120
+                """;
+
+        PhantomDescription phantom = DescriptionReader.readText(text, "p.yaml", "phantom", PhantomDescription.class);
+
+        assertThat(phantom.parts())
+                .containsExactly(PhantomPart.of("ball", new Sphere(4)).holding(120));
     }
 }
