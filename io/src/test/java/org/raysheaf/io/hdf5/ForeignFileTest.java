@@ -42,8 +42,23 @@ class ForeignFileTest {
     @ParameterizedTest
     @ValueSource(
             strings = {
-                "type_u1", "type_i1", "type_u2", "type_i2", "type_u4", "type_i4", "type_u8", "type_i8", "type_big_u2",
-                "type_big_i4", "type_big_i8", "bool", "chunks", "gzip", "shuffle_gzip_fletcher", "fletcher_odd", "growing"
+                "type_u1",
+                "type_i1",
+                "type_u2",
+                "type_i2",
+                "type_u4",
+                "type_i4",
+                "type_u8",
+                "type_i8",
+                "type_big_u2",
+                "type_big_i4",
+                "type_big_i8",
+                "bool",
+                "chunks",
+                "gzip",
+                "shuffle_gzip_fletcher",
+                "fletcher_odd",
+                "growing"
             })
     void readsWholeNumbersOfAnyForm(String name) throws IOException {
         byte[] bytes = new byte[COUNT];
@@ -113,7 +128,11 @@ class ForeignFileTest {
 
     @ParameterizedTest
     @CsvSource({
-        "never_written,DAMAGED", "half_written,DAMAGED", "lzf,UNSUPPORTED", "complex,UNSUPPORTED", "text,UNSUPPORTED"
+        "never_written,DAMAGED",
+        "half_written,DAMAGED",
+        "lzf,UNSUPPORTED",
+        "complex,UNSUPPORTED",
+        "text,UNSUPPORTED"
     })
     void refusesDatasetsThatHoldNoNumbersItCanRead(String name, Kind expected) throws IOException {
         try (Hdf5File file = Hdf5File.open(copy("foreign.h5"))) {
@@ -135,8 +154,8 @@ class ForeignFileTest {
                             file.root().group(name);
                         })
                         .as(name)
-                        .isInstanceOfSatisfying(Hdf5Exception.class, e -> assertThat(e.kind())
-                                .isEqualTo(Kind.UNSUPPORTED))
+                        .isInstanceOfSatisfying(
+                                Hdf5Exception.class, e -> assertThat(e.kind()).isEqualTo(Kind.UNSUPPORTED))
                         .hasMessageContaining("libver=\"latest\"");
             }
         }
@@ -146,7 +165,8 @@ class ForeignFileTest {
     void noticesAWrongFletcherChecksum() throws IOException {
         Path path = copy("foreign.h5");
         byte[] bytes = Files.readAllBytes(path);
-        int chunk = indexOf(bytes, new byte[] {14, 15, 16, 17, 18, 19, 20}); // the third chunk of fletcher_odd, stored as it is
+        int chunk = indexOf(
+                bytes, new byte[] {14, 15, 16, 17, 18, 19, 20}); // the third chunk of fletcher_odd, stored as it is
         bytes[chunk + 3] ^= 64;
         Files.write(path, bytes);
 

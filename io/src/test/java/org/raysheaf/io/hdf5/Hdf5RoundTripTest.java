@@ -89,7 +89,8 @@ class Hdf5RoundTripTest {
             assertThat(b).isEqualTo(bytes);
             assertThat(l).isEqualTo(longs);
             assertThat(f).isEqualTo(floats);
-            assertThat(group.dataset("d").orElseThrow().floats()).startsWith((float) Math.PI, 0f, Float.NEGATIVE_INFINITY);
+            assertThat(group.dataset("d").orElseThrow().floats())
+                    .startsWith((float) Math.PI, 0f, Float.NEGATIVE_INFINITY);
             assertThat(group.names()).containsExactly("b", "l", "f", "d", "crc32c");
         }
     }
@@ -130,7 +131,8 @@ class Hdf5RoundTripTest {
         }
         try (HdfFile other = new HdfFile(path)) {
             assertThat(other.getDatasetByPath("activity").getDataFlat()).isEqualTo(volume);
-            assertThat(other.getDatasetByPath("activity").getAttribute("unit").getData()).isEqualTo("kBq/mL");
+            assertThat(other.getDatasetByPath("activity").getAttribute("unit").getData())
+                    .isEqualTo("kBq/mL");
         }
     }
 
@@ -167,7 +169,8 @@ class Hdf5RoundTripTest {
             StoredDataset dataset = file.root().dataset("a").orElseThrow();
             assertThatThrownBy(dataset::floats)
                     .isInstanceOf(Hdf5Exception.class)
-                    .hasMessageMatching(".*file\\.h5, a: expected CRC-32C [0-9a-f]{8}, found [0-9a-f]{8}; the file is damaged.*");
+                    .hasMessageMatching(
+                            ".*file\\.h5, a: expected CRC-32C [0-9a-f]{8}, found [0-9a-f]{8}; the file is damaged.*");
         }
     }
 
@@ -190,7 +193,8 @@ class Hdf5RoundTripTest {
         }
 
         try (Hdf5File file = Hdf5File.open(path)) {
-            ValueReader reader = file.root().dataset("c").orElseThrow().values(file.root().checksums("c"));
+            ValueReader reader =
+                    file.root().dataset("c").orElseThrow().values(file.root().checksums("c"));
             reader.read(values, 0, block);
             long before = allocated();
             for (int i = 1; i < blocks; i++) {
@@ -222,7 +226,8 @@ class Hdf5RoundTripTest {
             assertThatThrownBy(() -> root.group("g")).hasMessageContaining("has a member of that name: g");
             assertThatThrownBy(() -> root.attribute("a", "x".repeat(70_000)))
                     .hasMessageContaining("store longer text or data as a dataset");
-            assertThatThrownBy(() -> root.array("v", new float[7], 2, 4)).hasMessageContaining("holds 8 values, given are 7");
+            assertThatThrownBy(() -> root.array("v", new float[7], 2, 4))
+                    .hasMessageContaining("holds 8 values, given are 7");
             assertThatThrownBy(() -> root.column("c", ElementType.INT64, 1 << 28, Compression.NONE))
                     .hasMessageContaining("a chunk holds");
             ColumnWriter column = root.column("c", ElementType.UINT8, 10, Compression.NONE);
@@ -264,7 +269,8 @@ class Hdf5RoundTripTest {
 
         try (Hdf5File file = Hdf5File.open(path)) {
             ValueReader reader = file.root().dataset("a").orElseThrow().values(null);
-            assertThatThrownBy(() -> reader.read(new long[6], 0, 6)).hasMessageContaining("only 5 values are left, wanted 6");
+            assertThatThrownBy(() -> reader.read(new long[6], 0, 6))
+                    .hasMessageContaining("only 5 values are left, wanted 6");
         }
     }
 }

@@ -30,11 +30,14 @@ class OutsideReadersTest {
         EventBlock block = SampleLists.block(events, 1);
         Path path = SampleLists.write(folder.resolve("list.h5"), compression, chunkLength, block);
 
-        List<String> printed = Python.script(folder, "describe.py", path).lines().toList();
+        List<String> printed =
+                Python.script(folder, "describe.py", path).lines().toList();
 
         for (Attribute attribute : Attribute.values()) {
             String type = attribute.type().toString().toLowerCase(Locale.ROOT);
-            assertThat(printed).contains(String.join("|", attribute.columnName(), type, Integer.toString(events), digest(block, attribute)));
+            assertThat(printed)
+                    .contains(String.join(
+                            "|", attribute.columnName(), type, Integer.toString(events), digest(block, attribute)));
             assertThat(printed).contains(attribute.columnName() + ".unit|" + attribute.unit());
             assertThat(printed).contains(attribute.columnName() + ".meaning|" + attribute.meaning());
         }
@@ -73,7 +76,12 @@ class OutsideReadersTest {
         String printed = Python.run(List.of("h5dump", "-H", "-p", path.toString()));
 
         assertThat(printed)
-                .contains("ATTRIBUTE \"raysheaf\"", "DATASET \"element_a\"", "H5T_STD_U32LE", "COMPRESSION DEFLATE", "GROUP \"crc32c\"");
+                .contains(
+                        "ATTRIBUTE \"raysheaf\"",
+                        "DATASET \"element_a\"",
+                        "H5T_STD_U32LE",
+                        "COMPRESSION DEFLATE",
+                        "GROUP \"crc32c\"");
     }
 
     @Test

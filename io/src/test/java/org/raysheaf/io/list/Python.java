@@ -15,7 +15,8 @@ import java.util.concurrent.TimeUnit;
 
 /** Runs outside readers and writers of HDF5 where they are installed. */
 final class Python {
-    private static final String PYTHON = "/usr/bin/python3"; // where the operating system keeps the one with its own packages
+    private static final String PYTHON =
+            "/usr/bin/python3"; // where the operating system keeps the one with its own packages
     private static final long LONGEST_S = 60;
 
     private Python() {}
@@ -50,7 +51,9 @@ final class Python {
 
     /** Runs a command to its end, requires success, and returns what it printed. */
     static String run(List<String> command) throws IOException {
-        Process process = new ProcessBuilder(new ArrayList<>(command)).redirectErrorStream(true).start();
+        Process process = new ProcessBuilder(new ArrayList<>(command))
+                .redirectErrorStream(true)
+                .start();
         String printed = new String(process.getInputStream().readAllBytes(), StandardCharsets.UTF_8);
         try {
             assertThat(process.waitFor(LONGEST_S, TimeUnit.SECONDS)).isTrue();

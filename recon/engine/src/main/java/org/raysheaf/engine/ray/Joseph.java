@@ -105,7 +105,7 @@ public final class Joseph {
         int sv = lattice.stride(axis == 2 ? 1 : 2);
         float u = walks.u[k] + walks.du[k] * j;
         float v = walks.v[k] + walks.dv[k] * j;
-        int at = (walks.first(k) + j) * lattice.stride(axis) + (int) u * su + (int) v * sv;
+        int at = (walks.first(k) + j) * lattice.stride(axis) + ((int) u) * su + ((int) v) * sv;
         float fu = u - (int) u;
         float fv = v - (int) v;
         float a = image[at] + fv * (image[at + sv] - image[at]);

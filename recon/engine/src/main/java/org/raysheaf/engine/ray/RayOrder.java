@@ -9,7 +9,6 @@ package org.raysheaf.engine.ray;
  */
 final class RayOrder {
     private static final int BITS = 8;
-    private static final int CELLS = 1 << BITS;
 
     private RayOrder() {}
 

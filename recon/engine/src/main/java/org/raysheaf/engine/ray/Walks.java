@@ -90,7 +90,7 @@ public final class Walks {
      * @return the lattice coordinate along the dominant axis
      */
     public int first(int k) {
-        return spans[k] >>> 15 & PLANE;
+        return (spans[k] >>> 15) & PLANE;
     }
 
     /**
@@ -100,7 +100,7 @@ public final class Walks {
      * @return the count; 0 if the walk is empty
      */
     public int planes(int k) {
-        return (spans[k] & PLANE) - (spans[k] >>> 15 & PLANE) + 1;
+        return (spans[k] & PLANE) - ((spans[k] >>> 15) & PLANE) + 1;
     }
 
     /**
@@ -148,7 +148,7 @@ public final class Walks {
         if (!(low <= high) || last < first) {
             return;
         }
-        spans[k] = w << 30 | first << 15 | last;
+        spans[k] = span(w, first, last);
         u[k] = (float) (oa + (first - ow) * sa);
         du[k] = (float) sa;
         v[k] = (float) (ob + (first - ow) * sb);
@@ -157,6 +157,10 @@ public final class Walks {
         double stepB = sb * lattice.spacingMm(b);
         double stepW = lattice.spacingMm(w);
         steps[k] = (float) (weight * Math.sqrt(stepW * stepW + stepA * stepA + stepB * stepB));
+    }
+
+    private static int span(int axis, int first, int last) {
+        return (axis << 30) | (first << 15) | last;
     }
 
     /** How far along the dominant axis, from the start of the ray, the coordinate o + s·t enters 0 … top. */
@@ -192,7 +196,7 @@ public final class Walks {
         }
         u[k] += from * du[k];
         v[k] += from * dv[k];
-        spans[k] = axis(k) << 30 | first(k) + from << 15 | first(k) + to;
+        spans[k] = span(axis(k), first(k) + from, first(k) + to);
         return true;
     }
 
