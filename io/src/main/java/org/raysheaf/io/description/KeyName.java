@@ -54,7 +54,7 @@ public final class KeyName {
         return Arrays.stream(record.getInterfaces())
                 .filter(Class::isSealed)
                 .findFirst()
-                .map(sealed -> Choices.nameOf(record, sealed))
+                .map(choice -> Choices.nameOf(record, choice))
                 .orElse(null);
     }
 

@@ -61,8 +61,8 @@ final class UniformCylinder {
     }
 
     ListInMemory record(int events) throws IOException {
-        PhantomPart cylinder = PhantomPart.of("cylinder", new Cylinder(RADIUS_MM, LENGTH_MM))
-                .holding(TRUTH_BQ_PER_ML / 1000);
+        PhantomPart cylinder =
+                PhantomPart.of("cylinder", new Cylinder(RADIUS_MM, LENGTH_MM)).holding(TRUTH_BQ_PER_ML / 1000);
         Acquisition acquisition = new Acquisition(
                 "",
                 "",
