@@ -35,8 +35,7 @@ public final class EventLoader {
     private long used;
     private int events;
 
-    private EventLoader(
-            EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
+    private EventLoader(EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
         this.maker = maker;
         this.raysPerEvent = maker.raysPerSheaf();
         this.selection = selection;

@@ -34,7 +34,6 @@ final class RayOrder {
         int axis = walks.axis(k);
         return code(walks, k, lattice, axis);
     }
-
     static final int MODE = Integer.getInteger("order", 2);
     static final float CELL = Float.parseFloat(System.getProperty("cell", "1"));
     static final float ZF = Float.parseFloat(System.getProperty("zf", "4"));
@@ -53,10 +52,7 @@ final class RayOrder {
             return axis << 30 | kp << 18 | kz << 9 | ks;
         }
         float zc = b == 2 ? ZF : 1, yc = a == 2 ? ZF : 1;
-        int i0 = clamp(uc / (CELL * yc), 256),
-                i1 = clamp(ua / (CELL * yc), 256),
-                i2 = clamp(vc / (CELL * zc), 256),
-                i3 = clamp(va / (CELL * zc), 256);
+        int i0 = clamp(uc / (CELL * yc), 256), i1 = clamp(ua / (CELL * yc), 256), i2 = clamp(vc / (CELL * zc), 256), i3 = clamp(va / (CELL * zc), 256);
         if (MODE == 2) return morton(axis, i0, i1, i2, i3);
         if (MODE == 3) return hilbert(axis, new int[] {i1, i3, i2, i0}, 7);
         if (MODE == 5) return hilbert(axis, new int[] {i0, i1, i2, i3}, 7);
@@ -69,18 +65,12 @@ final class RayOrder {
         }
         throw new IllegalStateException();
     }
-
-    private static int clamp(float x, int n) {
-        return Math.max(0, Math.min(n - 1, (int) x));
-    }
-
+    private static int clamp(float x, int n) { return Math.max(0, Math.min(n - 1, (int) x)); }
     private static int morton(int axis, int a, int b, int c, int d) {
         int code = axis;
-        for (int bit = 6; bit >= 0; bit--)
-            code = code << 4 | (b >> bit & 1) << 3 | (d >> bit & 1) << 2 | (c >> bit & 1) << 1 | (a >> bit & 1);
+        for (int bit = 6; bit >= 0; bit--) code = code << 4 | (b >> bit & 1) << 3 | (d >> bit & 1) << 2 | (c >> bit & 1) << 1 | (a >> bit & 1);
         return code;
     }
-
     static int hilbert(int axis, int[] x, int bits) {
         int n = x.length;
         for (int i = 0; i < n; i++) x[i] = Math.min(x[i], (1 << bits) - 1);
@@ -88,11 +78,7 @@ final class RayOrder {
             int p = q - 1;
             for (int i = 0; i < n; i++) {
                 if ((x[i] & q) != 0) x[0] ^= p;
-                else {
-                    int t = (x[0] ^ x[i]) & p;
-                    x[0] ^= t;
-                    x[i] ^= t;
-                }
+                else { int t = (x[0] ^ x[i]) & p; x[0] ^= t; x[i] ^= t; }
             }
         }
         for (int i = 1; i < n; i++) x[i] ^= x[i - 1];
@@ -122,18 +108,9 @@ final class RayOrder {
             java.util.Arrays.fill(starts, 0);
             for (int i = aFrom; i < aFrom + n; i++) starts[(int) (a[i] >>> shift) & 2047]++;
             int sum = bFrom;
-            for (int i = 0; i < 2048; i++) {
-                int c = starts[i];
-                starts[i] = sum;
-                sum += c;
-            }
+            for (int i = 0; i < 2048; i++) { int c = starts[i]; starts[i] = sum; sum += c; }
             for (int i = aFrom; i < aFrom + n; i++) b[starts[(int) (a[i] >>> shift) & 2047]++] = a[i];
-            long[] t = a;
-            a = b;
-            b = t;
-            int f = aFrom;
-            aFrom = bFrom;
-            bFrom = f;
+            long[] t = a; a = b; b = t; int f = aFrom; aFrom = bFrom; bFrom = f;
         }
         if (a != entries) System.arraycopy(a, aFrom, entries, from, n);
     }

@@ -36,12 +36,9 @@ final class ExactTracerTest {
         double hits = 0;
         for (int i = 0; i < 40_000; i++) {
             Vector3 direction = new Vector3(random.nextGaussian(), random.nextGaussian(), random.nextGaussian()).unit();
-            Vector3 side = direction
-                    .cross(Math.abs(direction.x()) < 0.5 ? Vector3.X : Vector3.Y)
-                    .unit();
+            Vector3 side = direction.cross(Math.abs(direction.x()) < 0.5 ? Vector3.X : Vector3.Y).unit();
             Vector3 other = direction.cross(side);
-            Vector3 middle =
-                    side.times(40 * (random.nextDouble() - 0.5)).plus(other.times(40 * (random.nextDouble() - 0.5)));
+            Vector3 middle = side.times(40 * (random.nextDouble() - 0.5)).plus(other.times(40 * (random.nextDouble() - 0.5)));
             double chord = chord(BOX, middle.minus(direction.times(100)), middle.plus(direction.times(100)));
             sum += chord;
             hits += chord > 0 ? 1 : 0;
