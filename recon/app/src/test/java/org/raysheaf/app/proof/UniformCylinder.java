@@ -45,19 +45,31 @@ final class UniformCylinder {
     private final Image sensitivity;
     private final CoincidenceSheaves sheaves;
 
-    UniformCylinder(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
-        this.pool = pool;
+    /** The system of the sample data: three rings of 12 blocks of 11 × 11 crystals. */
+    static UniformCylinder heron12(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
         CrystalBlock tile = new CrystalBlock(
                 "tile", 11, 11, 1, new Vector3(1.85, 1.85, depthMm), new Vector3(1.7, 1.7, depthMm), "crystal");
+        return new UniformCylinder(attenuationLengthMm, tile, Grid.centred(63, 63, 67, 0.925), pool);
+    }
+
+    /** The same rings with a tenth of the crystals, for a quick look. */
+    static UniformCylinder coarse(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
+        CrystalBlock tile = new CrystalBlock(
+                "tile", 4, 4, 1, new Vector3(5.1, 5.1, depthMm), new Vector3(4.8, 4.8, depthMm), "crystal");
+        return new UniformCylinder(attenuationLengthMm, tile, Grid.centred(29, 29, 31, 2), pool);
+    }
+
+    private UniformCylinder(double attenuationLengthMm, CrystalBlock tile, Grid grid, ForkJoinPool pool) {
+        this.pool = pool;
         system = new DetectorSystem(new SystemDescription(
-                "heron-12",
+                "rings",
                 new org.raysheaf.geometry.detector.FieldOfView(29, 62),
                 new PairRule(3),
                 List.of(new Material("crystal", attenuationLengthMm)),
                 List.of(tile),
                 List.of(new Placement.Rings("tile", 12, 42, 0, List.of(-20.8, 0.0, 20.8)))));
         sheaves = new CoincidenceSheaves(ElementResponse.tabulate(system, pool, Progress.SILENT));
-        sensitivity = Sensitivity.of(sheaves, Grid.centred(63, 63, 67, 0.925), pool, Progress.SILENT);
+        sensitivity = Sensitivity.of(sheaves, grid, pool, Progress.SILENT);
     }
 
     ListInMemory record(int events) throws IOException {
@@ -81,7 +93,7 @@ final class UniformCylinder {
         return list;
     }
 
-    /** The image, over the true concentration. */
+    /** The image, divided by the true concentration. */
     Image reconstruct(ListInMemory list, int passes) throws IOException {
         ListHeader header = list.header();
         Image counts = sensitivity.copy();
