@@ -1,8 +1,11 @@
 package org.raysheaf.engine.ray;
 
 import java.io.IOException;
+import java.util.HashSet;
+import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.EventTally;
@@ -35,7 +38,8 @@ public final class EventLoader {
     private long used;
     private int events;
 
-    private EventLoader(EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
+    private EventLoader(
+            EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
         this.maker = maker;
         this.raysPerEvent = maker.raysPerSheaf();
         this.selection = selection;
@@ -88,7 +92,7 @@ public final class EventLoader {
             throws IOException {
         EventLoader loader = new EventLoader(source, maker, support, selection, background);
         progress.begin("reading events", source.events(), "events");
-        EventBlock block = new EventBlock(maker.attributes(), BLOCK);
+        EventBlock block = new EventBlock(columns(source, maker), BLOCK);
         try (EventSource.Cursor cursor = source.open()) {
             while (cursor.next(block)) {
                 loader.add(block, pool);
@@ -98,6 +102,14 @@ public final class EventLoader {
         EventStore store = loader.sorted(subsets, pool);
         progress.end(store.events() + " events kept");
         return store;
+    }
+
+    /** What the maker needs, and what else it reads where the list has it. */
+    private static Set<Attribute> columns(EventSource source, SheafMaker maker) {
+        Set<Attribute> columns = new HashSet<>(maker.alsoReads());
+        columns.retainAll(source.attributes());
+        columns.addAll(maker.attributes());
+        return columns;
     }
 
     private void add(EventBlock block, ForkJoinPool pool) throws IOException {
