@@ -11,7 +11,16 @@ import picocli.CommandLine.Spec;
         name = "raysheaf",
         description = "Quantitative 3-D activity from lists of gamma events, without binning.",
         mixinStandardHelpOptions = true,
-        versionProvider = Raysheaf.Version.class)
+        versionProvider = Raysheaf.Version.class,
+        footer = {"", Common.CAUTION},
+        subcommands = {
+            CheckVerb.class,
+            SimulateVerb.class,
+            SensitivityVerb.class,
+            ReconstructVerb.class,
+            LinesVerb.class,
+            DemoVerb.class
+        })
 public final class Raysheaf implements Runnable {
 
     @Spec
@@ -26,6 +35,7 @@ public final class Raysheaf implements Runnable {
      * @param arguments the verb, its options and files
      */
     public static void main(String[] arguments) {
+        System.setProperty("java.awt.headless", "true");
         System.exit(commandLine().execute(arguments));
     }
 
@@ -35,12 +45,26 @@ public final class Raysheaf implements Runnable {
      * @return a new parser, to be used by one thread
      */
     static CommandLine commandLine() {
-        return new CommandLine(new Raysheaf());
+        Failures failures = new Failures();
+        CommandLine line = new CommandLine(new Raysheaf())
+                .setExecutionExceptionHandler(failures)
+                .setParameterExceptionHandler(failures);
+        for (CommandLine verb : line.getSubcommands().values()) {
+            verb.getCommandSpec().mixinStandardHelpOptions(true).versionProvider(new Version());
+            verb.getCommandSpec().usageMessage().footer("", Common.CAUTION).sortOptions(false);
+        }
+        return line;
     }
 
     @Override
     public void run() {
-        throw new CommandLine.ParameterException(spec.commandLine(), "Which verb? See --help.");
+        throw new CommandLine.ParameterException(
+                spec.commandLine(), "which verb? check, simulate, sensitivity, reconstruct, lines or demo");
+    }
+
+    /** The version of the program, for results. */
+    static String version() {
+        return Objects.requireNonNullElse(Raysheaf.class.getPackage().getImplementationVersion(), "(not packaged)");
     }
 
     /** Reads the version from the jar that this class came in. */
@@ -50,8 +74,7 @@ public final class Raysheaf implements Runnable {
 
         @Override
         public String[] getVersion() {
-            String packaged = Raysheaf.class.getPackage().getImplementationVersion();
-            return new String[] {"raysheaf " + Objects.requireNonNullElse(packaged, "(not packaged)")};
+            return new String[] {"raysheaf " + version()};
         }
     }
 }

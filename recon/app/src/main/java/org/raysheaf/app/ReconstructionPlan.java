@@ -1,0 +1,38 @@
+package org.raysheaf.app;
+
+import org.jspecify.annotations.Nullable;
+import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.geometry.settings.Default;
+
+/**
+ * How to get from a list to an image, as a description file ({@code raysheaf: reconstruction/1}) gives it.
+ *
+ * @param list path of the list, from the description's folder
+ * @param system path of the system, for a sensitivity without a list
+ * @param grid the voxels
+ * @param estimation passes, subsets, lanes, filter
+ * @param halves whether to make the images of the odd and of the even events as well
+ */
+record ReconstructionPlan(
+        @Nullable String list,
+        @Nullable String system,
+        @Default("{}") GridSettings grid,
+        @Default("{}") EstimationSettings estimation,
+        @Default("false") boolean halves) {
+    /** What is done with a bare list. */
+    static ReconstructionPlan bare() {
+        return new ReconstructionPlan(
+                null, null, new GridSettings(null, null, null), EstimationSettings.mlem(20), false);
+    }
+
+    /** The same with the number of lanes given on the command line, and halves if asked for there. */
+    ReconstructionPlan with(int lanes, boolean wantHalves) {
+        EstimationSettings e = estimation;
+        return new ReconstructionPlan(
+                list,
+                system,
+                grid,
+                new EstimationSettings(e.passes(), e.subsets(), lanes > 0 ? lanes : e.lanes(), e.postFilterFwhmMm()),
+                halves || wantHalves);
+    }
+}

@@ -1,0 +1,62 @@
+package org.raysheaf.app;
+
+import java.io.IOException;
+import java.nio.file.Path;
+import java.util.List;
+import java.util.Map;
+import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.io.description.DescriptionReader;
+import org.raysheaf.io.list.ListFile;
+import org.raysheaf.io.volume.VolumeFile;
+import picocli.CommandLine.Command;
+import picocli.CommandLine.Option;
+import picocli.CommandLine.Parameters;
+
+/** How well a system sees each voxel. */
+@Command(
+        name = "sensitivity",
+        description = {
+            "The sensitivity image. With a list: expected counts of the list per Bq/mL in each voxel.",
+            "With a system only: the same for one pair of photons per second and becquerel, for one second."
+        })
+final class SensitivityVerb extends Verb {
+    @Parameters(paramLabel = "RECONSTRUCTION.yaml", description = "Names a list or a system, and the grid.")
+    private Path input;
+
+    @Option(
+            names = "--out",
+            required = true,
+            paramLabel = "VOLUME",
+            description = "A .nii, .nii.gz or .h5 file (unit mL/Bq).")
+    private Path out;
+
+    SensitivityVerb() {}
+
+    @Override
+    void run() throws IOException {
+        common().requireFree(out);
+        ReconstructionPlan plan = DescriptionReader.read(input, "reconstruction", ReconstructionPlan.class);
+        ForkJoinPool pool = common().pool();
+        Progress progress = common().progress();
+        String listName = plan.list();
+        String systemName = plan.system();
+        Systems systems;
+        double pairs = 1;
+        if (listName != null) {
+            ListFile list = ListFile.open(input.resolveSibling(listName));
+            systems =
+                    Systems.of(list.header().systemDescription(), listName + " (its system)", common(), pool, progress);
+            pairs = list.header().pairsPerBecquerel();
+        } else if (systemName != null) {
+            systems = Systems.read(input.resolveSibling(systemName), common(), pool, progress);
+        } else {
+            throw new IOException(input + ": names neither a list nor a system; add one of them");
+        }
+        Image image = Reconstruction.countsPerBqPerMl(
+                systems.sensitivity(systems.sheaves(), plan.grid().gridFor(systems.system())), pairs);
+        VolumeFile.write(image, "mL/Bq", out, common().replace());
+        common().print(Map.of("volume", out.toString(), "sum", image.sum()), List.of("written " + out, Common.CAUTION));
+    }
+}

@@ -1,0 +1,91 @@
+package org.raysheaf.app;
+
+import java.io.IOException;
+import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
+import java.nio.file.Path;
+import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.engine.Sensitivity;
+import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.SystemDescription;
+import org.raysheaf.geometry.frame.Grid;
+import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.io.cache.Cache;
+import org.raysheaf.io.description.DescriptionReader;
+
+/** A detector system with what is made once per system and kept: its response and its sensitivity. */
+final class Systems {
+    /** To be raised whenever the numbers that come out change: then nothing that was kept before is taken. */
+    private static final String REVISION = "1";
+
+    private final DetectorSystem system;
+    private final String text;
+    private final Common common;
+    private final ForkJoinPool pool;
+    private final Progress progress;
+    private final Cache cache;
+
+    private Systems(String text, String source, Common common, ForkJoinPool pool, Progress progress)
+            throws IOException {
+        this.text = text;
+        this.common = common;
+        this.pool = pool;
+        this.progress = progress;
+        this.cache = common.cache();
+        this.system = new DetectorSystem(DescriptionReader.readText(text, source, "system", SystemDescription.class));
+    }
+
+    static Systems of(String text, String source, Common common, ForkJoinPool pool, Progress progress)
+            throws IOException {
+        return new Systems(text, source, common, pool, progress);
+    }
+
+    static Systems read(Path file, Common common, ForkJoinPool pool, Progress progress) throws IOException {
+        DescriptionReader.read(file, "system", SystemDescription.class); // for errors that name the file
+        return new Systems(Files.readString(file, StandardCharsets.UTF_8), file.toString(), common, pool, progress);
+    }
+
+    DetectorSystem system() {
+        return system;
+    }
+
+    String text() {
+        return text;
+    }
+
+    /** The sheaves of the system, with its response from the cache if it is there. */
+    CoincidenceSheaves sheaves() {
+        String digest = Cache.digest(REVISION, text);
+        ElementResponse response = cache.find("response", digest)
+                .flatMap(this::restore)
+                .orElseGet(() -> {
+                    ElementResponse made = ElementResponse.tabulate(system, pool, progress);
+                    common.keep(cache, "response", digest, made.tables());
+                    return made;
+                });
+        return new CoincidenceSheaves(response);
+    }
+
+    private java.util.Optional<ElementResponse> restore(float[] tables) {
+        try {
+            return java.util.Optional.of(ElementResponse.restore(system, tables));
+        } catch (IllegalArgumentException e) {
+            return java.util.Optional.empty();
+        }
+    }
+
+    /** Sensitivity: Σ étendue / 2π · length (mm³) in each voxel. */
+    Image sensitivity(CoincidenceSheaves sheaves, Grid grid) {
+        String digest = Cache.digest(REVISION, text, grid.toString());
+        float[] kept = cache.find("sensitivity", digest).orElse(null);
+        if (kept != null && kept.length == grid.voxels()) {
+            return new Image(grid, kept);
+        }
+        Image made = Sensitivity.of(sheaves, grid, pool, progress);
+        common.keep(cache, "sensitivity", digest, made.values());
+        return made;
+    }
+}
