@@ -122,7 +122,20 @@ final class ResultFolder {
                         "elements", done.systems().system().elements(),
                         "sha256", Cache.digest(done.systems().text())));
         results.put("plan", done.plan());
-        results.put("grid", done.grid());
+        results.put(
+                "grid",
+                Map.of(
+                        "voxels",
+                                List.of(
+                                        done.grid().nx(),
+                                        done.grid().ny(),
+                                        done.grid().nz()),
+                        "spacing_mm",
+                                List.of(
+                                        done.grid().spacingXMm(),
+                                        done.grid().spacingYMm(),
+                                        done.grid().spacingZMm()),
+                        "centre_mm", List.of(0, 0, 0)));
         results.put("events", accounting(done.whole().tally()));
         results.put("activity", Figures.of(done, activity).named(header));
         results.put("passes", passes(done.whole()));
@@ -156,7 +169,11 @@ final class ResultFolder {
     }
 
     /** The figures of the image: total activity with the error of counting, and the noise if halves were made. */
-    private record Figures(double totalKBq, double standardErrorKBq, double maxKBqPerMl, @Nullable HalfDifference noise) {
+    private record Figures(
+            double totalKBq,
+            double standardErrorKBq,
+            double maxKBqPerMl,
+            @Nullable HalfDifference noise) {
         static Figures of(Reconstruction done, Image activity) {
             double total = activity.sum() * 1e-3 * activity.grid().voxelVolumeMm3();
             float max = 0;
