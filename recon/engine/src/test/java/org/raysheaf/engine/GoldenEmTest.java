@@ -80,12 +80,13 @@ final class GoldenEmTest {
         int last = (int) steps[steps.length - 1][0];
         List<Image> images = new ArrayList<>();
         List<PassReport> passes = new ArrayList<>();
-        estimator(background, last + 1).run(
-                (pass, image) -> {
-                    passes.add(pass);
-                    images.add(image.get());
-                },
-                Progress.SILENT);
+        estimator(background, last + 1)
+                .run(
+                        (pass, image) -> {
+                            passes.add(pass);
+                            images.add(image.get());
+                        },
+                        Progress.SILENT);
         for (double[] step : steps) {
             int n = (int) step[0];
             float[] x = images.get(n - 1).values();
@@ -102,8 +103,8 @@ final class GoldenEmTest {
         Grid grid = new Grid(1, 1, 3, 1, 1, 1, Pose.IDENTITY);
         Image sensitivity = Sensitivity.of(list, grid, POOL, Progress.SILENT);
         Image support = FieldOfView.support(sensitivity, point -> true);
-        EventStore store = EventLoader.load(
-                list, list, support, EventSelection.ALL, 1, background, POOL, Progress.SILENT);
+        EventStore store =
+                EventLoader.load(list, list, support, EventSelection.ALL, 1, background, POOL, Progress.SILENT);
         return new ListModeEm(store, sensitivity, EstimationSettings.mlem(passes), POOL);
     }
 

@@ -27,7 +27,9 @@ final class ListModeEmTest {
     private static final Grid GRID = Grid.centred(32, 32, 24, 1.25);
     private static final MemoryList LIST = cylinder(EVENTS, 41);
     private static final Image SENSITIVITY = smoothSensitivity();
-    private static final Image SUPPORT = FieldOfView.support(SENSITIVITY, FieldOfView.cylinder(17));
+    /** Less than the activity fills, so that some lines miss it. */
+    private static final Image SUPPORT = FieldOfView.support(SENSITIVITY, FieldOfView.cylinder(14));
+
     private static final ForkJoinPool POOL = new ForkJoinPool(2);
 
     /** Σ s·x = events: sums of about 10⁶ single-precision contributions, each good to 6·10⁻⁸. */
@@ -62,7 +64,10 @@ final class ListModeEmTest {
         for (PassReport pass : estimate.passes()) {
             assertThat(pass.expectedEvents() / store.events()).isCloseTo(1, within(BALANCE));
         }
-        double gain = run(load(EventSelection.ALL, 1), new EstimationSettings(2, 1, 2, 0), POOL).passes().get(1).logLikelihood();
+        double gain = run(load(EventSelection.ALL, 1), new EstimationSettings(2, 1, 2, 0), POOL)
+                .passes()
+                .get(1)
+                .logLikelihood();
         assertThat(estimate.passes().get(1).logLikelihood()).isGreaterThan(gain);
     }
 
@@ -73,7 +78,8 @@ final class ListModeEmTest {
             ForkJoinPool pool = new ForkJoinPool(threads);
             EventStore store = EventLoader.load(
                     LIST, LIST, SUPPORT, EventSelection.ALL, 2, EventBackground.NONE, pool, Progress.SILENT);
-            float[] image = run(store, new EstimationSettings(2, 2, 5, 0), pool).image().values();
+            float[] image =
+                    run(store, new EstimationSettings(2, 2, 5, 0), pool).image().values();
             pool.shutdown();
             first = first == null ? image : first;
             assertThat(image).isEqualTo(first);
@@ -111,7 +117,9 @@ final class ListModeEmTest {
             double[] sum = new double[x.length];
             for (double[] line : lines) {
                 double[] row = JosephTwin.row(
-                        grid, new Vector3((float) line[0], (float) line[1], (float) line[2]), new Vector3((float) line[3], (float) line[4], (float) line[5]));
+                        grid,
+                        new Vector3((float) line[0], (float) line[1], (float) line[2]),
+                        new Vector3((float) line[3], (float) line[4], (float) line[5]));
                 double mean = 0;
                 for (int j = 0; j < x.length; j++) {
                     mean += row[j] * x[j];
@@ -145,7 +153,8 @@ final class ListModeEmTest {
 
     @Test
     void fillsOnlyTheSupport() throws Exception {
-        Image image = run(load(EventSelection.ALL, 1), EstimationSettings.mlem(2), POOL).image();
+        Image image = run(load(EventSelection.ALL, 1), EstimationSettings.mlem(2), POOL)
+                .image();
         for (int j = 0; j < image.values().length; j++) {
             assertThat(image.values()[j] > 0).isEqualTo(SUPPORT.values()[j] > 0);
         }
@@ -180,8 +189,7 @@ final class ListModeEmTest {
     }
 
     private static EventStore load(EventSelection selection, int subsets) throws Exception {
-        return EventLoader.load(
-                LIST, LIST, SUPPORT, selection, subsets, EventBackground.NONE, POOL, Progress.SILENT);
+        return EventLoader.load(LIST, LIST, SUPPORT, selection, subsets, EventBackground.NONE, POOL, Progress.SILENT);
     }
 
     private static Estimate run(EventStore store, EstimationSettings settings, ForkJoinPool pool) {
@@ -232,8 +240,13 @@ final class ListModeEmTest {
             double ahead = -along + reach;
             if (Math.abs(z + back * slope) < 31 && Math.abs(z + ahead * slope) < 31) {
                 lines[made++] = new double[] {
-                    x + back * Math.cos(psi), y + back * Math.sin(psi), z + back * slope,
-                    x + ahead * Math.cos(psi), y + ahead * Math.sin(psi), z + ahead * slope, 1
+                    x + back * Math.cos(psi),
+                    y + back * Math.sin(psi),
+                    z + back * slope,
+                    x + ahead * Math.cos(psi),
+                    y + ahead * Math.sin(psi),
+                    z + ahead * slope,
+                    1
                 };
             }
         }

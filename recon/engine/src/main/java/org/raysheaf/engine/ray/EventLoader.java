@@ -1,8 +1,12 @@
 package org.raysheaf.engine.ray;
 
 import java.io.IOException;
+import java.util.EnumSet;
+import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
+import java.util.stream.Collectors;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.EventTally;
@@ -35,7 +39,8 @@ public final class EventLoader {
     private long used;
     private int events;
 
-    private EventLoader(EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
+    private EventLoader(
+            EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
         this.maker = maker;
         this.raysPerEvent = maker.raysPerSheaf();
         this.selection = selection;
@@ -73,7 +78,7 @@ public final class EventLoader {
      * @param pool prepares the rays
      * @param progress hears of the events read
      * @return the events, sorted
-     * @throws IOException if the list cannot be read
+     * @throws IOException if the list cannot be read or lacks a column that the maker needs
      * @throws IllegalArgumentException if the list has too many events for memory, or fewer usable ones than there are subsets
      */
     public static EventStore load(
@@ -88,7 +93,7 @@ public final class EventLoader {
             throws IOException {
         EventLoader loader = new EventLoader(source, maker, support, selection, background);
         progress.begin("reading events", source.events(), "events");
-        EventBlock block = new EventBlock(maker.attributes(), BLOCK);
+        EventBlock block = new EventBlock(columns(source, maker), BLOCK);
         try (EventSource.Cursor cursor = source.open()) {
             while (cursor.next(block)) {
                 loader.add(block, pool);
@@ -98,6 +103,26 @@ public final class EventLoader {
         EventStore store = loader.sorted(subsets, pool);
         progress.end(store.events() + " events kept");
         return store;
+    }
+
+    /** What the maker needs, and of what it also reads as much as the list has. */
+    private static Set<Attribute> columns(EventSource source, SheafMaker maker) throws IOException {
+        EnumSet<Attribute> missing = EnumSet.noneOf(Attribute.class);
+        missing.addAll(maker.attributes());
+        missing.removeAll(source.attributes());
+        if (!missing.isEmpty()) {
+            throw new IOException("the list lacks columns that its events need: expected " + names(maker.attributes())
+                    + ", found " + names(source.attributes()) + "; write the missing ones into the list");
+        }
+        EnumSet<Attribute> columns = EnumSet.noneOf(Attribute.class);
+        columns.addAll(maker.alsoReads());
+        columns.retainAll(source.attributes());
+        columns.addAll(maker.attributes());
+        return columns;
+    }
+
+    private static String names(Set<Attribute> attributes) {
+        return attributes.stream().sorted().map(Attribute::columnName).collect(Collectors.joining(" "));
     }
 
     private void add(EventBlock block, ForkJoinPool pool) throws IOException {

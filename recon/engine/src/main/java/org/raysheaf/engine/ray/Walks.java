@@ -136,7 +136,17 @@ public final class Walks {
 
     /** Along the dominant axis w the ray starts at ow and extends by dw; along a and b it starts at oa, ob with slopes sa, sb. */
     private void set(
-            int k, int w, int a, int b, double ow, double dw, double oa, double sa, double ob, double sb, double weight) {
+            int k,
+            int w,
+            int a,
+            int b,
+            double ow,
+            double dw,
+            double oa,
+            double sa,
+            double ob,
+            double sb,
+            double weight) {
         double low = Math.max(1, Math.min(ow, ow + dw));
         double high = Math.min(lattice.planes(w) - 2, Math.max(ow, ow + dw));
         double topA = (lattice.planes(a) - 1) * BELOW_TOP;

@@ -18,7 +18,8 @@ final class JosephTest {
 
     @Test
     void takesOneBilinearSamplePerPlane() {
-        // Two planes across x at x = -0.5 and 0.5; the ray passes y = 0.25, z = 0 (rows y = -0.5 and 0.5, one row z = 0).
+        // Two planes across x at x = -0.5 and 0.5; the ray passes y = 0.25, z = 0 (rows y = -0.5 and 0.5, one row z =
+        // 0).
         Grid grid = new Grid(2, 2, 1, 1, 1, 1, Pose.IDENTITY);
         Image image = new Image(grid, new float[] {1, 2, 3, 5});
         float integral = forward(grid, image, new Vector3(-4, 0.25, 0), new Vector3(4, 0.25, 0));
@@ -48,7 +49,14 @@ final class JosephTest {
                 Grid.centred(1, 1, 1, 2),
                 Grid.centred(1, 5, 2, 1),
                 new Grid(9, 7, 5, 0.4, 1.1, 2.3, Pose.IDENTITY),
-                new Grid(6, 8, 7, 1, 0.8, 1.3, Pose.shift(new Vector3(1, -2, 0.5)).after(Pose.rotation(new Vector3(1, 2, 3), 0.7))));
+                new Grid(
+                        6,
+                        8,
+                        7,
+                        1,
+                        0.8,
+                        1.3,
+                        Pose.shift(new Vector3(1, -2, 0.5)).after(Pose.rotation(new Vector3(1, 2, 3), 0.7))));
         for (Grid grid : grids) {
             for (int i = 0; i < 600; i++) {
                 double extent = i % 3 == 0 ? 3 : 30;
@@ -173,7 +181,9 @@ final class JosephTest {
         double[] expected =
                 JosephTwin.row(grid, new Vector3(ray[0], ray[1], ray[2]), new Vector3(ray[3], ray[4], ray[5]));
         for (int j = 0; j < row.length; j++) {
-            assertThat((double) row[j]).as("ray %s to %s, voxel %d", start, end, j).isCloseTo(expected[j], within(SINGLE));
+            assertThat((double) row[j])
+                    .as("ray %s to %s, voxel %d", start, end, j)
+                    .isCloseTo(expected[j], within(SINGLE));
         }
     }
 
