@@ -1,9 +1,10 @@
 package org.raysheaf.engine.ray;
 
 import java.io.IOException;
-import java.util.HashSet;
+import java.util.EnumSet;
 import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
+import java.util.stream.Collectors;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
@@ -77,7 +78,7 @@ public final class EventLoader {
      * @param pool prepares the rays
      * @param progress hears of the events read
      * @return the events, sorted
-     * @throws IOException if the list cannot be read
+     * @throws IOException if the list cannot be read or lacks a column that the maker needs
      * @throws IllegalArgumentException if the list has too many events for memory, or fewer usable ones than there are subsets
      */
     public static EventStore load(
@@ -104,12 +105,24 @@ public final class EventLoader {
         return store;
     }
 
-    /** What the maker needs, and what else it reads where the list has it. */
-    private static Set<Attribute> columns(EventSource source, SheafMaker maker) {
-        Set<Attribute> columns = new HashSet<>(maker.alsoReads());
+    /** What the maker needs, and of what it also reads as much as the list has. */
+    private static Set<Attribute> columns(EventSource source, SheafMaker maker) throws IOException {
+        EnumSet<Attribute> missing = EnumSet.noneOf(Attribute.class);
+        missing.addAll(maker.attributes());
+        missing.removeAll(source.attributes());
+        if (!missing.isEmpty()) {
+            throw new IOException("the list lacks columns that its events need: expected " + names(maker.attributes())
+                    + ", found " + names(source.attributes()) + "; write the missing ones into the list");
+        }
+        EnumSet<Attribute> columns = EnumSet.noneOf(Attribute.class);
+        columns.addAll(maker.alsoReads());
         columns.retainAll(source.attributes());
         columns.addAll(maker.attributes());
         return columns;
+    }
+
+    private static String names(Set<Attribute> attributes) {
+        return attributes.stream().sorted().map(Attribute::columnName).collect(Collectors.joining(" "));
     }
 
     private void add(EventBlock block, ForkJoinPool pool) throws IOException {

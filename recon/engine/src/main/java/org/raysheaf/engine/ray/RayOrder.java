@@ -6,22 +6,16 @@ import java.util.Arrays;
  * The order in which rays are visited. Neighbours in this order run through nearly the same voxels, so most of what a ray touches is still in
  * the processor's cache from the ray before; this is worth more than anything else in the engine.
  *
- * <p>A ray is a point in four dimensions: for each of the two axes across its dominant axis, where it crosses the middle plane of the lattice and how
- * far it drifts from there to the end. The bits of the four coordinates are interleaved (Morton order) below the dominant axis, so that rays that
- * share a prefix of the code lie close together along all their length. Coordinates along z are cut more coarsely: z runs fastest in
- * memory, and one cache line holds sixteen voxels of it.
+ * <p>A ray is a dominant axis and a point in four dimensions: its two slopes, and where it crosses the middle plane of the lattice. The
+ * bits of the four are interleaved (Morton order) below the axis, so rays that share the first bits of their code are near each other
+ * along their whole length.
  */
 final class RayOrder {
-    /** Bits of each coordinate; four of them and the axis make 30 bits. */
+    /** Bits per coordinate; four of them and the axis fill 30 of 32 bits. Finer cells gain nothing that could be measured. */
     private static final int BITS = 7;
 
-    /** Voxels per cell along x and y. */
-    private static final float CELL = 1;
-
-    /** Voxels per cell along z. */
-    private static final float CELL_Z = 4;
-
-    private static final int DIGIT_BITS = 11;
+    /** Bits that one round of sorting looks at: few enough for its counters to stay in the nearest cache. */
+    private static final int DIGIT = 11;
 
     private RayOrder() {}
 
@@ -45,35 +39,27 @@ final class RayOrder {
     private static int code(Walks walks, int k) {
         Lattice lattice = walks.lattice();
         int axis = walks.axis(k);
-        int a = axis == 0 ? 1 : 0;
-        int b = axis == 2 ? 1 : 2;
-        float half = lattice.planes(axis) * 0.5f;
-        float toMiddle = half - walks.first(k);
-        float cellA = CELL;
-        float cellB = b == 2 ? CELL_Z : CELL;
-        // Half a lattice is added so that lines whose middle lies outside still fall into cells of their own.
-        int middleA = cell(walks.u[k] + walks.du[k] * toMiddle + lattice.planes(a) * 0.5f, cellA);
-        int middleB = cell(walks.v[k] + walks.dv[k] * toMiddle + lattice.planes(b) * 0.5f, cellB);
-        int driftA = cell(walks.du[k] * half + lattice.planes(a), cellA);
-        int driftB = cell(walks.dv[k] * half + lattice.planes(b), cellB);
-        int code = axis;
-        for (int bit = BITS - 1; bit >= 0; bit--) {
-            code = (code << 4)
-                    | (bit(driftA, bit) << 3)
-                    | (bit(driftB, bit) << 2)
-                    | (bit(middleB, bit) << 1)
-                    | bit(middleA, bit);
+        float toMiddle = 0.5f * lattice.planes(axis) - walks.first(k);
+        float u = (walks.u[k] + toMiddle * walks.du[k]) / lattice.planes(axis == 0 ? 1 : 0);
+        float v = (walks.v[k] + toMiddle * walks.dv[k]) / lattice.planes(axis == 2 ? 1 : 2);
+        // Slopes reach from -1 to 1; an oblique ray may cross the middle plane up to about half a grid outside.
+        int slopes = (spread(cell(0.5f + 0.5f * walks.du[k])) << 1) | spread(cell(0.5f + 0.5f * walks.dv[k]));
+        int places = (spread(cell(0.25f + 0.5f * v)) << 1) | spread(cell(0.25f + 0.5f * u));
+        return (axis << (4 * BITS)) | (slopes << 2) | places;
+    }
+
+    private static int cell(float share) {
+        int cells = 1 << BITS;
+        return Math.max(0, Math.min(cells - 1, (int) (share * cells)));
+    }
+
+    /** Leaves room for three more bits above every bit. */
+    private static int spread(int cell) {
+        int spread = 0;
+        for (int bit = 0; bit < BITS; bit++) {
+            spread |= ((cell >> bit) & 1) << (4 * bit);
         }
-        return code;
-    }
-
-    /** Cell of a coordinate. Beyond 2⁷ cells the numbers start again: two far places then share cells, which costs a little and is never wrong. */
-    private static int cell(float coordinate, float size) {
-        return Math.max(0, (int) (coordinate / size)) & ((1 << BITS) - 1);
-    }
-
-    private static int bit(int value, int bit) {
-        return (value >> bit) & 1;
+        return spread;
     }
 
     /**
@@ -86,8 +72,8 @@ final class RayOrder {
     static void sort(long[] entries, int from, int to) {
         long[] source = Arrays.copyOfRange(entries, from, to);
         long[] target = new long[source.length];
-        for (int shift = 32; shift < 64; shift += DIGIT_BITS) {
-            sortByDigit(source, target, shift);
+        for (int shift = Integer.SIZE; shift < Long.SIZE; shift += DIGIT) {
+            deal(source, target, shift);
             long[] swap = source;
             source = target;
             target = swap;
@@ -95,20 +81,18 @@ final class RayOrder {
         System.arraycopy(source, 0, entries, from, source.length);
     }
 
-    private static void sortByDigit(long[] source, long[] target, int shift) {
-        int[] starts = new int[(1 << DIGIT_BITS) + 1];
+    /** Copies entries in the order of one digit, those of equal digit in the order in which they stand. */
+    private static void deal(long[] source, long[] target, int shift) {
+        int mask = (1 << DIGIT) - 1;
+        int[] starts = new int[mask + 2];
         for (long entry : source) {
-            starts[digit(entry, shift) + 1]++;
+            starts[((int) (entry >>> shift) & mask) + 1]++;
         }
-        for (int i = 1; i < starts.length; i++) {
-            starts[i] += starts[i - 1];
+        for (int digit = 0; digit < mask; digit++) {
+            starts[digit + 1] += starts[digit];
         }
         for (long entry : source) {
-            target[starts[digit(entry, shift)]++] = entry;
+            target[starts[(int) (entry >>> shift) & mask]++] = entry;
         }
-    }
-
-    private static int digit(long entry, int shift) {
-        return (int) (entry >>> shift) & ((1 << DIGIT_BITS) - 1);
     }
 }

@@ -6,6 +6,7 @@ import java.util.Arrays;
 import java.util.Comparator;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
+import org.raysheaf.geometry.frame.Grid;
 
 final class RayOrderTest {
     @Test
@@ -25,5 +26,44 @@ final class RayOrderTest {
             assertThat(entries[0]).isEqualTo(first);
             assertThat(entries[n + 1]).isEqualTo(last);
         }
+    }
+
+    /** Neighbours should share voxels: against an order by chance, the mean distance at both ends must fall by a large factor. */
+    @Test
+    void bringsLikeRaysTogether() {
+        Grid grid = Grid.centred(64, 64, 96, 1);
+        int rays = 20_000;
+        Walks walks = new Walks(new Lattice(grid), rays);
+        float[][] ends = new float[rays][];
+        Random random = new Random(32);
+        long[] order = new long[rays];
+        for (int k = 0; k < rays; k++) {
+            ends[k] = line(random);
+            walks.set(k, ends[k], 0, 1);
+            order[k] = RayOrder.entry(walks, k, 1);
+        }
+        double before = meanStep(ends, order);
+        RayOrder.sort(order, 0, rays);
+        assertThat(Arrays.stream(order).map(entry -> (int) entry).distinct().count())
+                .isEqualTo(rays);
+        assertThat(meanStep(ends, order)).isLessThan(before / 5);
+    }
+
+    /** Along x, from one plane to the other. */
+    private static float[] line(Random random) {
+        return new float[] {
+            -32, 64 * random.nextFloat() - 32, 64 * random.nextFloat() - 32,
+            32, 64 * random.nextFloat() - 32, 64 * random.nextFloat() - 32
+        };
+    }
+
+    private static double meanStep(float[][] ends, long[] order) {
+        double sum = 0;
+        for (int i = 1; i < order.length; i++) {
+            float[] a = ends[(int) order[i - 1]];
+            float[] b = ends[(int) order[i]];
+            sum += Math.hypot(a[1] - b[1], a[2] - b[2]) + Math.hypot(a[4] - b[4], a[5] - b[5]);
+        }
+        return sum / order.length;
     }
 }
