@@ -48,8 +48,7 @@ final class ListModeEmTest {
         Estimate estimate = run(store, new EstimationSettings(12, 1, 4, 0), POOL);
         assertThat(estimate.tally().read()).isEqualTo(EVENTS);
         assertThat(estimate.tally().used()).isEqualTo(estimate.events());
-        assertThat(estimate.tally().used() + estimate.tally().setAsideFor(Reason.OUTSIDE_IMAGE))
-                .isEqualTo(EVENTS);
+        assertThat(estimate.tally().setAsideFor(Reason.OUTSIDE_IMAGE)).isBetween(1L, EVENTS / 10L);
         double before = Double.NEGATIVE_INFINITY;
         for (PassReport pass : estimate.passes()) {
             assertThat(pass.expectedEvents() / store.events()).isCloseTo(1, within(BALANCE));
@@ -185,7 +184,7 @@ final class ListModeEmTest {
         assertThatThrownBy(() -> new ListModeEm(
                         store, Image.filled(Grid.centred(3, 4, 5, 1), 1), new EstimationSettings(1, 2, 0, 0), POOL))
                 .hasMessage("expected an image of 32 x 32 x 24 voxels, found 3 x 4 x 5");
-        assertThatThrownBy(() -> load(EventSelection.ALL, EVENTS + 1)).hasMessageContaining("subsets, for");
+        assertThatThrownBy(() -> load(EventSelection.ALL, EVENTS)).hasMessageContaining("subsets, for");
         assertThatThrownBy(() -> new EstimationSettings(0, 0, -1, Double.NaN))
                 .hasMessageContaining("passes: expected a number from 1 to 10000, found 0")
                 .hasMessageContaining("subsets")

@@ -3,8 +3,8 @@ package org.raysheaf.engine.ray;
 import java.util.Arrays;
 
 /**
- * The order in which rays are visited. Neighbours in this order run through nearly the same voxels, so most of what a ray touches is still in
- * the processor's cache from the ray before; this is worth more than anything else in the engine.
+ * The order in which rays are visited. Neighbours in this order run through nearly the same voxels, so most of what a ray touches is
+ * still in the processor's cache from the ray before; this is worth more than anything else in the engine.
  *
  * <p>A ray is a dominant axis and a point in four dimensions: its two slopes, and where it crosses the middle plane of the lattice. The
  * bits of the four are interleaved (Morton order) below the axis, so rays that share the first bits of their code are near each other

@@ -54,7 +54,7 @@ final class ExactTracerTest {
      * ramp gets the right length; one that begins, ends or enters another ramp within it need not, and is left out here.
      */
     @Test
-    void josephAgreesToWithinOneStepAtEachEnd() {
+    void josephAgreesToWithinOneStep() {
         Grid cube = Grid.centred(20, 20, 20, 0.7);
         Lattice lattice = new Lattice(cube);
         float[] ones = lattice.fromImage(Image.filled(cube, 1));
