@@ -121,10 +121,12 @@ public class VisitBenchmark {
     }
 
     private float visit(Walks walks) {
+        Joseph joseph = new Joseph(walks.lattice());
         float mean = 0;
         for (int k = 0; k < walks.capacity(); k++) {
-            mean = Joseph.forward(walks, k, image);
-            Joseph.back(walks, k, 1 / mean, accumulator);
+            joseph.aim(walks, k);
+            mean = joseph.forward(image);
+            joseph.back(1 / mean, accumulator);
         }
         return mean;
     }

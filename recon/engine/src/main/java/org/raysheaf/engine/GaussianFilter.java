@@ -1,5 +1,6 @@
 package org.raysheaf.engine;
 
+import java.util.Arrays;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 
@@ -61,7 +62,7 @@ public final class GaussianFilter {
     private static void spread(float[] values, int offset, int stride, double[] weights, double[] row) {
         int n = row.length;
         int reach = weights.length - 1;
-        java.util.Arrays.fill(row, 0);
+        Arrays.fill(row, 0);
         for (int source = 0; source < n; source++) {
             float value = values[offset + source * stride];
             if (value == 0) {

@@ -1,5 +1,6 @@
 package org.raysheaf.engine;
 
+import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
 import java.util.function.IntConsumer;
 import org.raysheaf.engine.ray.Lattice;
@@ -87,10 +88,10 @@ final class Lanes {
                 for (int i = first; i < last; i++) {
                     sums[i] += other[i];
                 }
-                java.util.Arrays.fill(other, first, last, 0);
+                Arrays.fill(other, first, last, 0);
             }
             partial[piece] = work.apply(first, last, sums);
-            java.util.Arrays.fill(sums, first, last, 0);
+            Arrays.fill(sums, first, last, 0);
         });
         double total = 0;
         for (double part : partial) {

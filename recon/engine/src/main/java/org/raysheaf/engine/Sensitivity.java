@@ -98,8 +98,9 @@ public final class Sensitivity {
 
     private void round(int[] starts, int turn, Progress progress) {
         lanes.each(lane -> {
+            Joseph joseph = new Joseph(lattice);
             for (int part = starts[turn + lane]; part < starts[turn + lane + 1]; part++) {
-                add(part, lanes.accumulator(lane));
+                add(part, joseph, lanes.accumulator(lane));
                 progress.advance(1);
             }
         });
@@ -111,14 +112,15 @@ public final class Sensitivity {
         });
     }
 
-    private void add(int part, float[] accumulator) {
+    private void add(int part, Joseph joseph, float[] accumulator) {
         SheafBundle bundle = new SheafBundle(catalogue.raysPerSheaf(), Math.max(1, catalogue.capacity(part)));
         catalogue.fill(part, bundle);
         int rays = bundle.size() * bundle.raysPerSheaf();
         Walks walk = new Walks(lattice, 1);
         for (int ray = 0; ray < rays; ray++) {
             walk.set(0, bundle.rays(), ray, bundle.weights()[ray]);
-            Joseph.back(walk, 0, 1, accumulator);
+            joseph.aim(walk, 0);
+            joseph.back(1, accumulator);
         }
     }
 

@@ -33,11 +33,13 @@ final class Visit {
     }
 
     private static double lines(Walks walks, int from, int to, float[] image, float[] accumulator) {
+        Joseph joseph = new Joseph(walks.lattice());
         double sum = 0;
         double product = 1;
         for (int k = from; k < to; k++) {
-            float mean = Joseph.forward(walks, k, image);
-            Joseph.back(walks, k, 1 / mean, accumulator);
+            joseph.aim(walks, k);
+            float mean = joseph.forward(image);
+            joseph.back(1 / mean, accumulator);
             product *= mean;
             if (!(product > SMALL && product < LARGE)) {
                 sum += Math.log(product);
@@ -49,17 +51,20 @@ final class Visit {
 
     private static double sheaves(EventStore store, int from, int to, float[] image, float[] accumulator) {
         Walks walks = store.walks();
+        Joseph joseph = new Joseph(walks.lattice());
         int rays = store.raysPerEvent();
         float[] background = store.background();
         double sum = 0;
         for (int event = from; event < to; event++) {
             float mean = background == null ? 0 : background[event];
             for (int k = event * rays; k < (event + 1) * rays; k++) {
-                mean += Joseph.forward(walks, k, image);
+                joseph.aim(walks, k);
+                mean += joseph.forward(image);
             }
             float ratio = 1 / mean;
             for (int k = event * rays; k < (event + 1) * rays; k++) {
-                Joseph.back(walks, k, ratio, accumulator);
+                joseph.aim(walks, k);
+                joseph.back(ratio, accumulator);
             }
             sum += Math.log(mean);
         }

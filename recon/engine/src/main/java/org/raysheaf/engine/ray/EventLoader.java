@@ -59,9 +59,9 @@ public final class EventLoader {
 
     private int room(long eventsInList) {
         long most = selection == EventSelection.ALL ? eventsInList : (eventsInList + 1) / 2;
-        if (most * raysPerEvent > Integer.MAX_VALUE - 8) {
+        if (most > RayOrder.MOST_EVENTS || most * raysPerEvent > Integer.MAX_VALUE - 8) {
             throw new IllegalArgumentException("the list has " + eventsInList + " events of " + raysPerEvent
-                    + " rays; at most 2^31 rays fit into memory at once");
+                    + " rays; at most 2^30 events and 2^31 rays can be taken at once");
         }
         return (int) most;
     }
@@ -175,9 +175,11 @@ public final class EventLoader {
             starts[s + 1] = starts[s] + (events - s + subsets - 1) / subsets;
         }
         long[] order = new long[events];
-        for (int e = 0; e < events; e++) {
-            order[starts[e % subsets] + e / subsets] = RayOrder.entry(kept, e, raysPerEvent);
-        }
+        Tasks.forEach(pool, (events + BLOCK - 1) / BLOCK, block -> {
+            for (int e = block * BLOCK; e < Math.min(events, (block + 1) * BLOCK); e++) {
+                order[starts[e % subsets] + e / subsets] = RayOrder.entry(kept, e, raysPerEvent);
+            }
+        });
         Tasks.forEach(pool, subsets, s -> RayOrder.sort(order, starts[s], starts[s + 1]));
         kept.arrange(order, raysPerEvent);
         return new EventStore(kept, raysPerEvent, starts, arrangedBackground(order), support, tally);
@@ -189,7 +191,7 @@ public final class EventLoader {
         }
         float[] arranged = new float[order.length];
         for (int e = 0; e < order.length; e++) {
-            arranged[e] = keptBackground[(int) order[e]];
+            arranged[e] = keptBackground[RayOrder.number(order[e])];
         }
         return arranged;
     }

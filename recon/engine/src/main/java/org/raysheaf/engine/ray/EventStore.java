@@ -4,11 +4,12 @@ import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.EventTally;
 
 /**
- * The events of a list, ready to be visited: each is a run of {@link Walks}, as many as its sheaf has rays, and events are sorted by {@link RayOrder}
- * within their subset. Subset s holds every S-th event, in the order of the list, from the s-th on, so subsets are alike.
+ * The events of a list, ready to be visited: each is a run of {@link Walks}, as many as its sheaf has rays, and events are sorted by
+ * {@link RayOrder} within their subset. Subset s holds every S-th event, in the order of the list, from the s-th on, so subsets are
+ * alike.
  *
- * <p>Memory: {@value Walks#BYTES} bytes per ray, 4 more per event if it has a background; while loading 12 more per event (16 for a single subset). Immutable once
- * loaded; made by {@link EventLoader}.
+ * <p>Memory: {@value Walks#BYTES} bytes per ray, and 4 per event if there is a background; while loading up to 16 more per event of the
+ * list. Immutable once loaded; made by {@link EventLoader}.
  */
 public final class EventStore {
     /** What an event costs beyond the planes it visits, in planes: set-up and a mispredicted branch or two. */

@@ -8,108 +8,141 @@ package org.raysheaf.engine.ray;
  * <p>Difference from the publication: a ray ends at its end points (planes beyond them are not visited), and samples within one voxel
  * of the grid's edge count with their inside share, through the border of zeros.
  *
- * <p>Immutable; {@link #back} writes to the accumulator that it is given, which must belong to one thread.
+ * <p>Holds one ray at a time: {@link #aim} finds where its samples lie, then {@link #forward} and {@link #back} go along it as often as
+ * wanted. Belongs to one thread.
  */
 public final class Joseph {
-    private Joseph() {}
+    /**
+     * Adding this to a number between −2²² and 2²² rounds it to a whole number, which then stands in the lowest bits of the sum. Unlike
+     * a conversion to int, that can be done for eight planes at once, and needs no test for numbers out of range.
+     */
+    private static final float ROUNDING = 3 << 22;
+
+    private static final int ROUNDING_BITS = Float.floatToRawIntBits(ROUNDING);
+
+    private final Lattice lattice;
+    /** 0, 1, 2, … as floats: a table, because the loop over it becomes vector instructions and one that counts does not. */
+    private final float[] counting;
+
+    private final float[] roundedU;
+    private final float[] roundedV;
+    /** Per plane: where the lower voxel of the sample lies, and how far the sample is from there to the next voxel along u and v. */
+    private final int[] lowers;
+
+    private final float[] fractionsU;
+    private final float[] fractionsV;
+    private int planes;
+    private int strideU;
+    private int strideV;
+    private float step;
 
     /**
-     * The weighted line integral of an image along a ray: step · Σ samples.
+     * A projector that is not yet aimed.
      *
-     * @param walks the rays
-     * @param k number of the ray
-     * @param image values on the lattice, zeros in the border
-     * @return the integral (unit of the image times mm); 0 for an empty walk
+     * @param lattice what its rays walk through
      */
-    public static float forward(Walks walks, int k, float[] image) {
-        int axis = walks.axis(k);
-        Lattice lattice = walks.lattice();
-        int sw = lattice.stride(axis);
-        int su = lattice.stride(axis == 0 ? 1 : 0);
-        int sv = lattice.stride(axis == 2 ? 1 : 2);
-        float u0 = walks.u[k];
-        float du = walks.du[k];
-        float v0 = walks.v[k];
-        float dv = walks.dv[k];
-        int base = walks.first(k) * sw;
-        float j = 0;
-        float sum = 0;
-        for (int left = walks.planes(k); left > 0; left--) {
-            float u = u0 + du * j;
-            float v = v0 + dv * j;
-            int iu = (int) u;
-            int iv = (int) v;
-            float fu = u - iu;
-            float fv = v - iv;
-            int at = base + iu * su + iv * sv;
-            float q00 = image[at];
-            float q01 = image[at + sv];
-            float q10 = image[at + su];
-            float q11 = image[at + su + sv];
-            float a = q00 + fv * (q01 - q00);
-            float b = q10 + fv * (q11 - q10);
-            sum += a + fu * (b - a);
-            base += sw;
-            j++;
+    public Joseph(Lattice lattice) {
+        this.lattice = lattice;
+        int most = Math.max(lattice.planes(0), Math.max(lattice.planes(1), lattice.planes(2)));
+        counting = new float[most];
+        for (int j = 0; j < most; j++) {
+            counting[j] = j;
         }
-        return sum * walks.steps[k];
+        roundedU = new float[most];
+        roundedV = new float[most];
+        lowers = new int[most];
+        fractionsU = new float[most];
+        fractionsV = new float[most];
+    }
+
+    /**
+     * Takes up a ray.
+     *
+     * @param walks rays through this projector's lattice
+     * @param k number of the ray
+     */
+    public void aim(Walks walks, int k) {
+        int axis = walks.axis(k);
+        planes = walks.planes(k);
+        step = walks.steps[k];
+        strideU = lattice.stride(axis == 0 ? 1 : 0);
+        strideV = lattice.stride(axis == 2 ? 1 : 2);
+        sample(planes, counting, walks.u[k], walks.du[k], roundedU, fractionsU);
+        sample(planes, counting, walks.v[k], walks.dv[k], roundedV, fractionsV);
+        locate(walks.first(k) * lattice.stride(axis), lattice.stride(axis));
+    }
+
+    /** Splits the coordinates start + j · slope into the voxel below, still offset by ROUNDING, and the rest. */
+    static void sample(int planes, float[] counting, float start, float slope, float[] rounded, float[] fractions) {
+        float shifted = start - 0.5f;
+        for (int j = 0; j < planes; j++) {
+            float x = shifted + slope * counting[j];
+            float r = x + ROUNDING;
+            rounded[j] = r;
+            fractions[j] = x - (r - ROUNDING) + 0.5f;
+        }
+    }
+
+    private void locate(int firstPlane, int strideW) {
+        int plane = firstPlane - ROUNDING_BITS * (strideU + strideV); // whole numbers wrap round, so the offsets cancel
+        for (int j = 0; j < planes; j++) {
+            lowers[j] = plane
+                    + Float.floatToRawIntBits(roundedU[j]) * strideU
+                    + Float.floatToRawIntBits(roundedV[j]) * strideV;
+            plane += strideW;
+        }
+    }
+
+    /**
+     * The weighted line integral of an image along the ray: step · Σ samples.
+     *
+     * @param image values on the lattice, zeros in the border
+     * @return the integral (unit of the image times mm); 0 if the walk is empty
+     */
+    public float forward(float[] image) {
+        // A constant stride lets the compiler test the bounds of two neighbours at once.
+        return step * (strideV == 1 ? sum(image, 1) : sum(image, strideV));
+    }
+
+    private float sum(float[] image, int next) {
+        float sum = 0;
+        for (int j = 0; j < planes; j++) {
+            int low = lowers[j];
+            int high = low + strideU;
+            float fv = fractionsV[j];
+            float a = image[low] + fv * (image[low + next] - image[low]);
+            float b = image[high] + fv * (image[high + next] - image[high]);
+            sum += a + fractionsU[j] * (b - a);
+        }
+        return sum;
     }
 
     /**
      * The exact transpose of {@link #forward}: adds amount · (weight of the voxel in the line integral) to every voxel.
      *
-     * @param walks the rays
-     * @param k number of the ray
      * @param amount what to spread along the ray
      * @param accumulator values on the lattice, added to
      */
-    public static void back(Walks walks, int k, float amount, float[] accumulator) {
-        int axis = walks.axis(k);
-        Lattice lattice = walks.lattice();
-        int sw = lattice.stride(axis);
-        int su = lattice.stride(axis == 0 ? 1 : 0);
-        int sv = lattice.stride(axis == 2 ? 1 : 2);
-        float u0 = walks.u[k];
-        float du = walks.du[k];
-        float v0 = walks.v[k];
-        float dv = walks.dv[k];
-        float g = amount * walks.steps[k];
-        int base = walks.first(k) * sw;
-        float j = 0;
-        for (int left = walks.planes(k); left > 0; left--) {
-            float u = u0 + du * j;
-            float v = v0 + dv * j;
-            int iu = (int) u;
-            int iv = (int) v;
-            float fu = u - iu;
-            float fv = v - iv;
-            int at = base + iu * su + iv * sv;
-            float g1 = g * fu;
-            float g0 = g - g1;
-            float g01 = g0 * fv;
-            float g11 = g1 * fv;
-            accumulator[at] += g0 - g01;
-            accumulator[at + sv] += g01;
-            accumulator[at + su] += g1 - g11;
-            accumulator[at + su + sv] += g11;
-            base += sw;
-            j++;
+    public void back(float amount, float[] accumulator) {
+        if (strideV == 1) {
+            spread(amount * step, accumulator, 1);
+        } else {
+            spread(amount * step, accumulator, strideV);
         }
     }
 
-    /** The sample on the j-th plane of a walk, in the same arithmetic as {@link #forward}. */
-    static float sample(Walks walks, int k, int j, float[] image) {
-        int axis = walks.axis(k);
-        Lattice lattice = walks.lattice();
-        int su = lattice.stride(axis == 0 ? 1 : 0);
-        int sv = lattice.stride(axis == 2 ? 1 : 2);
-        float u = walks.u[k] + walks.du[k] * j;
-        float v = walks.v[k] + walks.dv[k] * j;
-        int at = (walks.first(k) + j) * lattice.stride(axis) + ((int) u) * su + ((int) v) * sv;
-        float fu = u - (int) u;
-        float fv = v - (int) v;
-        float a = image[at] + fv * (image[at + sv] - image[at]);
-        float b = image[at + su] + fv * (image[at + su + sv] - image[at + su]);
-        return a + fu * (b - a);
+    private void spread(float amount, float[] accumulator, int next) {
+        for (int j = 0; j < planes; j++) {
+            int low = lowers[j];
+            int high = low + strideU;
+            float b = amount * fractionsU[j];
+            float a = amount - b;
+            float aNext = a * fractionsV[j];
+            float bNext = b * fractionsV[j];
+            accumulator[low] += a - aNext;
+            accumulator[low + next] += aNext;
+            accumulator[high] += b - bNext;
+            accumulator[high + next] += bNext;
+        }
     }
 }

@@ -3,29 +3,48 @@ package org.raysheaf.engine.ray;
 import java.util.Arrays;
 
 /**
- * The order in which rays are visited. Neighbours in this order run through nearly the same voxels, so most of what a ray touches is
- * still in the processor's cache from the ray before; this is worth more than anything else in the engine.
+ * The order in which events are visited. Neighbours in this order run through nearly the same voxels along all their length, so most
+ * of what an event touches is still in the processor's cache from those before; this is worth more than anything else in the engine.
  *
- * <p>A ray is a dominant axis and a point in four dimensions: its two slopes, and where it crosses the middle plane of the lattice. The
- * bits of the four are interleaved (Morton order) below the axis, so rays that share the first bits of their code are near each other
- * along their whole length.
+ * <p>A ray with a given dominant axis is a point in four dimensions: its two slopes, and where it crosses the middle plane of the
+ * lattice. All four are measured in voxels of displacement, slopes by what they add from the middle to the end of the lattice, so that
+ * points at distance 1 are rays that are nowhere much more than a voxel apart. Rays are sorted along a Hilbert curve through this space,
+ * which never jumps; its index is computed as in J. Skilling, "Programming the Hilbert curve", AIP Conference Proceedings 707 (2004) 381.
  */
 final class RayOrder {
-    /** Bits per coordinate; four of them and the axis fill 30 of 32 bits. Finer cells gain nothing that could be measured. */
-    private static final int BITS = 7;
+    /** Bits per coordinate, so 256 cells over twice the width of the lattice. */
+    private static final int BITS = 8;
 
-    /** Bits that one round of sorting looks at: few enough for its counters to stay in the nearest cache. */
-    private static final int DIGIT = 11;
+    private static final int CELLS = 1 << BITS;
+
+    /** Bits of an entry that hold the number of the event; above them lies the code. */
+    private static final int NUMBER_BITS = 30;
+
+    /** The most events that entries can tell apart. */
+    static final int MOST_EVENTS = 1 << NUMBER_BITS;
+
+    private static final int DIGIT_BITS = 12;
+    private static final int DIGITS = 1 << DIGIT_BITS;
 
     private RayOrder() {}
 
     /**
-     * What to sort for an event: its code above its number.
+     * The number of an event, from its entry.
+     *
+     * @param entry made by {@link #entry}
+     * @return the number
+     */
+    static int number(long entry) {
+        return (int) entry & (MOST_EVENTS - 1);
+    }
+
+    /**
+     * What to sort for an event: its place on the curve above its number.
      *
      * @param walks the rays of all events
      * @param event number of the event
-     * @param raysPerEvent rays of each event
-     * @return the code of the event's first ray that visits any plane, times 2³², plus the number of the event
+     * @param raysPerEvent rays of each event; the first that visits any plane tells the place
+     * @return the entry
      */
     static long entry(Walks walks, int event, int raysPerEvent) {
         int ray = event * raysPerEvent;
@@ -33,66 +52,99 @@ final class RayOrder {
         while (ray < last && walks.planes(ray) == 0) {
             ray++;
         }
-        return ((long) code(walks, ray) << 32) | event;
+        return (code(walks, ray) << NUMBER_BITS) | event;
     }
 
-    private static int code(Walks walks, int k) {
-        Lattice lattice = walks.lattice();
+    private static long code(Walks walks, int k) {
         int axis = walks.axis(k);
-        float toMiddle = 0.5f * lattice.planes(axis) - walks.first(k);
-        float u = (walks.u[k] + toMiddle * walks.du[k]) / lattice.planes(axis == 0 ? 1 : 0);
-        float v = (walks.v[k] + toMiddle * walks.dv[k]) / lattice.planes(axis == 2 ? 1 : 2);
-        // Slopes reach from -1 to 1; an oblique ray may cross the middle plane up to about half a grid outside.
-        int slopes = (spread(cell(0.5f + 0.5f * walks.du[k])) << 1) | spread(cell(0.5f + 0.5f * walks.dv[k]));
-        int places = (spread(cell(0.25f + 0.5f * v)) << 1) | spread(cell(0.25f + 0.5f * u));
-        return (axis << (4 * BITS)) | (slopes << 2) | places;
+        float half = 0.5f * walks.lattice().planes(axis);
+        float toMiddle = half - walks.first(k);
+        float widthU = walks.lattice().planes(axis == 0 ? 1 : 0);
+        float widthV = walks.lattice().planes(axis == 2 ? 1 : 2);
+        int slopeU = cell(walks.du[k] * half, widthU);
+        int slopeV = cell(walks.dv[k] * half, widthV);
+        int placeV = cell(walks.v[k] + walks.dv[k] * toMiddle - 0.5f * widthV, widthV);
+        int placeU = cell(walks.u[k] + walks.du[k] * toMiddle - 0.5f * widthU, widthU);
+        return ((long) axis << (4 * BITS)) | hilbert(slopeU, slopeV, placeV, placeU);
     }
 
-    private static int cell(float share) {
-        int cells = 1 << BITS;
-        return Math.max(0, Math.min(cells - 1, (int) (share * cells)));
-    }
-
-    /** Leaves room for three more bits above every bit. */
-    private static int spread(int cell) {
-        int spread = 0;
-        for (int bit = 0; bit < BITS; bit++) {
-            spread |= ((cell >> bit) & 1) << (4 * bit);
-        }
-        return spread;
+    /** The cell of a displacement from the middle; what lies further out than the width of the lattice goes to the last cell. */
+    private static int cell(float displacement, float width) {
+        int cell = (int) ((0.5f + 0.5f * displacement / width) * CELLS);
+        return Math.max(0, Math.min(CELLS - 1, cell));
     }
 
     /**
-     * Sorts by the upper half of each entry, stably, least digit first.
+     * Skilling's transform.
      *
-     * @param entries a code in the upper 32 bits, anything in the lower
-     * @param from first entry
+     * @param x coordinates, 0 to 255 each; overwritten
+     * @return the index on the curve
+     */
+    static long hilbert(int... x) {
+        for (int bit = CELLS >> 1; bit > 1; bit >>= 1) {
+            int below = bit - 1;
+            for (int i = 0; i < x.length; i++) {
+                int flip = (x[i] & bit) != 0 ? below : 0;
+                int swap = flip != 0 ? 0 : (x[0] ^ x[i]) & below;
+                x[0] ^= flip | swap;
+                x[i] ^= swap;
+            }
+        }
+        int gray = 0;
+        for (int i = 1; i < x.length; i++) {
+            x[i] ^= x[i - 1];
+        }
+        for (int bit = CELLS >> 1; bit > 1; bit >>= 1) {
+            gray ^= (x[x.length - 1] & bit) != 0 ? bit - 1 : 0;
+        }
+        long index = 0;
+        for (int bit = BITS - 1; bit >= 0; bit--) {
+            for (int coordinate : x) {
+                index = (index << 1) | (((coordinate ^ gray) >> bit) & 1);
+            }
+        }
+        return index;
+    }
+
+    /**
+     * Sorts entries by their codes; equal codes keep their order. Radix sort, least digit first, without objects.
+     *
+     * @param entries the entries, sorted in place
+     * @param from first entry to sort
      * @param to after the last entry
      */
     static void sort(long[] entries, int from, int to) {
         long[] source = Arrays.copyOfRange(entries, from, to);
-        long[] target = new long[source.length];
-        for (int shift = Integer.SIZE; shift < Long.SIZE; shift += DIGIT) {
-            deal(source, target, shift);
-            long[] swap = source;
+        long[] target = entries;
+        int sourceFrom = 0;
+        int targetFrom = from;
+        for (int shift = NUMBER_BITS; shift < Long.SIZE; shift += DIGIT_BITS) {
+            pass(source, sourceFrom, target, targetFrom, to - from, shift);
+            long[] array = source;
             source = target;
-            target = swap;
+            target = array;
+            int offset = sourceFrom;
+            sourceFrom = targetFrom;
+            targetFrom = offset;
         }
-        System.arraycopy(source, 0, entries, from, source.length);
+        // Three digits from a copy: the last pass wrote to where the entries belong.
     }
 
-    /** Copies entries in the order of one digit, those of equal digit in the order in which they stand. */
-    private static void deal(long[] source, long[] target, int shift) {
-        int mask = (1 << DIGIT) - 1;
-        int[] starts = new int[mask + 2];
-        for (long entry : source) {
-            starts[((int) (entry >>> shift) & mask) + 1]++;
+    private static void pass(long[] source, int from, long[] target, int targetFrom, int n, int shift) {
+        int[] next = new int[DIGITS + 1];
+        for (int i = from; i < from + n; i++) {
+            next[digit(source[i], shift) + 1]++;
         }
-        for (int digit = 0; digit < mask; digit++) {
-            starts[digit + 1] += starts[digit];
+        next[0] = targetFrom;
+        for (int digit = 0; digit < DIGITS; digit++) {
+            next[digit + 1] += next[digit];
         }
-        for (long entry : source) {
-            target[starts[(int) (entry >>> shift) & mask]++] = entry;
+        for (int i = from; i < from + n; i++) {
+            target[next[digit(source[i], shift)]++] = source[i];
         }
+    }
+
+    private static int digit(long entry, int shift) {
+        return (int) (entry >>> shift) & (DIGITS - 1);
     }
 }

@@ -18,11 +18,13 @@ public final class Walks {
     public static final int BYTES = 24;
 
     /**
-     * Coordinates stay below this share of n − 1, so that the upper neighbour exists. Rounding cannot undo that: u + j·du in single
-     * precision, even after {@link #trim}, is off by less than 4 · 2⁻²⁴ · n, a quarter of the 10⁻⁶ · n that is kept free. Below 0 it
-     * may fall by as little, and truncation then still finds row 0.
+     * Coordinates keep this share of n − 1 away from 0 and n − 1, so that both neighbours of a sample exist. Rounding cannot undo that:
+     * u + j·du in single precision, even after {@link #trim}, is off by less than 7 · 2⁻²⁴ · n, under half of what is kept free.
      */
-    private static final double BELOW_TOP = 1 - 1e-6;
+    private static final double MARGIN = 1e-6;
+
+    /** A sample of the support that is smaller than this (the support being 0 or 1) may be rounding, and does not count as activity. */
+    private static final float TOUCH = 1e-4f;
 
     private static final int EMPTY = 1 << 15;
     private static final int PLANE = (1 << 15) - 1;
@@ -149,10 +151,10 @@ public final class Walks {
             double weight) {
         double low = Math.max(1, Math.min(ow, ow + dw));
         double high = Math.min(lattice.planes(w) - 2, Math.max(ow, ow + dw));
-        double topA = (lattice.planes(a) - 1) * BELOW_TOP;
-        double topB = (lattice.planes(b) - 1) * BELOW_TOP;
-        low = Math.max(low, Math.max(ow + enter(oa, sa, topA), ow + enter(ob, sb, topB)));
-        high = Math.min(high, Math.min(ow + leave(oa, sa, topA), ow + leave(ob, sb, topB)));
+        double endA = lattice.planes(a) - 1;
+        double endB = lattice.planes(b) - 1;
+        low = Math.max(low, ow + Math.max(enter(oa, sa, endA), enter(ob, sb, endB)));
+        high = Math.min(high, ow + Math.min(leave(oa, sa, endA), leave(ob, sb, endB)));
         int first = (int) Math.ceil(low);
         int last = (int) Math.floor(high);
         if (!(low <= high) || last < first) {
@@ -173,31 +175,35 @@ public final class Walks {
         return (axis << 30) | (first << 15) | last;
     }
 
-    /** How far along the dominant axis, from the start of the ray, the coordinate o + s·t enters 0 … top. */
-    private static double enter(double o, double s, double top) {
-        double t = s > 0 ? -o / s : (top - o) / s;
-        return s != 0 ? t : o >= 0 && o <= top ? Double.NEGATIVE_INFINITY : Double.POSITIVE_INFINITY;
+    /** How far along the dominant axis, from the start of the ray, the coordinate o + s·t enters 0 … end, less the margins. */
+    private static double enter(double o, double s, double end) {
+        double low = end * MARGIN;
+        double high = end - low;
+        if (s == 0) {
+            return o >= low && o <= high ? Double.NEGATIVE_INFINITY : Double.POSITIVE_INFINITY;
+        }
+        return ((s > 0 ? low : high) - o) / s;
     }
 
-    private static double leave(double o, double s, double top) {
-        return s != 0 ? enter(o, -s, top) * -1 : Double.POSITIVE_INFINITY;
+    private static double leave(double o, double s, double end) {
+        return s == 0 ? Double.POSITIVE_INFINITY : -enter(o, -s, end);
     }
 
     /**
-     * Shortens a walk to the planes on which it can meet activity; nothing is lost, because all others contribute 0.
+     * Shortens a walk to the planes on which it can meet activity; the others contribute nothing, or less than 10⁻⁴ of a sample.
      *
      * @param k number of the walk
-     * @param support values on the lattice, above 0 where there may be activity
+     * @param support values on the lattice, 1 where there may be activity, else 0
      * @return false if no plane is left and the walk is now empty
      */
     public boolean trim(int k, float[] support) {
         int planes = planes(k);
         int from = 0;
-        while (from < planes && !(Joseph.sample(this, k, from, support) > 0)) {
+        while (from < planes && !(sample(k, from, support) > TOUCH)) {
             from++;
         }
         int to = planes - 1;
-        while (to > from && !(Joseph.sample(this, k, to, support) > 0)) {
+        while (to > from && !(sample(k, to, support) > TOUCH)) {
             to--;
         }
         if (from > to) {
@@ -208,6 +214,21 @@ public final class Walks {
         v[k] += from * dv[k];
         spans[k] = span(axis(k), first(k) + from, first(k) + to);
         return true;
+    }
+
+    /** The bilinear sample of an image on the j-th plane of a walk. */
+    private float sample(int k, int j, float[] image) {
+        int axis = axis(k);
+        int su = lattice.stride(axis == 0 ? 1 : 0);
+        int sv = lattice.stride(axis == 2 ? 1 : 2);
+        float atU = u[k] + du[k] * j;
+        float atV = v[k] + dv[k] * j;
+        int low = (first(k) + j) * lattice.stride(axis) + ((int) atU) * su + ((int) atV) * sv;
+        int high = low + su;
+        float fv = atV - (int) atV;
+        float a = image[low] + fv * (image[low + sv] - image[low]);
+        float b = image[high] + fv * (image[high + sv] - image[high]);
+        return a + (atU - (int) atU) * (b - a);
     }
 
     /**
@@ -229,7 +250,7 @@ public final class Walks {
     /**
      * Puts runs of walks into a new order and forgets all others. One column is replaced after another, so that only one exists twice.
      *
-     * @param order the run that comes to each place, in the lower 32 bits of each entry
+     * @param order entries of {@link RayOrder}: the number of the run that comes to each place
      * @param run walks in a run, at least 1
      */
     void arrange(long[] order, int run) {
@@ -244,7 +265,7 @@ public final class Walks {
     private static int[] arranged(int[] column, long[] order, int run) {
         int[] result = new int[order.length * run];
         for (int i = 0; i < order.length; i++) {
-            System.arraycopy(column, (int) order[i] * run, result, i * run, run);
+            System.arraycopy(column, RayOrder.number(order[i]) * run, result, i * run, run);
         }
         return result;
     }
@@ -252,7 +273,7 @@ public final class Walks {
     private static float[] arranged(float[] column, long[] order, int run) {
         float[] result = new float[order.length * run];
         for (int i = 0; i < order.length; i++) {
-            System.arraycopy(column, (int) order[i] * run, result, i * run, run);
+            System.arraycopy(column, RayOrder.number(order[i]) * run, result, i * run, run);
         }
         return result;
     }

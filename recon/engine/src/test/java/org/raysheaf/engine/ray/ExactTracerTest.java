@@ -68,7 +68,7 @@ final class ExactTracerTest {
                 walks.set(0, JosephTest.ray(start, end), 0, 1);
                 Vector3 d = end.minus(start);
                 double step = 0.7 * d.norm() / Math.max(Math.abs(d.x()), Math.max(Math.abs(d.y()), Math.abs(d.z())));
-                assertThat((double) Joseph.forward(walks, 0, ones))
+                assertThat((double) JosephTest.forward(walks, 0, ones))
                         .isCloseTo(sum(ExactTracer.row(cube, start, end)), within(step));
                 compared++;
             }

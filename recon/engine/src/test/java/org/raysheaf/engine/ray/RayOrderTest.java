@@ -4,21 +4,23 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.util.Arrays;
 import java.util.Comparator;
+import java.util.HashMap;
+import java.util.Map;
 import java.util.Random;
 import org.junit.jupiter.api.Test;
 import org.raysheaf.geometry.frame.Grid;
 
 final class RayOrderTest {
     @Test
-    void sortsByTheUpperHalfAndKeepsTheOrderOfEquals() {
+    void sortsByCodeAndKeepsTheOrderOfEquals() {
         Random random = new Random(31);
         for (int n : new int[] {0, 1, 2, 1000, 70_000}) {
             long[] entries = new long[n + 2];
             for (int i = 0; i < entries.length; i++) {
-                entries[i] = (long) (random.nextInt() & (n > 10 ? -1 : 1)) << 32 | (entries.length - i);
+                entries[i] = (random.nextLong() & (n > 10 ? -1L : 1L << 40)) >>> 30 << 30 | (entries.length - i);
             }
             Long[] expected = Arrays.stream(entries, 1, n + 1).boxed().toArray(Long[]::new);
-            Arrays.sort(expected, Comparator.comparing((Long entry) -> entry >>> 32));
+            Arrays.sort(expected, Comparator.comparing((Long entry) -> entry >>> 30));
             long first = entries[0];
             long last = entries[n + 1];
             RayOrder.sort(entries, 1, n + 1);
@@ -44,7 +46,7 @@ final class RayOrderTest {
         }
         double before = meanStep(ends, order);
         RayOrder.sort(order, 0, rays);
-        assertThat(Arrays.stream(order).map(entry -> (int) entry).distinct().count())
+        assertThat(Arrays.stream(order).mapToInt(RayOrder::number).distinct().count())
                 .isEqualTo(rays);
         assertThat(meanStep(ends, order)).isLessThan(before / 5);
     }
@@ -60,10 +62,39 @@ final class RayOrderTest {
     private static double meanStep(float[][] ends, long[] order) {
         double sum = 0;
         for (int i = 1; i < order.length; i++) {
-            float[] a = ends[(int) order[i - 1]];
-            float[] b = ends[(int) order[i]];
+            float[] a = ends[RayOrder.number(order[i - 1])];
+            float[] b = ends[RayOrder.number(order[i])];
             sum += Math.hypot(a[1] - b[1], a[2] - b[2]) + Math.hypot(a[4] - b[4], a[5] - b[5]);
         }
         return sum / order.length;
+    }
+
+    /** What makes a Hilbert curve: it fills each aligned cube in one go, and each step goes to a neighbour. */
+    @Test
+    void curveNeverJumps() {
+        for (int corner : new int[] {0, 100, 252}) {
+            long[] indices = new long[256];
+            Map<Long, int[]> cells = new HashMap<>();
+            for (int i = 0; i < 256; i++) {
+                int[] x = {corner + (i >> 6), 252 - corner + ((i >> 4) & 3), corner + ((i >> 2) & 3), 16 + (i & 3)};
+                indices[i] = RayOrder.hilbert(x.clone());
+                cells.put(indices[i], x);
+            }
+            Arrays.sort(indices);
+            for (int i = 1; i < 256; i++) {
+                assertThat(indices[i]).isEqualTo(indices[0] + i);
+                assertThat(steps(cells, indices[i] - 1, indices[i])).isEqualTo(1);
+            }
+        }
+    }
+
+    private static int steps(Map<Long, int[]> cells, long from, long to) {
+        int[] a = cells.getOrDefault(from, new int[4]);
+        int[] b = cells.getOrDefault(to, new int[4]);
+        int sum = 0;
+        for (int i = 0; i < a.length; i++) {
+            sum += Math.abs(a[i] - b[i]);
+        }
+        return sum;
     }
 }
