@@ -197,9 +197,10 @@ final class ListModeEmTest {
         assertThat(List.of(
                         Lanes.suited(0, 1000),
                         Lanes.suited(240_000_000L, 128 * 128 * 192),
+                        Lanes.suited(1L << 40, 1000),
                         Lanes.suited(20_000_000L, 128 * 128 * 192),
                         Lanes.suited(1L << 50, 512 * 512 * 512)))
-                .containsExactly(1, 16, 1, 2);
+                .containsExactly(1, 16, 16, 1, 2);
     }
 
     private static EventStore load(EventSelection selection, int subsets) throws Exception {

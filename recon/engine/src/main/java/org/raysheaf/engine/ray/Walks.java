@@ -124,7 +124,7 @@ public final class Walks {
         double d1 = lattice.coordinate(1, rays[at + 3], rays[at + 4], rays[at + 5]) - o1;
         double d2 = lattice.coordinate(2, rays[at + 3], rays[at + 4], rays[at + 5]) - o2;
         double longest = Math.max(Math.abs(d0), Math.max(Math.abs(d1), Math.abs(d2)));
-        if (!(longest > 0) || !Double.isFinite(longest)) {
+        if (!(longest > 0)) { // or no number: an infinite coordinate times 0 is none
             return;
         }
         if (Math.abs(d0) == longest) {

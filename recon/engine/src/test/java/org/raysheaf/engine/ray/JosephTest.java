@@ -86,6 +86,18 @@ final class JosephTest {
         rays.forEach(ray -> check(grid, ray[0], ray[1]));
     }
 
+    /** On some plane such a ray stands exactly on the outermost row of the border, which has no upper neighbour. */
+    @Test
+    void agreesWithTheTwinOnRaysThatLeaveThroughTheLastRow() {
+        for (int n : new int[] {5, 6}) {
+            Grid grid = Grid.centred(n, n, n, 1);
+            for (double offset = -9; offset <= 9; offset += 0.5) {
+                check(grid, new Vector3(offset - 4.5, -9, 0), new Vector3(offset + 4.5, 9, 0));
+                check(grid, new Vector3(offset - 4.5, 0, -9), new Vector3(offset + 4.5, 0, 9));
+            }
+        }
+    }
+
     @Test
     void staysWithinLargeGrids() {
         Grid grid = new Grid(32_000, 2, 2, 0.1, 0.1, 0.1, Pose.IDENTITY);
@@ -105,8 +117,8 @@ final class JosephTest {
     void ignoresRaysThatAreNoRays() {
         Lattice lattice = new Lattice(Grid.centred(4, 4, 4, 1));
         Walks walks = new Walks(lattice, 1);
-        for (float bad : new float[] {Float.NaN, Float.POSITIVE_INFINITY, Float.MAX_VALUE}) {
-            walks.set(0, new float[] {-9, 0, 0, 9, bad, 0}, 0, 1);
+        for (float bad : new float[] {Float.NaN, Float.POSITIVE_INFINITY, Float.NEGATIVE_INFINITY}) {
+            walks.set(0, new float[] {0, 0, 0, 9, bad, 0}, 0, 1);
             assertThat(walks.planes(0)).isZero();
         }
         walks.set(0, new float[] {1, 1, 1, 1, 1, 1}, 0, 1);
