@@ -15,6 +15,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param pitchMm centre-to-centre distances along u, v, w (mm); the third plays no part with one layer
  * @param crystalMm size of one crystal along u, v, w (mm), from 0.00001 to 1000, at most the pitch
  * @param material name of the crystals' material
+ * @param readout what the electronics make of the energy
  */
 public record CrystalBlock(
         String name,
@@ -23,7 +24,8 @@ public record CrystalBlock(
         @Default("1") int layers,
         Vector3 pitchMm,
         Vector3 crystalMm,
-        String material)
+        String material,
+        @Default("{}") Readout readout)
         implements BlockKind {
     private static final double SMALLEST_MM = 1e-5;
     private static final double LARGEST_MM = 1000;
@@ -50,28 +52,25 @@ public record CrystalBlock(
         return "expected a pitch of at least the crystal's size " + crystal + " mm, found " + pitch + " mm";
     }
 
-    @Override
-    public int elements() {
-        return columns * rows * layers;
+    /**
+     * A block with an ideal readout.
+     *
+     * @param name how placements refer to this block
+     * @param columns crystals along u
+     * @param rows crystals along v
+     * @param layers crystals along w
+     * @param pitchMm centre-to-centre distances along u, v, w (mm)
+     * @param crystalMm size of one crystal along u, v, w (mm)
+     * @param material name of the crystals' material
+     */
+    public CrystalBlock(
+            String name, int columns, int rows, int layers, Vector3 pitchMm, Vector3 crystalMm, String material) {
+        this(name, columns, rows, layers, pitchMm, crystalMm, material, Readout.IDEAL);
     }
 
     @Override
-    public double widthMm() {
-        return extent(columns, pitchMm.x(), crystalMm.x());
-    }
-
-    @Override
-    public double heightMm() {
-        return extent(rows, pitchMm.y(), crystalMm.y());
-    }
-
-    @Override
-    public double depthMm() {
-        return extent(layers, pitchMm.z(), crystalMm.z());
-    }
-
-    private static double extent(int count, double pitch, double crystal) {
-        return (count - 1) * pitch + crystal;
+    public CrystalBlock lattice() {
+        return this;
     }
 
     /**

@@ -35,7 +35,7 @@ public final class DetectorSystem {
         this.blockOfElement = new int[last.firstElement() + last.kind().elements()];
         for (PlacedBlock block : blocks) {
             int b = block.index();
-            tracers[b] = new CrystalTracer(block, (CrystalBlock) block.kind());
+            tracers[b] = new CrystalTracer(block, block.kind().lattice());
             Vector3 centre = block.centre();
             double radius = block.boundingRadiusMm();
             spheres[4 * b] = centre.x();
@@ -124,7 +124,7 @@ public final class DetectorSystem {
      */
     public Vector3 centre(int element) {
         PlacedBlock block = blockOf(element);
-        CrystalBlock kind = (CrystalBlock) block.kind();
+        CrystalBlock kind = block.kind().lattice();
         return block.pose().apply(kind.centre(element - block.firstElement()));
     }
 
@@ -135,7 +135,7 @@ public final class DetectorSystem {
      * @return the three edge lengths (mm)
      */
     public Vector3 size(int element) {
-        return ((CrystalBlock) blockOf(element).kind()).crystalMm();
+        return blockOf(element).kind().lattice().crystalMm();
     }
 
     /**
@@ -148,7 +148,7 @@ public final class DetectorSystem {
         for (PlacedBlock block : blocks) {
             if (world.minus(block.centre()).norm() <= block.boundingRadiusMm() * (1 + 1e-12)) {
                 Vector3 local = block.pose().inverse().apply(world);
-                int crystal = ((CrystalBlock) block.kind()).crystalAt(local);
+                int crystal = block.kind().lattice().crystalAt(local);
                 if (crystal >= 0) {
                     return block.firstElement() + crystal;
                 }

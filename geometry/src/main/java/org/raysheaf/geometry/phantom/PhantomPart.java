@@ -1,6 +1,5 @@
 package org.raysheaf.geometry.phantom;
 
-import org.raysheaf.geometry.frame.Pose;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;
@@ -80,11 +79,7 @@ public record PhantomPart(
      * @return the placed solid
      */
     public Placed placed() {
-        Pose aboutX = Pose.rotation(Vector3.X, Math.toRadians(turnDeg.x()));
-        Pose aboutY = Pose.rotation(Vector3.Y, Math.toRadians(turnDeg.y()));
-        Pose aboutZ = Pose.rotation(Vector3.Z, Math.toRadians(turnDeg.z()));
-        return new Placed(
-                shape, Pose.shift(centreMm).after(aboutZ).after(aboutY).after(aboutX));
+        return Placed.turned(shape, turnDeg, centreMm);
     }
 
     /**

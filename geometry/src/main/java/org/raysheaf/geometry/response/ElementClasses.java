@@ -50,7 +50,7 @@ final class ElementClasses {
         final Map<Integer, Integer> tables = new HashMap<>();
 
         BlockClass(PlacedBlock block) {
-            kind = (CrystalBlock) block.kind();
+            kind = block.kind().lattice();
         }
     }
 

@@ -113,7 +113,7 @@ public final class ResponseIntegral {
         PlacedBlock block = system.blockOf(element);
         lambda = block.material().attenuationLengthMm();
         Vector3 size = system.size(element);
-        front = ((CrystalBlock) block.kind()).layer(element - block.firstElement()) == 0;
+        front = block.kind().lattice().layer(element - block.firstElement()) == 0;
         half[0] = 0.5 * size.x();
         half[1] = 0.5 * size.y();
         half[2] = 0.5 * size.z();
@@ -188,7 +188,7 @@ public final class ResponseIntegral {
     private int addShadowCuts(double[] cuts, int count, int face) {
         int n = count;
         PlacedBlock block = system.blockOf(element);
-        CrystalBlock kind = (CrystalBlock) block.kind();
+        CrystalBlock kind = block.kind().lattice();
         double pitch = face == 0 ? kind.pitchMm().x() : kind.pitchMm().y();
         double slope = Math.abs(direction[face]) / direction[2];
         double front = -half[2]

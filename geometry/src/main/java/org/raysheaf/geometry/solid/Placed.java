@@ -31,6 +31,23 @@ public final class Placed implements Solid {
         this.w = pose.w();
     }
 
+    /**
+     * Turns a solid about the world's x axis by the first angle, then about y by the second, then about z by the third (right-hand
+     * rule), and moves it.
+     *
+     * @param shape the solid in its own frame
+     * @param turnDeg the three angles (degrees)
+     * @param centreMm where its origin goes (mm)
+     * @return the placed solid
+     */
+    public static Placed turned(Shape shape, Vector3 turnDeg, Vector3 centreMm) {
+        Pose aboutX = Pose.rotation(Vector3.X, Math.toRadians(turnDeg.x()));
+        Pose aboutY = Pose.rotation(Vector3.Y, Math.toRadians(turnDeg.y()));
+        Pose aboutZ = Pose.rotation(Vector3.Z, Math.toRadians(turnDeg.z()));
+        return new Placed(
+                shape, Pose.shift(centreMm).after(aboutZ).after(aboutY).after(aboutX));
+    }
+
     private static double along(Vector3 axis, double x, double y, double z) {
         return axis.x() * x + axis.y() * y + axis.z() * z;
     }

@@ -9,10 +9,12 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.OptionalLong;
+import java.util.Set;
 import java.util.stream.Collectors;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.ColumnType;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.io.hdf5.StoredDataset;
 import org.raysheaf.io.hdf5.StoredGroup;
 import org.raysheaf.io.hdf5.StoredType;
@@ -20,8 +22,12 @@ import org.raysheaf.io.list.ListFileException.Kind;
 
 /** Finds the columns of a list and checks everything that can be checked without reading them: presence, types, units, lengths. */
 final class ColumnsReader {
+    /** Members that are no columns. */
+    private static final Set<String> OTHERS = Set.of(ListFormat.SYSTEM, ListFormat.CHECKSUMS, ListFormat.TRUTH);
+
     private final Path path;
     private final StoredGroup root;
+    private final ListKind kind;
 
     /** A column in an open file. */
     static final class Column {
@@ -34,35 +40,50 @@ final class ColumnsReader {
         }
     }
 
-    ColumnsReader(Path path, StoredGroup root) {
+    ColumnsReader(Path path, StoredGroup root, ListKind kind) {
         this.path = path;
         this.root = root;
+        this.kind = kind;
     }
 
     /**
      * Finds the columns.
      *
      * @param declaredEvents the number of events that the list declares, if it does
-     * @return every column that is there; at least the two elements
+     * @return every column that is there, of the truth too; at least those that the kind of list requires
      * @throws IOException if one cannot be a column
      */
     Map<Attribute, Column> read(OptionalLong declaredEvents) throws IOException {
         Map<Attribute, Column> columns = new EnumMap<>(Attribute.class);
-        for (Attribute attribute : Attribute.values()) {
-            String name = attribute.columnName();
-            Optional<StoredDataset> dataset = root.dataset(name);
-            if (dataset.isPresent()) {
-                requireFit(dataset.get(), attribute);
-                columns.put(attribute, new Column(dataset.get(), root.checksums(name)));
+        find(columns, root, kind.measured());
+        Optional<StoredGroup> truth = root.group(ListFormat.TRUTH);
+        if (truth.isPresent()) {
+            find(columns, truth.get(), kind.truth());
+        }
+        String reference = "attribute events";
+        long events = declaredEvents.orElse(0);
+        for (Attribute attribute : kind.required()) {
+            Column column = requirePresent(columns, attribute);
+            if (declaredEvents.isEmpty()) {
+                events = column.dataset.count();
+                reference = attribute.columnName();
             }
         }
-        requirePresent(columns, Attribute.ELEMENT_A);
-        Column first = requirePresent(columns, Attribute.ELEMENT_B);
-        long events = declaredEvents.orElse(first.dataset.count());
         for (Column column : columns.values()) {
-            requireLength(column.dataset, events, declaredEvents.isPresent() ? "attribute events" : "element_b");
+            requireLength(column.dataset, events, reference);
         }
         return columns;
+    }
+
+    private void find(Map<Attribute, Column> columns, StoredGroup group, Set<Attribute> attributes) throws IOException {
+        for (Attribute attribute : attributes) {
+            String name = attribute.columnName();
+            Optional<StoredDataset> dataset = group.dataset(name);
+            if (dataset.isPresent()) {
+                requireFit(dataset.get(), attribute);
+                columns.put(attribute, new Column(dataset.get(), group.checksums(name)));
+            }
+        }
     }
 
     private Column requirePresent(Map<Attribute, Column> columns, Attribute attribute) throws ListFileException {
@@ -125,9 +146,8 @@ final class ColumnsReader {
             remarks.add("no checksums for " + unprotected + ": damage to these columns may go unnoticed");
         }
         for (String name : root.names()) {
-            boolean known = Attribute.named(name).isPresent()
-                    || name.equals(ListFormat.SYSTEM)
-                    || name.equals(ListFormat.CHECKSUMS);
+            boolean known =
+                    Attribute.named(name).filter(kind.measured()::contains).isPresent() || OTHERS.contains(name);
             if (!known) {
                 remarks.add("member " + name + " is not part of the format and was passed over; columns are "
                         + columnNames());
@@ -136,7 +156,7 @@ final class ColumnsReader {
         return remarks;
     }
 
-    private static String columnNames() {
-        return Arrays.stream(Attribute.values()).map(Attribute::columnName).collect(Collectors.joining(", "));
+    private String columnNames() {
+        return kind.measured().stream().map(Attribute::columnName).collect(Collectors.joining(", "));
     }
 }

@@ -1,8 +1,8 @@
 package org.raysheaf.io.list;
 
 import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.ColumnType;
 import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.geometry.event.ValueRange;
 
 /** What the values of a column can be. The same rules hold for writing and for reading. */
 final class EventRules {
@@ -22,7 +22,7 @@ final class EventRules {
     static int firstImpossible(EventBlock block, Attribute attribute, int elements) {
         int size = block.size();
         return switch (attribute.type()) {
-            case UINT8 -> firstAbove(block.bytes(attribute), size, 1);
+            case UINT8 -> attribute.range() == ValueRange.FLAG ? firstAbove(block.bytes(attribute), size, 1) : NONE;
             case UINT32 -> firstOutside(block.ints(attribute), size, elements);
             case INT64 -> firstNegative(block.longs(attribute), size);
             case FLOAT32 -> firstOutside(block.floats(attribute), size, lowest(attribute));
@@ -37,14 +37,16 @@ final class EventRules {
      * @return what was expected
      */
     static String expected(Attribute attribute, int elements) {
-        return switch (attribute.type()) {
-            case UINT8 -> "0 or 1";
-            case UINT32 ->
+        return switch (attribute.range()) {
+            case FLAG -> "0 or 1";
+            case COUNT -> "a number from 0 to 255";
+            case ELEMENT ->
                 elements == Integer.MAX_VALUE
                         ? "an element number from 0 to " + (Integer.MAX_VALUE - 1)
                         : "an element of the system, 0 to " + (elements - 1);
-            case INT64 -> "a time of at least 0 ps";
-            case FLOAT32 -> lowest(attribute) < 0 ? "a finite number" : "a finite number of at least 0";
+            case NOT_NEGATIVE ->
+                attribute == Attribute.TIME ? "a time of at least 0 ps" : "a finite number of at least 0";
+            case ANY -> "a finite number";
         };
     }
 
@@ -67,12 +69,11 @@ final class EventRules {
 
     /** Whether a broken rule of that column means an unknown element. */
     static boolean namesElements(Attribute attribute) {
-        return attribute.type() == ColumnType.UINT32;
+        return attribute.range() == ValueRange.ELEMENT;
     }
 
     private static float lowest(Attribute attribute) {
-        boolean energy = attribute == Attribute.ENERGY_A || attribute == Attribute.ENERGY_B;
-        return energy ? 0 : -Float.MAX_VALUE;
+        return attribute.range() == ValueRange.NOT_NEGATIVE ? 0 : -Float.MAX_VALUE;
     }
 
     private static int firstAbove(byte[] values, int size, int highest) {

@@ -5,12 +5,14 @@ import java.nio.file.Path;
 import java.time.DateTimeException;
 import java.time.Instant;
 import java.time.OffsetDateTime;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
 import java.util.OptionalDouble;
 import java.util.OptionalLong;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.geometry.settings.InvalidSettingsException;
 import org.raysheaf.io.hdf5.StoredAttributes;
@@ -33,7 +35,6 @@ final class HeaderReader {
     }
 
     ListHeader read() throws IOException {
-        requireList();
         double liveTimeS = required(ListFormat.LIVE_TIME);
         double durationS = optional(ListFormat.DURATION).orElse(liveTimeS);
         Instant start = start();
@@ -45,14 +46,20 @@ final class HeaderReader {
         }
     }
 
-    private void requireList() throws ListFileException {
+    /** What one record of the list is; refuses anything else. */
+    ListKind kind() throws ListFileException {
         Optional<String> mark = attributes.text(ListFormat.MARK);
-        String advice = "; a list has the root attribute raysheaf = \"list/1\"";
+        String advice = "; a list has the root attribute raysheaf = \"list/1\" (pairs) or \"singles/1\"";
         if (mark.isEmpty()) {
             throw trouble(Kind.NOT_A_LIST, "", "expected a list, found another HDF5 file" + advice);
         }
-        String version = mark.get().startsWith(ListFormat.KIND) ? mark.get().substring(ListFormat.KIND.length()) : "";
-        if (!version.matches("[1-9][0-9]{0,8}")) {
+        int slash = mark.get().indexOf('/');
+        String word = mark.get().substring(0, Math.max(0, slash));
+        String version = mark.get().substring(slash + 1);
+        Optional<ListKind> kind = Arrays.stream(ListKind.values())
+                .filter(known -> known.word().equals(word))
+                .findFirst();
+        if (kind.isEmpty() || !version.matches("[1-9][0-9]{0,8}")) {
             throw trouble(Kind.NOT_A_LIST, "", "expected a list, found \"" + mark.get() + "\"" + advice);
         }
         if (Integer.parseInt(version) > ListFormat.VERSION) {
@@ -62,6 +69,7 @@ final class HeaderReader {
                     "expected list format 1 to " + ListFormat.VERSION + ", found " + version
                             + "; use a newer version of this program");
         }
+        return kind.get();
     }
 
     private Instant start() throws ListFileException {

@@ -9,6 +9,7 @@ import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.io.hdf5.Hdf5Exception;
 import org.raysheaf.io.hdf5.Hdf5File;
 import org.raysheaf.io.hdf5.ValueReader;
@@ -35,11 +36,11 @@ final class ListCursor implements EventSource.Cursor {
         this.elements = elements;
     }
 
-    static ListCursor open(Path path, long events, int elements) throws IOException {
+    static ListCursor open(Path path, ListKind kind, long events, int elements) throws IOException {
         Hdf5File file = openFile(path);
         try {
             Map<Attribute, ColumnsReader.Column> columns =
-                    new ColumnsReader(path, file.root()).read(OptionalLong.of(events));
+                    new ColumnsReader(path, file.root(), kind).read(OptionalLong.of(events));
             return new ListCursor(path, file, columns, events, elements);
         } catch (Hdf5Exception e) {
             file.close();

@@ -16,6 +16,7 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.io.hdf5.Hdf5Exception;
 import org.raysheaf.io.hdf5.Hdf5File;
 import org.raysheaf.io.list.ListFileException.Kind;
@@ -50,8 +51,10 @@ public final class ListFile implements EventSource {
 
     /** What opening found. */
     private record Contents(
+            ListKind kind,
             ListHeader header,
             Set<Attribute> attributes,
+            Set<Attribute> truth,
             long events,
             List<String> warnings,
             Optional<String> digest) {}
@@ -76,15 +79,21 @@ public final class ListFile implements EventSource {
         try (Hdf5File file = Hdf5File.open(path)) {
             List<String> warnings = new ArrayList<>();
             HeaderReader headerReader = new HeaderReader(path, file.root(), warnings);
+            ListKind kind = headerReader.kind();
             ListHeader header = headerReader.read();
             OptionalLong declared = headerReader.declaredEvents();
-            ColumnsReader columnsReader = new ColumnsReader(path, file.root());
+            ColumnsReader columnsReader = new ColumnsReader(path, file.root(), kind);
             Map<Attribute, ColumnsReader.Column> columns = columnsReader.read(declared);
             warnings.addAll(columnsReader.remarks(columns));
             long events = columns.values().iterator().next().dataset.count();
+            Set<Attribute> truth = kind.truth();
+            truth.retainAll(columns.keySet());
+            columns.keySet().removeAll(truth);
             Contents contents = new Contents(
+                    kind,
                     header,
                     Collections.unmodifiableSet(EnumSet.copyOf(columns.keySet())),
+                    Collections.unmodifiableSet(truth),
                     events,
                     List.copyOf(warnings),
                     ListDigest.of(header, events, columns));
@@ -117,6 +126,25 @@ public final class ListFile implements EventSource {
         return contents.attributes;
     }
 
+    /**
+     * What one record of the list stands for.
+     *
+     * @return pairs or singles
+     */
+    public ListKind kind() {
+        return contents.kind;
+    }
+
+    /**
+     * What a simulation wrote beside the measured attributes. Cursors read these columns too, if a block has them; only
+     * what studies a simulation may ask for them, never a reconstruction.
+     *
+     * @return the columns of the truth; empty for a measured list
+     */
+    public Set<Attribute> truth() {
+        return contents.truth;
+    }
+
     @Override
     public long events() {
         return contents.events;
@@ -132,7 +160,7 @@ public final class ListFile implements EventSource {
     }
 
     /**
-     * A fingerprint of the whole list: SHA-256 over its header and the checksums of all chunks.
+     * A fingerprint of the whole list but its truth: SHA-256 over its header and the checksums of all chunks.
      *
      * @return hexadecimal digits, the same for the same list; empty if the file has no checksums
      */
@@ -147,7 +175,9 @@ public final class ListFile implements EventSource {
      * @throws IOException if it cannot be read
      */
     public void verify() throws IOException {
-        EventBlock block = new EventBlock(attributes(), CHECK_BLOCK);
+        Set<Attribute> all = EnumSet.copyOf(attributes());
+        all.addAll(truth());
+        EventBlock block = new EventBlock(all, CHECK_BLOCK);
         try (Cursor cursor = open()) {
             while (cursor.next(block)) {
                 // the cursor checks
@@ -168,6 +198,6 @@ public final class ListFile implements EventSource {
             throw new ListFileException(
                     Kind.CHANGED, path, "", "expected the file as it was when opened, found it changed; start again");
         }
-        return ListCursor.open(path, contents.events, elements);
+        return ListCursor.open(path, contents.kind, contents.events, elements);
     }
 }

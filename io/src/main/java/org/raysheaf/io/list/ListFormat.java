@@ -10,7 +10,7 @@ import java.util.HexFormat;
  *
  * <pre>
  * /                        attributes of the list
- *     raysheaf             "list/1": what this is, and the version              required
+ *     raysheaf             "list/1" or "singles/1": what this is, the version   required
  *     live_time_s          time in which events could be recorded (s)           required
  *     duration_s           length of the acquisition by the clock (s)           else live_time_s
  *     start                when it began, ISO 8601 with zone                    else 1970-01-01T00:00:00Z, with a warning
@@ -21,10 +21,11 @@ import java.util.HexFormat;
  *     writer               program and version that wrote the file              for people
  * /system                  text of the system description (UTF-8);              else an attribute of that name,
  *     sha256               SHA-256 of that text in hexadecimal                  else empty, with a warning
- * /element_a /element_b    one column per attribute, all of the same length     these two required
- * /time_ps …               (every {@link org.raysheaf.geometry.event.Attribute} has its column name)
+ * /element_a /element_b    one column per attribute, all of the same length     these two required in a list,
+ * /time_ps …               (every {@link org.raysheaf.geometry.event.Attribute} has its column name)     element and time_ps in singles
  *     unit meaning         of the column's values                               else the format's own unit
  * /crc32c/element_a …      CRC-32C of every chunk of that column                else a warning
+ * /truth/decay …           what only a simulation knows, in the same way        else none; reconstruction never reads it
  * </pre>
  *
  * <p>We write columns in chunks of 2¹⁸ values of the type that the attribute declares. Read is more: columns of any integer type (for
@@ -34,9 +35,6 @@ import java.util.HexFormat;
 final class ListFormat {
     /** Attribute that says what the file is. */
     static final String MARK = "raysheaf";
-
-    /** What it says, before the version. */
-    static final String KIND = "list/";
 
     /** Newest version that is read, and the one that is written. */
     static final int VERSION = 1;
@@ -56,6 +54,9 @@ final class ListFormat {
 
     /** Group of the checksums. */
     static final String CHECKSUMS = "crc32c";
+
+    /** Group of the columns that only a simulation knows. */
+    static final String TRUTH = "truth";
 
     /** Values in a chunk. */
     static final int CHUNK_LENGTH = 1 << 18;

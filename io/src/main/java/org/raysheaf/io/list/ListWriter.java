@@ -10,6 +10,7 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.io.hdf5.ArrayWriter;
 import org.raysheaf.io.hdf5.ColumnWriter;
@@ -20,14 +21,14 @@ import org.raysheaf.io.hdf5.Hdf5Writer;
 
 /**
  * Writes a list of any size as a stream; memory holds one chunk per column. The file appears under its name, complete, when {@link
- * #commit()} is called; closed without commit, nothing remains:
+ * #commit} is called; closed without commit, nothing remains:
  *
  * <pre>
- * try (ListWriter list = ListWriter.create(header, attributes, path, false)) {
+ * try (ListWriter list = ListWriter.create(attributes, path, false)) {
  *     while (more) {
  *         list.accept(block);
  *     }
- *     list.commit();
+ *     list.commit(header);
  * }
  * </pre>
  *
@@ -35,14 +36,29 @@ import org.raysheaf.io.hdf5.Hdf5Writer;
  */
 public final class ListWriter implements EventSink, AutoCloseable {
     private final Hdf5Writer file;
+    private final ListKind kind;
     private final Map<Attribute, ColumnWriter> columns = new EnumMap<>(Attribute.class);
     private long events;
 
-    private ListWriter(Hdf5Writer file, Set<Attribute> attributes, Compression compression, int chunkLength) {
+    private ListWriter(
+            Hdf5Writer file, ListKind kind, Set<Attribute> attributes, Compression compression, int chunkLength) {
         this.file = file;
-        for (Attribute attribute : Attribute.values()) {
+        this.kind = kind;
+        addColumns(file.root(), kind.measured(), attributes, compression, chunkLength);
+        if (attributes.stream().anyMatch(Attribute::truth)) {
+            addColumns(file.root().group(ListFormat.TRUTH), kind.truth(), attributes, compression, chunkLength);
+        }
+    }
+
+    private void addColumns(
+            GroupWriter group,
+            Set<Attribute> candidates,
+            Set<Attribute> attributes,
+            Compression compression,
+            int chunkLength) {
+        for (Attribute attribute : candidates) {
             if (attributes.contains(attribute)) {
-                columns.put(attribute, newColumn(attribute, compression, chunkLength));
+                columns.put(attribute, newColumn(group, attribute, compression, chunkLength));
             }
         }
     }
@@ -50,24 +66,21 @@ public final class ListWriter implements EventSink, AutoCloseable {
     /**
      * Starts a list, its columns stored as they are, which is fastest.
      *
-     * @param header what the list says about itself
-     * @param attributes what it says about every event; at least both elements
+     * @param attributes what it says about every event; at least what {@link ListKind#required()} names for its kind
      * @param path where the file is to appear; the folder exists
      * @param replace whether a file that is already there may be replaced
      * @return the writer; the caller commits and closes it
      * @throws java.nio.file.FileAlreadyExistsException if the path exists and must not be replaced
      * @throws IOException if the folder cannot be written to
      */
-    public static ListWriter create(ListHeader header, Set<Attribute> attributes, Path path, boolean replace)
-            throws IOException {
-        return create(header, attributes, path, replace, Compression.NONE);
+    public static ListWriter create(Set<Attribute> attributes, Path path, boolean replace) throws IOException {
+        return create(attributes, path, replace, Compression.NONE);
     }
 
     /**
      * Starts a list. Compressed, a typical list takes three fifths of the room, and its writing several times as long.
      *
-     * @param header what the list says about itself
-     * @param attributes what it says about every event; at least both elements
+     * @param attributes what it says about every event; at least what {@link ListKind#required()} names for its kind
      * @param path where the file is to appear; the folder exists
      * @param replace whether a file that is already there may be replaced
      * @param compression how columns are stored
@@ -75,43 +88,43 @@ public final class ListWriter implements EventSink, AutoCloseable {
      * @throws java.nio.file.FileAlreadyExistsException if the path exists and must not be replaced
      * @throws IOException if the folder cannot be written to
      */
-    public static ListWriter create(
-            ListHeader header, Set<Attribute> attributes, Path path, boolean replace, Compression compression)
+    public static ListWriter create(Set<Attribute> attributes, Path path, boolean replace, Compression compression)
             throws IOException {
-        return create(header, attributes, path, replace, compression, ListFormat.CHUNK_LENGTH);
+        return create(attributes, path, replace, compression, ListFormat.CHUNK_LENGTH);
     }
 
     /** The same with another chunk length, for tests that want many chunks of few events. */
     static ListWriter create(
-            ListHeader header,
-            Set<Attribute> attributes,
-            Path path,
-            boolean replace,
-            Compression compression,
-            int chunkLength)
+            Set<Attribute> attributes, Path path, boolean replace, Compression compression, int chunkLength)
             throws IOException {
-        if (!attributes.contains(Attribute.ELEMENT_A) || !attributes.contains(Attribute.ELEMENT_B)) {
-            throw new IllegalArgumentException("a list has at least element_a and element_b, found " + attributes);
+        ListKind kind = ListKind.of(attributes);
+        if (!attributes.containsAll(kind.required())) {
+            throw new IllegalArgumentException(
+                    kind.phrase() + " has at least " + kind.required() + ", found " + attributes);
+        }
+        for (Attribute attribute : attributes) {
+            if (!attribute.belongsTo(kind)) {
+                throw new IllegalArgumentException(kind.phrase() + " has no " + attribute.columnName());
+            }
         }
         Hdf5Writer file = Hdf5Writer.create(path, replace);
         try {
-            ListWriter writer = new ListWriter(file, attributes, compression, chunkLength);
-            writer.writeHeader(header);
-            return writer;
-        } catch (IOException | RuntimeException e) {
+            return new ListWriter(file, kind, attributes, compression, chunkLength);
+        } catch (RuntimeException e) {
             file.close();
             throw e;
         }
     }
 
-    private ColumnWriter newColumn(Attribute attribute, Compression compression, int chunkLength) {
+    private static ColumnWriter newColumn(
+            GroupWriter group, Attribute attribute, Compression compression, int chunkLength) {
         ElementType type = switch (attribute.type()) {
             case UINT8 -> ElementType.UINT8;
             case UINT32 -> ElementType.UINT32;
             case INT64 -> ElementType.INT64;
             case FLOAT32 -> ElementType.FLOAT32;
         };
-        ColumnWriter column = file.root().column(attribute.columnName(), type, chunkLength, compression);
+        ColumnWriter column = group.column(attribute.columnName(), type, chunkLength, compression);
         column.attribute(ListFormat.UNIT, attribute.unit());
         column.attribute(ListFormat.MEANING, attribute.meaning());
         return column;
@@ -119,7 +132,7 @@ public final class ListWriter implements EventSink, AutoCloseable {
 
     private void writeHeader(ListHeader header) throws IOException {
         GroupWriter root = file.root();
-        root.attribute(ListFormat.MARK, ListFormat.KIND + ListFormat.VERSION);
+        root.attribute(ListFormat.MARK, kind.word() + "/" + ListFormat.VERSION);
         root.attribute(ListFormat.WRITER, writerName());
         root.attribute(ListFormat.LIVE_TIME, header.liveTimeS());
         root.attribute(ListFormat.DURATION, header.durationS());
@@ -176,9 +189,11 @@ public final class ListWriter implements EventSink, AutoCloseable {
     /**
      * Completes the list and lets it appear under its name. Call once, after the last block.
      *
+     * @param header what the list says about itself
      * @throws IOException if the disk does not take it
      */
-    public void commit() throws IOException {
+    public void commit(ListHeader header) throws IOException {
+        writeHeader(header);
         file.root().attribute(ListFormat.EVENTS, events);
         file.commit();
     }

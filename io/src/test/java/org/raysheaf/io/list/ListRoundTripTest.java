@@ -19,6 +19,7 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.io.hdf5.Compression;
 
 class ListRoundTripTest {
@@ -59,8 +60,8 @@ class ListRoundTripTest {
     void keepsAnUnknownNuclideAndAnEmptyDescription() throws IOException {
         ListHeader header = new ListHeader("", 1, 1, SampleLists.HEADER.start(), null);
         Path path = folder.resolve("list.h5");
-        try (ListWriter writer = ListWriter.create(header, SampleLists.ALL, path, false)) {
-            writer.commit();
+        try (ListWriter writer = ListWriter.create(SampleLists.ALL, path, false)) {
+            writer.commit(header);
         }
 
         assertThat(ListFile.open(path).header()).isEqualTo(header);
@@ -97,12 +98,12 @@ class ListRoundTripTest {
         Path once = SampleLists.write(folder.resolve("once.h5"), Compression.NONE, whole);
         Path pieces = folder.resolve("pieces.h5");
         EventBlock piece = new EventBlock(SampleLists.ALL, 777);
-        try (ListWriter writer = ListWriter.create(SampleLists.HEADER, SampleLists.ALL, pieces, false);
+        try (ListWriter writer = ListWriter.create(SampleLists.ALL, pieces, false);
                 EventSource.Cursor cursor = ListFile.open(once).open()) {
             while (cursor.next(piece)) {
                 writer.accept(piece);
             }
-            writer.commit();
+            writer.commit(SampleLists.HEADER);
         }
 
         assertThat(Files.mismatch(once, pieces)).isEqualTo(-1);
@@ -125,9 +126,51 @@ class ListRoundTripTest {
     }
 
     @Test
+    void keepsSinglesAndTheTruthApart() throws IOException {
+        Set<Attribute> columns = ListKind.SINGLES.measured();
+        columns.addAll(ListKind.SINGLES.truth());
+        EventBlock written = SampleLists.block(columns, 1000, 11);
+
+        ListFile list = ListFile.open(SampleLists.write(folder.resolve("singles.h5"), written));
+
+        assertThat(list.kind()).isEqualTo(ListKind.SINGLES);
+        assertThat(list.attributes()).isEqualTo(ListKind.SINGLES.measured());
+        assertThat(list.truth()).isEqualTo(ListKind.SINGLES.truth());
+        assertThat(list.warnings()).isEmpty();
+        EventBlock decays = new EventBlock(EnumSet.of(Attribute.DECAY), 1000);
+        try (EventSource.Cursor cursor = list.open()) {
+            cursor.next(decays);
+        }
+        assertThat(decays.longs(Attribute.DECAY)).isEqualTo(written.longs(Attribute.DECAY));
+    }
+
+    @Test
+    void hasTheSameDigestWithAndWithoutTruth() throws IOException {
+        Set<Attribute> columns = ListKind.PAIRS.measured();
+        columns.addAll(ListKind.PAIRS.truth());
+        EventBlock withTruth = SampleLists.block(columns, 100, 12);
+        EventBlock without = new EventBlock(ListKind.PAIRS.measured(), 100);
+        without.resize(100);
+        for (Attribute attribute : without.attributes()) {
+            System.arraycopy(withTruth.column(attribute), 0, without.column(attribute), 0, 100);
+        }
+
+        assertThat(digest(withTruth)).isEqualTo(digest(without));
+    }
+
+    @Test
+    void refusesColumnsOfAnotherKindOfList() {
+        assertThatThrownBy(() -> ListWriter.create(
+                        EnumSet.of(Attribute.ELEMENT, Attribute.TIME, Attribute.DELAYED),
+                        folder.resolve("list.h5"),
+                        false))
+                .isInstanceOf(IllegalArgumentException.class)
+                .hasMessage("a list of singles has no delayed");
+    }
+
+    @Test
     void leavesNothingBehindWithoutCommit() throws IOException {
-        try (ListWriter writer =
-                ListWriter.create(SampleLists.HEADER, SampleLists.ALL, folder.resolve("list.h5"), false)) {
+        try (ListWriter writer = ListWriter.create(SampleLists.ALL, folder.resolve("list.h5"), false)) {
             writer.accept(SampleLists.block(10, 8));
         }
 
@@ -140,7 +183,7 @@ class ListRoundTripTest {
     void overwritesOnlyWhenToldTo() throws IOException {
         Path path = SampleLists.write(folder.resolve("list.h5"), SampleLists.block(10, 9));
 
-        assertThatThrownBy(() -> ListWriter.create(SampleLists.HEADER, SampleLists.ALL, path, false))
+        assertThatThrownBy(() -> ListWriter.create(SampleLists.ALL, path, false))
                 .isInstanceOf(FileAlreadyExistsException.class)
                 .hasMessageContaining("list.h5")
                 .hasMessageContaining("exists already");
@@ -154,8 +197,7 @@ class ListRoundTripTest {
         EventBlock block = SampleLists.block(10, 10);
         block.floats(Attribute.ENERGY_B)[7] = Float.NaN;
 
-        try (ListWriter writer =
-                ListWriter.create(SampleLists.HEADER, SampleLists.ALL, folder.resolve("list.h5"), false)) {
+        try (ListWriter writer = ListWriter.create(SampleLists.ALL, folder.resolve("list.h5"), false)) {
             assertThatThrownBy(() -> writer.accept(block))
                     .isInstanceOf(IllegalArgumentException.class)
                     .hasMessage("energy_b_keV, event 7: expected a finite number of at least 0, found NaN");

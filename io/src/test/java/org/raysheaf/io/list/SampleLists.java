@@ -4,19 +4,19 @@ import java.io.IOException;
 import java.nio.ByteBuffer;
 import java.nio.file.Path;
 import java.time.Instant;
-import java.util.EnumSet;
 import java.util.Set;
 import java.util.SplittableRandom;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.io.hdf5.Compression;
 
 /** Lists for tests: made from a seed, written, and read back whole. */
 final class SampleLists {
-    static final Set<Attribute> ALL = EnumSet.allOf(Attribute.class);
+    static final Set<Attribute> ALL = ListKind.PAIRS.measured();
     static final int ELEMENTS = 4356;
     static final ListHeader HEADER = new ListHeader(
             "raysheaf: system/1\nname: a ring of 12 µ-blocks\n",
@@ -60,11 +60,11 @@ final class SampleLists {
 
     static Path write(Path path, Compression compression, int chunkLength, EventBlock... blocks) throws IOException {
         Set<Attribute> attributes = blocks.length == 0 ? ALL : blocks[0].attributes();
-        try (ListWriter writer = ListWriter.create(HEADER, attributes, path, true, compression, chunkLength)) {
+        try (ListWriter writer = ListWriter.create(attributes, path, true, compression, chunkLength)) {
             for (EventBlock block : blocks) {
                 writer.accept(block);
             }
-            writer.commit();
+            writer.commit(HEADER);
         }
         return path;
     }

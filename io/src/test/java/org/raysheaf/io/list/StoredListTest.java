@@ -6,7 +6,9 @@ import java.io.IOException;
 import java.io.InputStream;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.EnumSet;
 import java.util.Objects;
+import java.util.Set;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.raysheaf.geometry.event.Attribute;
@@ -15,6 +17,14 @@ import org.raysheaf.geometry.event.EventBlock;
 /** A list written when a format version was new must be readable for ever. The stored files are never written again. */
 class StoredListTest {
     private static final int EVENTS = 100;
+    private static final Set<Attribute> COLUMNS = EnumSet.of(
+            Attribute.ELEMENT_A,
+            Attribute.ELEMENT_B,
+            Attribute.TIME,
+            Attribute.TIME_DIFFERENCE,
+            Attribute.ENERGY_A,
+            Attribute.ENERGY_B,
+            Attribute.DELAYED);
 
     @TempDir
     Path folder;
@@ -29,7 +39,7 @@ class StoredListTest {
         ListFile list = ListFile.open(path);
 
         assertThat(list.header()).isEqualTo(SampleLists.HEADER);
-        assertThat(list.attributes()).containsExactly(Attribute.values());
+        assertThat(list.attributes()).isEqualTo(COLUMNS);
         assertThat(list.warnings()).isEmpty();
         assertThat(list.digest()).hasValue("83c4ffd24c41f393096f7f42a085533465bbd00f338be2d242a222e20547b070");
         assertThat(SampleLists.same(SampleLists.read(list), events())).isTrue();
@@ -37,7 +47,7 @@ class StoredListTest {
 
     /** The events in that file: event i has values that follow from i. */
     static EventBlock events() {
-        EventBlock block = new EventBlock(SampleLists.ALL, EVENTS);
+        EventBlock block = new EventBlock(COLUMNS, EVENTS);
         for (int i = 0; i < EVENTS; i++) {
             block.ints(Attribute.ELEMENT_A)[i] = i;
             block.ints(Attribute.ELEMENT_B)[i] = 4355 - i;

@@ -49,7 +49,7 @@ record GridSettings(
     private static double smallestPitch(DetectorSystem system) {
         double smallest = Double.POSITIVE_INFINITY;
         for (PlacedBlock placed : system.blocks()) {
-            CrystalBlock block = (CrystalBlock) placed.kind();
+            CrystalBlock block = placed.kind().lattice();
             smallest = Math.min(
                     smallest, Math.min(block.pitchMm().x(), block.pitchMm().y()));
         }

@@ -49,10 +49,9 @@ final class SimulateVerb extends Verb {
         Simulation simulation = new Simulation(acquisition, phantom, systems.system(), systems.text());
         Compression compression = small ? Compression.DEFLATE : Compression.NONE;
         Simulated simulated;
-        try (ListWriter writer = ListWriter.create(
-                simulation.header(pool), acquisition.attributes(), out, common().replace(), compression)) {
+        try (ListWriter writer = ListWriter.create(acquisition.attributes(), out, common().replace(), compression)) {
             simulated = simulation.run(writer, pool, progress);
-            writer.commit();
+            writer.commit(simulated.header());
         }
         report(simulated);
     }

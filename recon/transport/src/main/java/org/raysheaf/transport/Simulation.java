@@ -1,7 +1,6 @@
 package org.raysheaf.transport;
 
 import java.io.IOException;
-import java.io.UncheckedIOException;
 import java.util.ArrayDeque;
 import java.util.Deque;
 import java.util.concurrent.ForkJoinPool;
@@ -53,24 +52,6 @@ public final class Simulation {
         this.expectedCandidates = source.candidateBq() * header.pairsPerBecquerel();
         DecayTimes times = new DecayTimes(expectedCandidates, acquisition.durationS(), acquisition.nuclide());
         this.setting = new Slice.Setting(times, source, system, acquisition.attributes(), acquisition.seed());
-    }
-
-    /**
-     * The header of the list, before it is written. If the acquisition may stop early, the time of its last event is found by
-     * running it once without keeping anything, which takes as long as {@link #run} itself.
-     *
-     * @param pool does the work
-     * @return the same header that {@link #run} will return
-     */
-    public ListHeader header(ForkJoinPool pool) {
-        if (acquisition.maxEvents() == null) {
-            return acquisition.header(systemText);
-        }
-        try {
-            return run(block -> {}, pool, Progress.SILENT).header();
-        } catch (IOException e) {
-            throw new UncheckedIOException(e); // that sink cannot fail
-        }
     }
 
     /**

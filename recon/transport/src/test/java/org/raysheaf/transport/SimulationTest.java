@@ -6,7 +6,6 @@ import static org.assertj.core.api.Assertions.within;
 
 import java.io.IOException;
 import java.time.Instant;
-import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.junit.jupiter.api.Test;
@@ -150,17 +149,6 @@ class SimulationTest {
             assertThat(part.outcome().header().liveTimeS()).isEqualTo(0.5 * stopped);
             double pairs = (double) part.outcome().pairs() / full.outcome().pairs();
             assertThat(pairs).isCloseTo(0.5, within(0.02));
-        }
-    }
-
-    @Test
-    void headerIsKnownBeforeTheList() throws IOException {
-        ForkJoinPool pool = ForkJoinPool.commonPool();
-        for (Long limit : Arrays.asList(null, 500L)) {
-            Simulation simulation =
-                    new Simulation(acquisition(null, 20, null, limit), Trials.phantom(BODY), RINGS, "text");
-            Simulated outcome = simulation.run(new Collected(), pool, Progress.SILENT);
-            assertThat(simulation.header(pool)).isEqualTo(outcome.header());
         }
     }
 

@@ -1,7 +1,9 @@
 package org.raysheaf.app.proof;
 
 import java.util.Arrays;
+import java.util.Objects;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
@@ -10,13 +12,14 @@ import org.raysheaf.geometry.event.ListHeader;
 
 /** A list of pairs that never touches a disk. */
 final class ListInMemory implements EventSink, EventSource {
-    private final ListHeader header;
+    private @Nullable ListHeader header;
     private int[] a = new int[1024];
     private int[] b = new int[1024];
     private int size;
 
-    ListInMemory(ListHeader header) {
-        this.header = header;
+    /** Ends the writing. */
+    void complete(ListHeader finalHeader) {
+        header = finalHeader;
     }
 
     @Override
@@ -33,7 +36,7 @@ final class ListInMemory implements EventSink, EventSource {
 
     @Override
     public ListHeader header() {
-        return header;
+        return Objects.requireNonNull(header, "complete the list first");
     }
 
     @Override

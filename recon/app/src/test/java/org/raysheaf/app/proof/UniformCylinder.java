@@ -88,8 +88,8 @@ final class UniformCylinder {
                 false);
         Simulation simulation = new Simulation(
                 acquisition, new Phantom(new PhantomDescription("cylinder", List.of(cylinder))), system, "");
-        ListInMemory list = new ListInMemory(simulation.header(pool));
-        simulation.run(list, pool, Progress.SILENT);
+        ListInMemory list = new ListInMemory();
+        list.complete(simulation.run(list, pool, Progress.SILENT).header());
         return list;
     }
 
