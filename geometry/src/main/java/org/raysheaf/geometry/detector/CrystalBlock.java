@@ -129,6 +129,55 @@ public record CrystalBlock(
     }
 
     /**
+     * Centre of a crystal along u.
+     *
+     * @param crystal number within the block
+     * @return the coordinate in the block's frame (mm)
+     */
+    public double centreU(int crystal) {
+        return (column(crystal) - 0.5 * (columns - 1)) * pitchMm.x();
+    }
+
+    /**
+     * Centre of a crystal along v.
+     *
+     * @param crystal number within the block
+     * @return the coordinate in the block's frame (mm)
+     */
+    public double centreV(int crystal) {
+        return (row(crystal) - 0.5 * (rows - 1)) * pitchMm.y();
+    }
+
+    /**
+     * Centre of a crystal along w.
+     *
+     * @param crystal number within the block
+     * @return the depth behind the front face (mm)
+     */
+    public double centreW(int crystal) {
+        return layer(crystal) * pitchMm.z() + 0.5 * crystalMm.z();
+    }
+
+    /**
+     * The crystal whose centre is nearest to a point of the block's frame, also from outside.
+     *
+     * @param u the point (mm)
+     * @param v the point (mm)
+     * @param w the point (mm)
+     * @return the crystal's number within the block
+     */
+    public int nearest(double u, double v, double w) {
+        return crystal(
+                nearest(u / pitchMm.x() + 0.5 * (columns - 1), columns),
+                nearest(v / pitchMm.y() + 0.5 * (rows - 1), rows),
+                nearest((w - 0.5 * crystalMm.z()) / pitchMm.z(), layers));
+    }
+
+    private static int nearest(double place, int count) {
+        return (int) Math.max(0, Math.min(count - 1, Math.rint(place)));
+    }
+
+    /**
      * The crystal at a point of the block's frame.
      *
      * @param local the point (mm)

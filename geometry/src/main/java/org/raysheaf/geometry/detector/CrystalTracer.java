@@ -45,7 +45,7 @@ final class CrystalTracer {
         height = kind.heightMm();
         depth = kind.depthMm();
         firstElement = placed.firstElement();
-        attenuationLength = placed.material().attenuationLengthMm();
+        attenuationLength = placed.material().meanFreePathMm();
         Pose pose = placed.pose();
         axes = new double[] {
             pose.u().x(), pose.u().y(), pose.u().z(),

@@ -104,6 +104,16 @@ public final class DetectorSystem {
     }
 
     /**
+     * The number of the block that holds an element.
+     *
+     * @param element the element, 0 to {@link #elements()} − 1
+     * @return the block's number
+     */
+    public int blockIndexOf(int element) {
+        return blockOfElement[element];
+    }
+
+    /**
      * Whether two elements may form a coincident pair by the distance of their blocks.
      *
      * @param a one element

@@ -4,6 +4,7 @@ import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
 import org.raysheaf.geometry.matter.Material;
+import org.raysheaf.geometry.matter.Materials;
 import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;
 
@@ -14,17 +15,19 @@ import org.raysheaf.geometry.settings.Problems;
  * @param name how people call the system
  * @param fieldOfView where activity is looked for
  * @param pairs which blocks may form a coincident pair
- * @param materials the materials that blocks refer to
+ * @param materials materials of its own, beside those of the library
  * @param blocks the kinds of block that placements refer to
  * @param placements where blocks stand; blocks are numbered in this order
+ * @param shields matter that detects nothing
  */
 public record SystemDescription(
         String name,
         FieldOfView fieldOfView,
         @Default("{}") PairRule pairs,
-        List<Material> materials,
+        @Default("[]") List<Material> materials,
         List<BlockKind> blocks,
-        List<Placement> placements) {
+        List<Placement> placements,
+        @Default("[]") List<Shield> shields) {
     /** Most elements in one system; beyond it a count was surely mistaken. */
     private static final long MOST_ELEMENTS = 1 << 24;
 
@@ -32,8 +35,16 @@ public record SystemDescription(
         materials = List.copyOf(materials);
         blocks = List.copyOf(blocks);
         placements = List.copyOf(placements);
+        shields = List.copyOf(shields);
         Problems problems = new Problems("system " + name);
         checkNames(problems, materials, blocks, placements);
+        for (int i = 0; i < shields.size(); i++) {
+            String material = shields.get(i).material();
+            problems.rule(
+                    Materials.resolve(material, materials).isPresent(),
+                    "shields[" + i + "].material",
+                    Materials.unknown(material, materials));
+        }
         if (problems.found().isEmpty()) {
             problems.rule(
                     elements(blocks, placements) <= MOST_ELEMENTS,
@@ -44,6 +55,36 @@ public record SystemDescription(
             LayoutCheck.check(problems, fieldOfView, pairs, place(materials, blocks, placements));
         }
         problems.orThrow();
+    }
+
+    /**
+     * A system without shields.
+     *
+     * @param name how people call the system
+     * @param fieldOfView where activity is looked for
+     * @param pairs which blocks may form a coincident pair
+     * @param materials materials of its own
+     * @param blocks the kinds of block
+     * @param placements where blocks stand
+     */
+    public SystemDescription(
+            String name,
+            FieldOfView fieldOfView,
+            PairRule pairs,
+            List<Material> materials,
+            List<BlockKind> blocks,
+            List<Placement> placements) {
+        this(name, fieldOfView, pairs, materials, blocks, placements, List.of());
+    }
+
+    /**
+     * The material that a name stands for in this description.
+     *
+     * @param material the name of one of its own materials or of the library
+     * @return the material
+     */
+    public Material materialNamed(String material) {
+        return Materials.resolve(material, materials).orElseThrow();
     }
 
     private static void checkNames(
@@ -58,9 +99,9 @@ public record SystemDescription(
             unique(problems, blockNames, "blocks[" + i + "].name", blocks.get(i).name(), i);
             String material = blocks.get(i).material();
             problems.rule(
-                    materialNames.containsKey(material),
+                    Materials.resolve(material, materials).isPresent(),
                     "blocks[" + i + "].material",
-                    "expected one of " + materialNames.keySet() + ", found " + material);
+                    Materials.unknown(material, materials));
         }
         for (int i = 0; i < placements.size(); i++) {
             String block = placements.get(i).block();
@@ -96,10 +137,7 @@ public record SystemDescription(
         int element = 0;
         for (int p = 0; p < placements.size(); p++) {
             BlockKind kind = find(blocks, placements.get(p).block());
-            Material material = materials.stream()
-                    .filter(m -> m.name().equals(kind.material()))
-                    .findFirst()
-                    .orElseThrow();
+            Material material = Materials.resolve(kind.material(), materials).orElseThrow();
             for (Placement.Site site : placements.get(p).sites(kind)) {
                 placed.add(new PlacedBlock(
                         placed.size(), kind, material, site.pose(), element, p, site.station(), site.stations()));

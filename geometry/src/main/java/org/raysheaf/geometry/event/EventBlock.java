@@ -90,6 +90,83 @@ public final class EventBlock {
     }
 
     /**
+     * A block that holds these events and has room for more.
+     *
+     * @param events how many it must hold
+     * @return this, or a larger copy
+     */
+    public EventBlock withRoomFor(int events) {
+        if (events <= capacity) {
+            return this;
+        }
+        EventBlock larger = new EventBlock(attributes(), Math.max(events, capacity + capacity / 2));
+        larger.append(this, 0, size);
+        return larger;
+    }
+
+    /**
+     * Appends events of another block; columns of it that this block does not have are left out.
+     *
+     * @param from a block with all columns of this one
+     * @param first the first event to take
+     * @param count how many
+     */
+    public void append(EventBlock from, int first, int count) {
+        int before = size;
+        resize(before + count);
+        columns.forEach((attribute, column) -> System.arraycopy(from.column(attribute), first, column, before, count));
+    }
+
+    /**
+     * Appends events of another block in an order of their own.
+     *
+     * @param from a block with all columns of this one
+     * @param rows the events to take
+     * @param first where in rows to begin
+     * @param count how many
+     */
+    public void append(EventBlock from, int[] rows, int first, int count) {
+        int before = size;
+        resize(before + count);
+        columns.forEach((attribute, column) -> {
+            Object source = from.column(attribute);
+            switch (attribute.type()) {
+                case UINT8 -> {
+                    for (int i = 0; i < count; i++) {
+                        ((byte[]) column)[before + i] = ((byte[]) source)[rows[first + i]];
+                    }
+                }
+                case UINT32 -> {
+                    for (int i = 0; i < count; i++) {
+                        ((int[]) column)[before + i] = ((int[]) source)[rows[first + i]];
+                    }
+                }
+                case INT64 -> {
+                    for (int i = 0; i < count; i++) {
+                        ((long[]) column)[before + i] = ((long[]) source)[rows[first + i]];
+                    }
+                }
+                case FLOAT32 -> {
+                    for (int i = 0; i < count; i++) {
+                        ((float[]) column)[before + i] = ((float[]) source)[rows[first + i]];
+                    }
+                }
+            }
+        });
+    }
+
+    /**
+     * Forgets the first events; the others move up.
+     *
+     * @param count how many to forget
+     */
+    public void removeFirst(int count) {
+        int rest = size - count;
+        columns.values().forEach(column -> System.arraycopy(column, count, column, 0, rest));
+        size = rest;
+    }
+
+    /**
      * A column of 8-bit values.
      *
      * @param attribute an attribute of type UINT8

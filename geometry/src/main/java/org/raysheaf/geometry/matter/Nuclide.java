@@ -3,17 +3,17 @@ package org.raysheaf.geometry.matter;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
- * A positron emitter, as far as counting needs it.
+ * A radionuclide, as far as counting needs it.
  *
  * @param name for example {@code "F-18"}
  * @param halfLifeS half-life (s), greater than 0
- * @param positronBranching positrons per decay, greater than 0, at most 1
+ * @param positronBranching positrons per decay, 0 to 1
  */
 public record Nuclide(String name, double halfLifeS, double positronBranching) {
     public Nuclide {
         new Problems("nuclide")
                 .above("half_life_s", halfLifeS, 0)
-                .above("positron_branching", positronBranching, 0)
+                .atLeast("positron_branching", positronBranching, 0)
                 .rule(!(positronBranching > 1), "positron_branching", "expected at most 1, found " + positronBranching)
                 .orThrow();
     }

@@ -1,9 +1,12 @@
 package org.raysheaf.geometry.response;
 
 import java.util.ArrayList;
+import java.util.Collections;
+import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
 import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.MonolithicBlock;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
@@ -18,6 +21,12 @@ import org.raysheaf.geometry.sheaf.SheafMaker;
  * sensitivity leaves out is set aside in the list as well.
  */
 public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
+    private static final List<Attribute> POINT_A =
+            List.of(Attribute.POSITION_A_X, Attribute.POSITION_A_Y, Attribute.POSITION_A_Z);
+    private static final List<Attribute> POINT_B =
+            List.of(Attribute.POSITION_B_X, Attribute.POSITION_B_Y, Attribute.POSITION_B_Z);
+    private static final Set<Attribute> ALSO_READS = alsoReadSet();
+
     private final DetectorSystem system;
     private final PairLines lines;
     private final List<PlacedBlock[]> blockPairs = new ArrayList<>();
@@ -39,6 +48,13 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         }
     }
 
+    private static Set<Attribute> alsoReadSet() {
+        Set<Attribute> set = EnumSet.of(Attribute.DELAYED);
+        set.addAll(POINT_A);
+        set.addAll(POINT_B);
+        return Collections.unmodifiableSet(set);
+    }
+
     @Override
     public Set<Attribute> attributes() {
         return Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B);
@@ -46,7 +62,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     @Override
     public Set<Attribute> alsoReads() {
-        return Set.of(Attribute.DELAYED);
+        return ALSO_READS;
     }
 
     @Override
@@ -57,7 +73,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     /**
      * {@inheritDoc}
      *
-     * <p>If the block has a {@link Attribute#DELAYED} column, delayed pairs are set aside.
+     * <p>If the events have a {@link Attribute#DELAYED} column, delayed pairs are set aside. In a block of one piece the ray ends at the
+     * measured point, if the events have one; the response, and so the sensitivity, is that of the cell that holds the point.
      *
      * @throws IllegalArgumentException if an element is not one of the system's
      */
@@ -68,6 +85,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         int[] a = events.ints(Attribute.ELEMENT_A);
         int[] b = events.ints(Attribute.ELEMENT_B);
         boolean mayBeDelayed = events.has(Attribute.DELAYED);
+        boolean pointsA = POINT_A.stream().allMatch(events::has);
+        boolean pointsB = POINT_B.stream().allMatch(events::has);
         for (int i = 0; i < events.size(); i++) {
             requireElement(a[i]);
             requireElement(b[i]);
@@ -78,10 +97,24 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             } else if (!maker.line(a[i], b[i], line)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
+                if (pointsA && measuresPoints(a[i])) {
+                    line.ax = events.floats(Attribute.POSITION_A_X)[i];
+                    line.ay = events.floats(Attribute.POSITION_A_Y)[i];
+                    line.az = events.floats(Attribute.POSITION_A_Z)[i];
+                }
+                if (pointsB && measuresPoints(b[i])) {
+                    line.bx = events.floats(Attribute.POSITION_B_X)[i];
+                    line.by = events.floats(Attribute.POSITION_B_Y)[i];
+                    line.bz = events.floats(Attribute.POSITION_B_Z)[i];
+                }
                 append(out, line, 1);
                 tally.use();
             }
         }
+    }
+
+    private boolean measuresPoints(int element) {
+        return system.blockOf(element).kind() instanceof MonolithicBlock;
     }
 
     private void requireElement(int element) {

@@ -111,7 +111,7 @@ public final class ResponseIntegral {
     private void begin(int elementNumber, double su, double sv, double sw) {
         element = elementNumber;
         PlacedBlock block = system.blockOf(element);
-        lambda = block.material().attenuationLengthMm();
+        lambda = block.material().meanFreePathMm();
         Vector3 size = system.size(element);
         front = block.kind().lattice().layer(element - block.firstElement()) == 0;
         half[0] = 0.5 * size.x();

@@ -87,7 +87,8 @@ class SystemDescriptionTest {
                         List.of(new Placement.Rings("brick", 12, 42, 0, List.of(0.0)))))
                 .isInstanceOf(InvalidSettingsException.class)
                 .hasMessageContaining("materials[1].name: expected a new name, found glass a second time")
-                .hasMessageContaining("blocks[0].material: expected one of [glass], found scintillator")
+                .hasMessageContaining("blocks[0].material: expected a material of the library (water, pmma, ")
+                .hasMessageContaining("or one of the materials here (glass, glass), found scintillator")
                 .hasMessageContaining("placements[0].block: expected one of [tile], found brick");
     }
 

@@ -28,13 +28,13 @@ class PhantomTest {
     void laterPartsReplaceEarlierOnes() {
         PhantomPart insert = PhantomPart.of("cold insert", new Sphere(5)).at(new Vector3(6, 0, 0));
         Phantom phantom = phantom(BODY, insert);
-        assertThat(phantom.partAt(0, 0, 0)).isZero();
-        assertThat(phantom.partAt(6, 0, 0)).isEqualTo(1);
-        assertThat(phantom.partAt(0, 0, 16)).isEqualTo(-1);
+        assertThat(phantom.regionAt(0, 0, 0)).isZero();
+        assertThat(phantom.regionAt(6, 0, 0)).isEqualTo(1);
+        assertThat(phantom.regionAt(0, 0, 16)).isEqualTo(-1);
         assertThat(phantom.concentrationBqPerMlAt(0, 0, 0)).isEqualTo(200_000);
         assertThat(phantom.concentrationBqPerMlAt(6, 0, 0)).isZero();
         assertThat(phantom.concentrationBqPerMlAt(0, 20, 0)).isZero();
-        assertThat(phantom(insert, BODY).partAt(6, 0, 0)).isEqualTo(1);
+        assertThat(phantom(insert, BODY).regionAt(6, 0, 0)).isEqualTo(1);
     }
 
     @Test
@@ -120,7 +120,7 @@ class PhantomTest {
                 .hasMessage("phantom part body: concentration_kBq_per_mL: expected a number >= 0, found -1");
         assertThatThrownBy(() -> BODY.at(new Vector3(0, Double.NaN, 0))).hasMessageContaining("centre_mm[1]");
         assertThatThrownBy(() -> new PhantomDescription("empty", List.of()))
-                .hasMessage("phantom empty: parts: expected at least one part, found none");
+                .hasMessage("phantom empty: parts: expected at least one part, source or volume, found none");
         assertThatThrownBy(() -> phantom(BODY, BODY))
                 .hasMessage("phantom trial: parts[1].name: expected a new name, found body a second time");
     }

@@ -8,6 +8,7 @@ import org.junit.jupiter.api.Test;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.PairRule;
 import org.raysheaf.geometry.detector.Placement;
+import org.raysheaf.geometry.detector.Readout;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.phantom.PhantomDescription;
@@ -60,7 +61,70 @@ class OwnDescriptionsTest {
 
         assertThatExceptionOfType(DescriptionException.class)
                 .isThrownBy(() -> read(text))
-                .withMessage("rings.yaml, line 13, field blocks[0].material: expected one of [crystal], found glass");
+                .withMessageStartingWith(
+                        "rings.yaml, line 13, field blocks[0].material: expected a material of the library (")
+                .withMessageEndingWith("or one of the materials here (crystal), found glass");
+    }
+
+    @Test
+    void readsReadoutsShieldsAndBlocksOfOnePiece() throws DescriptionException {
+        String text = """
+                raysheaf: system/1
+                name: two
+                field_of_view: {radius_mm: 10, length_mm: 20}
+                materials:
+                  - {name: glass, density_g_per_cm3: 3.2, formula: PbSiO3}
+                  - {name: foam, like: polystyrene, density_g_per_cm3: 0.03}
+                  - {name: brass, density_g_per_cm3: 8.5, mass_fractions: {Cu: 0.65, Zn: 0.35}}
+                blocks:
+                  - kind: monolithic_block
+                    name: slab
+                    size_mm: [30, 30, 10]
+                    cell_mm: [5, 5, 5]
+                    material: lyso
+                    position_sd_mm: [0.5, 0.5, 1]
+                    readout: {energy_resolution: 0.1, dead_time: paralysable, dead_time_ns: 500, lutetium: true}
+                placements:
+                  - {kind: rings, block: slab, count: 2, inner_radius_mm: 40}
+                shields:
+                  - {name: plate, shape: {kind: cylinder, radius_mm: 60, length_mm: 5}, centre_mm: [0, 0, 30], material: lead}
+                """;
+
+        SystemDescription system = read(text);
+
+        assertThat(system.materials().get(2).composition()).containsEntry("Cu", 0.65);
+        assertThat(system.blocks().get(0).readout().deadTime()).isEqualTo(Readout.DeadTime.PARALYSABLE);
+        assertThat(system.blocks().get(0).elements()).isEqualTo(6 * 6 * 2);
+        assertThat(system.shields().get(0).material()).isEqualTo("lead");
+        assertThat(read(DescriptionWriter.render("system", system))).isEqualTo(system);
+    }
+
+    @Test
+    void readsSourcesAndVolumesOfLabels() throws DescriptionException {
+        String text = """
+                raysheaf: phantom/1
+                name: mouse
+                materials:
+                  - {name: fur, like: adipose, density_g_per_cm3: 0.2}
+                volume:
+                  file: mouse.nii.gz
+                  labels:
+                    - {label: 1, name: body, material: soft-tissue, concentration_kBq_per_mL: 10}
+                    - {label: 2, name: coat, material: fur}
+                sources:
+                  - {kind: point, name: marker, at_mm: [1, 2, 3], activity_kBq: 5}
+                  - {kind: line, name: tail, from_mm: [0, 0, -40], to_mm: [0, 0, -60], activity_kBq: 2}
+                  - {kind: surface, name: skin, shape: {kind: sphere, radius_mm: 3}, activity_kBq: 1}
+                """;
+
+        PhantomDescription phantom = DescriptionReader.readText(text, "p.yaml", "phantom", PhantomDescription.class);
+
+        assertThat(phantom.sources()).hasSize(3);
+        assertThat(phantom.sources().get(1).activityKBq()).isEqualTo(2);
+        assertThat(phantom.parts()).isEmpty();
+        assertThat(DescriptionReader.readText(
+                        DescriptionWriter.render("phantom", phantom), "p.yaml", "phantom", PhantomDescription.class))
+                .isEqualTo(phantom);
     }
 
     @Test

@@ -13,8 +13,8 @@ import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.phantom.Phantom;
-import org.raysheaf.geometry.phantom.PhantomDescription;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.list.ListFile;
@@ -79,8 +79,9 @@ final class CheckVerb extends Verb {
         switch (kind) {
             case "system" -> system(file, figures);
             case "phantom" -> {
-                Phantom phantom = new Phantom(DescriptionReader.read(file, kind, PhantomDescription.class));
+                Phantom phantom = Phantoms.read(file);
                 figures.put("parts", phantom.parts().size());
+                figures.put("sources", phantom.description().sources().size());
                 figures.put("activity_kBq", phantom.activityBq().value() / 1000);
             }
             case "acquisition" -> {
@@ -88,6 +89,7 @@ final class CheckVerb extends Verb {
                 figures.put("system", sound(file, acquisition.system()));
                 figures.put("phantom", sound(file, acquisition.phantom()));
                 figures.put("duration_s", acquisition.durationS());
+                figures.put("output", acquisition.output().phrase());
             }
             case "reconstruction" -> {
                 ReconstructionPlan plan = DescriptionReader.read(file, kind, ReconstructionPlan.class);
@@ -196,12 +198,17 @@ final class CheckVerb extends Verb {
                 common().progress());
         ListFile list = opened.withElements(systems.system().elements());
         list.verify();
-        figures.put("kind", "list of coincidences");
+        figures.put("kind", list.kind() == ListKind.PAIRS ? "list of coincidences" : "list of singles");
         figures.put("system", systems.system().description().name());
         figures.put("events", list.events());
         figures.put(
                 "columns",
                 list.attributes().stream().map(Attribute::columnName).sorted().toList());
+        if (!list.truth().isEmpty()) {
+            figures.put(
+                    "truth",
+                    list.truth().stream().map(Attribute::columnName).sorted().toList());
+        }
         figures.put("start", list.header().start());
         figures.put("duration_s", list.header().durationS());
         figures.put("live_time_s", list.header().liveTimeS());

@@ -65,6 +65,7 @@ final class LinesVerb extends Verb {
         }
         ForkJoinPool pool = common().pool();
         ListFile opened = ListFile.open(input);
+        Reconstruction.requirePairs(input, opened);
         Systems systems = Systems.of(
                 opened.header().systemDescription(), input + " (its system)", common(), pool, common().progress());
         ListFile list = opened.withElements(systems.system().elements());

@@ -16,6 +16,7 @@ import picocli.CommandLine.Spec;
         subcommands = {
             CheckVerb.class,
             SimulateVerb.class,
+            PairVerb.class,
             SensitivityVerb.class,
             ReconstructVerb.class,
             LinesVerb.class,
@@ -59,7 +60,7 @@ public final class Raysheaf implements Runnable {
     @Override
     public void run() {
         throw new CommandLine.ParameterException(
-                spec.commandLine(), "which verb? check, simulate, sensitivity, reconstruct, lines or demo");
+                spec.commandLine(), "which verb? check, simulate, pair, sensitivity, reconstruct, lines or demo");
     }
 
     /** The version of the program, for results. */

@@ -13,6 +13,7 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
@@ -44,6 +45,7 @@ record Reconstruction(
             throws IOException {
         Progress progress = common.progress();
         ListFile opened = ListFile.open(listPath);
+        requirePairs(listPath, opened);
         opened.warnings().forEach(common::note);
         ListHeader header = opened.header();
         Systems systems = Systems.of(header.systemDescription(), listPath + " (its system)", common, pool, progress);
@@ -63,6 +65,14 @@ record Reconstruction(
                 estimation.of(EventSelection.ALL),
                 plan.halves() ? estimation.of(EventSelection.ODD) : null,
                 plan.halves() ? estimation.of(EventSelection.EVEN) : null);
+    }
+
+    /** Singles have no lines. */
+    static void requirePairs(Path path, ListFile list) throws IOException {
+        if (list.kind() != ListKind.PAIRS) {
+            throw new IOException(path + ": expected a list of pairs, found "
+                    + list.kind().phrase() + "; make pairs of them with: raysheaf pair " + path + " --out LIST.h5");
+        }
     }
 
     /** From mm³ to counts: 1 Bq/mL is 10⁻³ Bq/mm³, and each becquerel emits so many pairs while the list was taken. */

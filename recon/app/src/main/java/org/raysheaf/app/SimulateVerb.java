@@ -2,18 +2,20 @@ package org.raysheaf.app;
 
 import java.io.IOException;
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.geometry.phantom.Phantom;
-import org.raysheaf.geometry.phantom.PhantomDescription;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.hdf5.Compression;
 import org.raysheaf.io.list.ListWriter;
+import org.raysheaf.io.result.NotKnown;
 import org.raysheaf.transport.Acquisition;
+import org.raysheaf.transport.PairingTally;
 import org.raysheaf.transport.Simulated;
 import org.raysheaf.transport.Simulation;
 import picocli.CommandLine.Command;
@@ -24,7 +26,7 @@ import picocli.CommandLine.Parameters;
 @Command(
         name = "simulate",
         description =
-                "A list of coincidences from a phantom and a detector. For now photons fly straight: no scatter, no randoms, no blur.")
+                "A list of coincidences or of singles from a phantom and a detector: range, scatter, readout, dead time, pairing.")
 final class SimulateVerb extends Verb {
     @Parameters(paramLabel = "ACQUISITION.yaml", description = "What to simulate; paths in it start from its folder.")
     private Path input;
@@ -40,55 +42,53 @@ final class SimulateVerb extends Verb {
     @Override
     void run() throws IOException {
         common().requireFree(out);
-        Acquisition acquisition = seeded(DescriptionReader.read(input, "acquisition", Acquisition.class));
+        Acquisition read = DescriptionReader.read(input, "acquisition", Acquisition.class);
+        Acquisition acquisition = common().seed().map(read::seeded).orElse(read);
         ForkJoinPool pool = common().pool();
         Progress progress = common().progress();
         Systems systems = Systems.read(input.resolveSibling(acquisition.system()), common(), pool, progress);
-        Phantom phantom = new Phantom(DescriptionReader.read(
-                input.resolveSibling(acquisition.phantom()), "phantom", PhantomDescription.class));
+        Phantom phantom = Phantoms.read(input.resolveSibling(acquisition.phantom()));
         Simulation simulation = new Simulation(acquisition, phantom, systems.system(), systems.text());
         Compression compression = small ? Compression.DEFLATE : Compression.NONE;
         Simulated simulated;
-        try (ListWriter writer = ListWriter.create(acquisition.attributes(), out, common().replace(), compression)) {
+        try (ListWriter writer = ListWriter.create(simulation.attributes(), out, common().replace(), compression)) {
             simulated = simulation.run(writer, pool, progress);
             writer.commit(simulated.header());
         }
         report(simulated);
     }
 
-    private Acquisition seeded(Acquisition a) {
-        return new Acquisition(
-                a.system(),
-                a.phantom(),
-                a.nuclide(),
-                a.durationS(),
-                a.liveTimeS(),
-                a.start(),
-                common().seed().orElse(a.seed()),
-                a.maxEvents(),
-                a.timeDifferences(),
-                a.energies());
-    }
-
     private void report(Simulated simulated) {
-        double share = simulated.events() / (double) Math.max(1, simulated.pairs());
+        PairingTally pairing = simulated.pairing();
         Map<String, Object> results = new LinkedHashMap<>();
         results.put("list", out.toString());
-        results.put("pairs_emitted", simulated.pairs());
+        results.put("decays", simulated.decays());
+        results.put("positrons", simulated.positrons());
         results.put("events", simulated.events());
         results.put("duration_s", simulated.header().durationS());
-        common().print(
-                        results,
-                        List.of(
-                                String.format(
-                                        Locale.ROOT,
-                                        "%,d pairs emitted in %.3f s, %,d recorded (%.3f ± %.3f %%)",
-                                        simulated.pairs(),
-                                        simulated.header().durationS(),
-                                        simulated.events(),
-                                        100 * share,
-                                        100 * Math.sqrt(share * (1 - share) / Math.max(1, simulated.pairs()))),
-                                "written " + out,
-                                Common.CAUTION));
+        results.put("live_time_s", simulated.header().liveTimeS());
+        results.put("pairing", pairing == null ? new NotKnown("the list holds singles") : pairing);
+        List<String> lines = new ArrayList<>();
+        lines.add(String.format(
+                Locale.ROOT,
+                "%,d decays with %,d positrons in %.3f s, %.2f %% of it live",
+                simulated.decays(),
+                simulated.positrons(),
+                simulated.header().durationS(),
+                100 * simulated.liveFraction()));
+        if (pairing != null) {
+            lines.addAll(PairVerb.lines(pairing));
+        }
+        lines.add(String.format(
+                Locale.ROOT, "events     %,12d in the list, %s per decay", simulated.events(), share(simulated)));
+        lines.add("written " + out);
+        lines.add(Common.CAUTION);
+        common().print(results, lines);
+    }
+
+    private static String share(Simulated simulated) {
+        double decays = Math.max(1, simulated.decays());
+        double share = simulated.events() / decays;
+        return String.format(Locale.ROOT, "%.3f ± %.3f %%", 100 * share, 100 * Math.sqrt(share / decays));
     }
 }

@@ -19,7 +19,7 @@ import org.raysheaf.io.description.DescriptionReader;
 /** A detector system with what is made once per system and kept: its response and its sensitivity. */
 final class Systems {
     /** To be raised whenever the numbers that come out change: then nothing that was kept before is taken. */
-    private static final String REVISION = "1";
+    private static final String REVISION = "2";
 
     private final DetectorSystem system;
     private final String text;

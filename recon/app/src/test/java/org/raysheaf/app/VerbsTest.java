@@ -20,6 +20,7 @@ import org.junit.jupiter.api.io.TempDir;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.volume.VolumeFile;
 import picocli.CommandLine;
 
@@ -81,16 +82,17 @@ class VerbsTest {
                 raysheaf: phantom/1
                 name: ball
                 parts:
-                  - {name: ball, shape: {kind: sphere, radius_mm: 4}, centre_mm: [2, 1, -3], concentration_kBq_per_mL: 100}
+                  - {name: ball, shape: {kind: sphere, radius_mm: 4}, centre_mm: [2, 1, -3], material: vacuum, concentration_kBq_per_mL: 100}
                 """);
         acquisition = Files.writeString(folder.resolve("run.yaml"), """
                 raysheaf: acquisition/1
                 system: pair.yaml
                 phantom: ball.yaml
-                nuclide: {name: F-18, half_life_s: 6586.2, positron_branching: 0.9673}
+                nuclide: F-18
                 start: 2026-12-01T09:00:00Z
                 duration_s: 600
                 max_events: 30000
+                physics: {positron_range: false, acollinearity_fwhm_deg: 0, surroundings: vacuum}
                 """);
     }
 
@@ -102,6 +104,47 @@ class VerbsTest {
                     .isZero();
         }
         return list;
+    }
+
+    @Test
+    void singlesBecomePairsAsInTheSimulation() throws IOException {
+        Path pairs = folder.resolve("direct.h5");
+        Path singles = folder.resolve("singles.h5");
+        Path paired = folder.resolve("paired.h5");
+        Path direct = Files.writeString(
+                folder.resolve("direct.yaml"),
+                Files.readString(acquisition)
+                        .replace("max_events: 30000", "truth: true\npairing: {window_ns: 3, delay_ns: 50}")
+                        .replace("duration_s: 600", "duration_s: 3"));
+        Path all = Files.writeString(folder.resolve("all.yaml"), Files.readString(direct) + "output: singles\n");
+        assertThat(work("simulate", direct.toString(), "--out", pairs.toString())
+                        .exit())
+                .isZero();
+        assertThat(work("simulate", all.toString(), "--out", singles.toString()).exit())
+                .isZero();
+
+        Outcome refused = work(
+                "reconstruct", singles.toString(), "--out", folder.resolve("no").toString());
+        Outcome outcome =
+                work("pair", singles.toString(), "--out", paired.toString(), "--window-ns", "3", "--delay-ns", "50");
+
+        assertThat(refused.exit()).isEqualTo(1);
+        assertThat(refused.err()).contains("expected a list of pairs, found a list of singles", "raysheaf pair ");
+        assertThat(outcome.err()).isEmpty();
+        assertThat(outcome.out()).contains("alone in their window", "delayed", Common.CAUTION);
+        assertThat(ListFile.open(paired).digest())
+                .isEqualTo(ListFile.open(pairs).digest());
+        assertThat(ListFile.open(paired).truth())
+                .isEqualTo(ListFile.open(pairs).truth())
+                .isNotEmpty();
+        assertThat(work(
+                                "pair",
+                                pairs.toString(),
+                                "--out",
+                                folder.resolve("again.h5").toString())
+                        .err())
+                .contains("expected a list of singles, found a list of pairs");
+        assertThat(work("check", singles.toString()).out()).contains("list of singles", "truth");
     }
 
     @Test

@@ -1,12 +1,9 @@
 package org.raysheaf.transport;
 
 import java.time.Instant;
-import java.util.EnumSet;
-import java.util.Set;
 import org.jspecify.annotations.Nullable;
-import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.ListHeader;
-import org.raysheaf.geometry.matter.Nuclide;
+import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.matter.DecayScheme;
 import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;
 
@@ -15,82 +12,67 @@ import org.raysheaf.geometry.settings.Problems;
  *
  * @param system path of the system description
  * @param phantom path of the phantom description
- * @param nuclide what decays; without one, activity does not decay and every decay gives a pair
+ * @param nuclide what decays, a nuclide of the library; without one, activity does not decay and every decay sends out one pair of
+ *     annihilation photons from its place
  * @param durationS length of the acquisition by the clock (s), greater than 0
- * @param liveTimeS time in which events can be recorded, spread evenly over the acquisition (s); without it, all of the
- *     duration
  * @param start when the acquisition begins; activities in the phantom hold at that time
  * @param seed start of all random numbers; the same seed gives the same list
- * @param maxEvents the acquisition stops early when it has recorded this many events, at least 1; without it, it never
- *     does
- * @param timeDifferences whether to record the time differences of pairs (without any resolution blur)
- * @param energies whether to record energies (without any resolution blur: {@value Photon#ANNIHILATION_KEV} keV for
- *     every photon)
+ * @param maxEvents the acquisition stops early when it has recorded this many events, at least 1; without it, it never does
+ * @param output whether the list holds pairs or singles
+ * @param energies whether to record energies
+ * @param timeDifferences whether to record the time differences of pairs
+ * @param truth whether to record what only a simulation knows, in a group of its own
+ * @param physics which physics is taken into account
+ * @param pairing how singles become pairs
  */
 public record Acquisition(
         String system,
         String phantom,
-        @Nullable Nuclide nuclide,
+        @Nullable String nuclide,
         double durationS,
-        @Nullable Double liveTimeS,
         Instant start,
         @Default("1") long seed,
         @Nullable Long maxEvents,
+        @Default("pairs") ListKind output,
+        @Default("true") boolean energies,
         @Default("true") boolean timeDifferences,
-        @Default("false") boolean energies) {
+        @Default("false") boolean truth,
+        @Default("{}") Physics physics,
+        @Default("{}") Pairing pairing) {
     public Acquisition {
         Problems problems = new Problems("acquisition").above("duration_s", durationS, 0);
-        if (liveTimeS != null) {
-            problems.above("live_time_s", liveTimeS, 0)
-                    .rule(
-                            !(liveTimeS > durationS),
-                            "live_time_s",
-                            "expected at most duration_s = " + durationS + ", found " + liveTimeS);
-        }
         if (maxEvents != null) {
             problems.atLeast("max_events", maxEvents, 1);
+        }
+        if (nuclide != null) {
+            problems.rule(
+                    DecayScheme.find(nuclide).isPresent(),
+                    "nuclide",
+                    "expected one of " + String.join(", ", DecayScheme.names()) + ", found " + nuclide);
         }
         problems.orThrow();
     }
 
     /**
-     * The columns that the list will have.
+     * The same with another seed.
      *
-     * @return the attributes of every event
+     * @param other start of all random numbers
+     * @return a changed copy
      */
-    public Set<Attribute> attributes() {
-        Set<Attribute> attributes = EnumSet.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B, Attribute.TIME);
-        if (timeDifferences) {
-            attributes.add(Attribute.TIME_DIFFERENCE);
-        }
-        if (energies) {
-            attributes.add(Attribute.ENERGY_A);
-            attributes.add(Attribute.ENERGY_B);
-        }
-        return attributes;
-    }
-
-    /**
-     * The share of the time in which events can be recorded.
-     *
-     * @return live time / duration, greater than 0, at most 1
-     */
-    public double liveFraction() {
-        return liveTimeS == null ? 1 : liveTimeS / durationS;
-    }
-
-    /**
-     * What the list says about itself if the acquisition runs to its end.
-     *
-     * @param systemText text of the system description
-     * @return the header
-     */
-    public ListHeader header(String systemText) {
-        return header(systemText, durationS);
-    }
-
-    /** The header of an acquisition that was stopped early. */
-    ListHeader header(String systemText, double stoppedAfterS) {
-        return new ListHeader(systemText, stoppedAfterS, stoppedAfterS * liveFraction(), start, nuclide);
+    public Acquisition seeded(long other) {
+        return new Acquisition(
+                system,
+                phantom,
+                nuclide,
+                durationS,
+                start,
+                other,
+                maxEvents,
+                output,
+                energies,
+                timeDifferences,
+                truth,
+                physics,
+                pairing);
     }
 }

@@ -9,9 +9,9 @@ import org.raysheaf.geometry.matter.Nuclide;
 /**
  * When decays happen: a Poisson process whose rate falls exponentially, cut into slices of equal expected number.
  *
- * <p>Times are held as <em>shares</em>: the share of all expected decays that come earlier, F(t) = (1 − e^(−λt))/(1 −
- * e^(−λT)), in which the process is uniform from 0 to 1. Slice k of n is the range k/n to (k + 1)/n. How many slices
- * there are follows from the expected number alone, so they are the same on every machine. Immutable.
+ * <p>Times are held as <em>shares</em>: the share of all expected decays that come earlier, F(t) = (1 − e^(−λt))/(1 − e^(−λT)), in which the
+ * process is uniform from 0 to 1. Slice k of n is the range k/n to (k + 1)/n. How many slices there are follows from the expected number
+ * alone, so they are the same on every machine. Immutable.
  */
 final class DecayTimes {
     /** Few enough that a slice is small in memory, many enough that starting one costs nothing: about 0.1 s of work. */
@@ -19,25 +19,26 @@ final class DecayTimes {
 
     private static final double PS_PER_S = 1e12;
 
+    private final double expected;
     private final double durationS;
     private final double lambda;
     private final double decayed;
     private final long slices;
-    private final double meanPerSlice;
 
     /**
      * Plans the slices.
      *
-     * @param expected expected number of decays, greater than 0
+     * @param expected expected number of decays, at least 0
+     * @param background expected number of other, steady decays, at least 0
      * @param durationS length of the acquisition T (s)
      * @param nuclide gives λ; null for a constant rate
      */
-    DecayTimes(double expected, double durationS, @Nullable Nuclide nuclide) {
+    DecayTimes(double expected, double background, double durationS, @Nullable Nuclide nuclide) {
+        this.expected = expected;
         this.durationS = durationS;
-        this.lambda = nuclide == null ? 0 : Math.log(2) / nuclide.halfLifeS();
+        this.lambda = nuclide == null || expected == 0 ? 0 : Math.log(2) / nuclide.halfLifeS();
         this.decayed = -Math.expm1(-lambda * durationS);
-        this.slices = (long) Math.ceil(expected / DECAYS_PER_SLICE);
-        this.meanPerSlice = expected / slices;
+        this.slices = (long) Math.max(1, Math.ceil((expected + background) / DECAYS_PER_SLICE));
     }
 
     long slices() {
@@ -47,27 +48,55 @@ final class DecayTimes {
     /**
      * Draws the decays of a slice, in order.
      *
-     * <p>Given their number N, the decays of a Poisson process are N sorted uniform numbers; and the first N of N + 1
-     * sums of exponential numbers, divided by the last sum, are just that, without any sorting.
-     *
+     * @param perDecay draw so many times the expected number
      * @param slice the slice, from 0
      * @param random its stream
-     * @return the shares of its decays, rising
+     * @return the times of its decays since the start (ps), rising
      */
-    double[] draw(long slice, UniformRandomProvider random) {
-        int count = PoissonSampler.of(random, meanPerSlice).sample();
+    long[] draw(double perDecay, long slice, UniformRandomProvider random) {
+        double[] places = uniform(perDecay * expected / slices, random);
+        long[] times = new long[places.length];
+        for (int i = 0; i < times.length; i++) {
+            times[i] = timePs((slice + places[i]) / slices);
+        }
+        return times;
+    }
+
+    /** The same for a steady process, which does not follow the decay. */
+    long[] drawSteady(double ratePerS, long slice, UniformRandomProvider random) {
+        long from = startPs(slice);
+        long to = startPs(slice + 1);
+        double[] places = uniform(ratePerS * (to - from) / PS_PER_S, random);
+        long[] times = new long[places.length];
+        for (int i = 0; i < times.length; i++) {
+            times[i] = from + (long) (places[i] * (to - from));
+        }
+        return times;
+    }
+
+    /**
+     * A Poisson number of rising uniform numbers. Given their number N they are N sorted uniform numbers; and the first N of N + 1 sums of
+     * exponential numbers, divided by the last sum, are just that, without any sorting.
+     */
+    private static double[] uniform(double mean, UniformRandomProvider random) {
+        int count = mean > 0 ? PoissonSampler.of(random, mean).sample() : 0;
         ZigguratSampler.Exponential exponential = ZigguratSampler.Exponential.of(random);
-        double[] shares = new double[count];
+        double[] places = new double[count];
         double sum = 0;
         for (int i = 0; i < count; i++) {
             sum += exponential.sample();
-            shares[i] = sum;
+            places[i] = sum;
         }
         sum += exponential.sample();
         for (int i = 0; i < count; i++) {
-            shares[i] = (slice + shares[i] / sum) / slices;
+            places[i] /= sum;
         }
-        return shares;
+        return places;
+    }
+
+    /** When a slice begins (ps). */
+    long startPs(long slice) {
+        return timePs((double) slice / slices);
     }
 
     /**

@@ -1,31 +1,37 @@
 package org.raysheaf.transport;
 
 import java.io.IOException;
-import java.util.ArrayDeque;
-import java.util.Deque;
+import java.util.EnumSet;
+import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
-import java.util.concurrent.ForkJoinTask;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.matter.DecayScheme;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
- * A simulated acquisition: decays in a phantom, photons into a detector system, pairs into a list.
+ * A simulated acquisition: decays in a phantom, photons into a detector system, signals into a list.
  *
- * <p>The acquisition is cut into slices of about 65,000 expected decays, each with a random stream of its own. Slices
- * are simulated side by side, a few ahead of the one being written, and written in order of time; so memory stays flat,
- * and the list is the same on any number of threads. Immutable, safe for use by several threads.
+ * <p>The acquisition is cut into slices of about 65,000 expected decays, each with a random stream of its own. Slices are simulated side by
+ * side, a few ahead of the one whose pulses go through the readout; that runs through time in one go, without random numbers. So memory
+ * stays flat, and the list is the same on any number of threads. Immutable, safe for use by several threads.
  */
 public final class Simulation {
     private static final double PS_PER_S = 1e12;
 
     private final Acquisition acquisition;
+    private final DetectorSystem system;
     private final String systemText;
-    private final double expectedCandidates;
+    private final @Nullable DecayScheme scheme;
+    private final double expectedDecays;
+    private final ReadoutPlan readout;
     private final Slice.Setting setting;
 
     /**
@@ -35,73 +41,199 @@ public final class Simulation {
      * @param phantom where activity is
      * @param system what detects
      * @param systemText text of the system description, for the header of the list
-     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if the phantom holds no activity
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if nothing would decay
      */
     public Simulation(Acquisition acquisition, Phantom phantom, DetectorSystem system, String systemText) {
-        ActiveParts source = new ActiveParts(phantom);
+        this.acquisition = acquisition;
+        this.system = system;
+        this.systemText = systemText;
+        String name = acquisition.nuclide();
+        scheme = name == null ? null : DecayScheme.find(name).orElseThrow();
+        Activity activity = new Activity(phantom);
+        Lutetium lutetium = new Lutetium(system.blocks());
         new Problems("acquisition")
                 .rule(
-                        source.candidateBq() > 0,
+                        activity.candidateBq() > 0 || lutetium.activityBq() > 0,
                         "phantom",
-                        "expected a part with concentration_kBq_per_mL > 0, found none in "
+                        "expected a part or source with activity, found none in "
                                 + phantom.description().name() + "; nothing would decay")
                 .orThrow();
-        this.acquisition = acquisition;
-        this.systemText = systemText;
-        ListHeader header = acquisition.header(systemText);
-        this.expectedCandidates = source.candidateBq() * header.pairsPerBecquerel();
-        DecayTimes times = new DecayTimes(expectedCandidates, acquisition.durationS(), acquisition.nuclide());
-        this.setting = new Slice.Setting(times, source, system, acquisition.attributes(), acquisition.seed());
+        double seconds =
+                scheme == null ? acquisition.durationS() : scheme.nuclide().effectiveTimeS(acquisition.durationS());
+        expectedDecays = activity.candidateBq() * seconds;
+        readout = new ReadoutPlan(system);
+        DecayTimes times = new DecayTimes(
+                expectedDecays,
+                lutetium.activityBq() * acquisition.durationS(),
+                acquisition.durationS(),
+                scheme == null ? null : scheme.nuclide());
+        setting = new Slice.Setting(
+                times,
+                activity,
+                new Emission.Plan(scheme, acquisition.physics()),
+                lutetium,
+                new World(system, phantom, acquisition.physics()),
+                readout,
+                acquisition.seed());
     }
 
     /**
-     * Runs the acquisition. The calling thread writes, the pool simulates. Every run gives the same events.
+     * The columns of the list.
      *
-     * @param sink receives the events in order of time; it must take the columns of {@link Acquisition#attributes()}
-     * @param pool does the work
+     * @return the attributes of every event, those of the truth too if they were asked for
+     */
+    public Set<Attribute> attributes() {
+        if (acquisition.output() == ListKind.SINGLES) {
+            return singleAttributes();
+        }
+        Set<Attribute> pairs = Pairer.attributes(acquisition.pairing(), singleAttributes());
+        if (!acquisition.energies()) {
+            pairs.remove(Attribute.ENERGY_A);
+            pairs.remove(Attribute.ENERGY_B);
+        }
+        if (!acquisition.timeDifferences()) {
+            pairs.remove(Attribute.TIME_DIFFERENCE);
+        }
+        return pairs;
+    }
+
+    private Set<Attribute> singleAttributes() {
+        Set<Attribute> singles = EnumSet.of(Attribute.ELEMENT, Attribute.TIME);
+        if (acquisition.energies() || acquisition.output() == ListKind.PAIRS) {
+            singles.add(Attribute.ENERGY); // pairing needs it even where the list does not show it
+        }
+        if (readout.measuresDepth()) {
+            singles.add(Attribute.DEPTH);
+        }
+        if (readout.measuresPoints()) {
+            singles.addAll(EnumSet.range(Attribute.POSITION_X, Attribute.POSITION_Z));
+            singles.addAll(EnumSet.range(Attribute.POSITION_U_SD, Attribute.POSITION_W_SD));
+        }
+        if (acquisition.truth()) {
+            singles.addAll(ListKind.SINGLES.truth());
+        }
+        return singles;
+    }
+
+    /**
+     * Runs the acquisition. Every run gives the same events.
+     *
+     * @param sink receives the events in order of time; it must take the columns of {@link #attributes()}
+     * @param pool does all of the work
      * @param progress hears of it, in decays
      * @return what came of it
      * @throws IOException if the sink fails
      */
     public Simulated run(EventSink sink, ForkJoinPool pool, Progress progress) throws IOException {
-        progress.begin("simulating decays", Math.round(expectedCandidates), "decays");
-        long limit = acquisition.maxEvents() == null ? Long.MAX_VALUE : acquisition.maxEvents();
         long slices = setting.times().slices();
-        int ahead = 2 * pool.getParallelism() + 1;
-        Deque<ForkJoinTask<Slice>> waiting = new ArrayDeque<>();
-        long started = 0;
-        long pairs = 0;
-        long events = 0;
-        double stoppedAfterS = acquisition.durationS();
-        try {
-            for (long number = 0; number < slices && events < limit; number++) {
-                while (started < slices && waiting.size() < ahead) {
-                    waiting.add(submit(pool, started++));
-                }
-                Slice slice = waiting.remove().join();
-                if (events + slice.events().size() >= limit) {
-                    slice = Slice.simulate(setting, number, limit - events); // the same again, up to the last event
-                    stoppedAfterS = timeOfLast(slice) / PS_PER_S;
-                }
-                if (slice.events().size() > 0) {
-                    sink.accept(slice.events());
-                }
-                events += slice.events().size();
-                pairs += slice.pairs();
-                progress.advance(Math.round(expectedCandidates / slices));
+        progress.begin("simulating decays", Math.round(expectedDecays), "decays");
+        Chain chain = new Chain(sink);
+        new InOrder<>(
+                        slices,
+                        2 * pool.getParallelism() + 1,
+                        number -> Slice.simulate(setting, number),
+                        (number, slice) -> {
+                            progress.advance(Math.round(expectedDecays / slices));
+                            return chain.take(number, slice);
+                        })
+                .run(pool);
+        chain.finish();
+        double duration = chain.last.full() ? chain.last.lastPs() / PS_PER_S : acquisition.durationS();
+        double live = chain.channels.liveShare(Math.round(duration * PS_PER_S));
+        double fraction = acquisition.output() == ListKind.PAIRS ? live * live : live;
+        progress.end(chain.decays + " decays, " + chain.last.count() + " events");
+        ListHeader header = new ListHeader(
+                systemText,
+                duration,
+                duration * fraction,
+                acquisition.start(),
+                scheme == null ? null : scheme.nuclide());
+        return new Simulated(
+                header,
+                chain.decays,
+                chain.positrons,
+                chain.last.count(),
+                fraction,
+                chain.pairer == null ? null : chain.pairer.tally());
+    }
+
+    /** From pulses to the sink: channels, order in time, pairing if pairs are wanted, the limit. */
+    private final class Chain {
+        final Limit last;
+        final @Nullable Pairer pairer;
+        final TimeOrder order;
+        final Channels channels;
+        private long decays;
+        private long positrons;
+
+        Chain(EventSink sink) {
+            last = new Limit(sink, acquisition.maxEvents() == null ? Long.MAX_VALUE : acquisition.maxEvents());
+            Set<Attribute> singles = singleAttributes();
+            EventSink next = last;
+            if (acquisition.output() == ListKind.PAIRS) {
+                pairer = new Pairer(system, acquisition.pairing(), singles, last);
+                next = pairer;
+            } else {
+                pairer = null;
             }
-        } finally {
-            waiting.forEach(task -> task.cancel(false));
+            order = new TimeOrder(singles, readout.disorderPs(), next);
+            channels = new Channels(readout, singles, order);
         }
-        progress.end(pairs + " pairs emitted, " + events + " recorded");
-        return new Simulated(acquisition.header(systemText, stoppedAfterS), pairs, events);
+
+        /** Takes the next slice; false if there are events enough. */
+        boolean take(long number, Slice slice) throws IOException {
+            decays += slice.decays();
+            positrons += slice.positrons();
+            channels.take(slice.pulses(), setting.times().startPs(number + 1));
+            return !last.full();
+        }
+
+        void finish() throws IOException {
+            channels.finish();
+            order.finish();
+            if (pairer != null) {
+                pairer.finish();
+            }
+        }
     }
 
-    private ForkJoinTask<Slice> submit(ForkJoinPool pool, long number) {
-        return pool.submit(() -> Slice.simulate(setting, number, Long.MAX_VALUE));
-    }
+    /** Passes on events until there are enough. */
+    private static final class Limit implements EventSink {
+        private final EventSink sink;
+        private final long limit;
+        private long count;
+        private long lastPs;
 
-    private static double timeOfLast(Slice slice) {
-        return slice.events().longs(Attribute.TIME)[slice.events().size() - 1];
+        Limit(EventSink sink, long limit) {
+            this.sink = sink;
+            this.limit = limit;
+        }
+
+        @Override
+        public void accept(EventBlock block) throws IOException {
+            if (full()) {
+                return;
+            }
+            if (count + block.size() > limit) {
+                block.resize((int) (limit - count));
+            }
+            if (block.size() > 0) {
+                count += block.size();
+                lastPs = block.longs(Attribute.TIME)[block.size() - 1];
+                sink.accept(block);
+            }
+        }
+
+        boolean full() {
+            return count >= limit;
+        }
+
+        long count() {
+            return count;
+        }
+
+        long lastPs() {
+            return lastPs;
+        }
     }
 }

@@ -2,27 +2,34 @@ package org.raysheaf.transport;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Map;
+import java.util.Objects;
+import java.util.Set;
+import java.util.TreeMap;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 
 /** Keeps all events, as rows that compare. */
 final class Collected implements EventSink {
-    private record Row(int a, int b, long timePs, float differencePs, float energyA, float energyB) {}
-
-    private final List<Row> rows = new ArrayList<>();
+    private final List<Map<Attribute, Number>> rows = new ArrayList<>();
 
     @Override
     public void accept(EventBlock block) {
-        boolean energies = block.has(Attribute.ENERGY_A);
+        Set<Attribute> attributes = block.attributes();
         for (int i = 0; i < block.size(); i++) {
-            rows.add(new Row(
-                    block.ints(Attribute.ELEMENT_A)[i],
-                    block.ints(Attribute.ELEMENT_B)[i],
-                    block.longs(Attribute.TIME)[i],
-                    block.floats(Attribute.TIME_DIFFERENCE)[i],
-                    energies ? block.floats(Attribute.ENERGY_A)[i] : 0,
-                    energies ? block.floats(Attribute.ENERGY_B)[i] : 0));
+            Map<Attribute, Number> row = new TreeMap<>();
+            for (Attribute attribute : attributes) {
+                row.put(
+                        attribute,
+                        switch (attribute.type()) {
+                            case UINT8 -> block.bytes(attribute)[i];
+                            case UINT32 -> block.ints(attribute)[i];
+                            case INT64 -> block.longs(attribute)[i];
+                            case FLOAT32 -> block.floats(attribute)[i];
+                        });
+            }
+            rows.add(row);
         }
     }
 
@@ -36,29 +43,34 @@ final class Collected implements EventSink {
         return rows.size();
     }
 
+    private static Number number(Map<Attribute, Number> row, Attribute attribute) {
+        return Objects.requireNonNull(row.get(attribute));
+    }
+
+    double value(int i, Attribute attribute) {
+        return number(rows.get(i), attribute).doubleValue();
+    }
+
+    double[] column(Attribute attribute) {
+        return rows.stream()
+                .mapToDouble(row -> number(row, attribute).doubleValue())
+                .toArray();
+    }
+
     int elementA(int i) {
-        return rows.get(i).a;
+        return (int) value(i, Attribute.ELEMENT_A);
     }
 
     int elementB(int i) {
-        return rows.get(i).b;
+        return (int) value(i, Attribute.ELEMENT_B);
     }
 
     long timePs(int i) {
-        return rows.get(i).timePs;
+        return number(rows.get(i), Attribute.TIME).longValue();
     }
 
     double timeDifferencePs(int i) {
-        return rows.get(i).differencePs;
-    }
-
-    List<Float> energies() {
-        List<Float> energies = new ArrayList<>();
-        rows.forEach(row -> {
-            energies.add(row.energyA);
-            energies.add(row.energyB);
-        });
-        return energies;
+        return value(i, Attribute.TIME_DIFFERENCE);
     }
 
     @Override

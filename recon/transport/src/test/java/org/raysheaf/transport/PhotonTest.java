@@ -16,7 +16,7 @@ class PhotonTest {
         double[] sums = new double[9];
         double stray = 0;
         for (int i = 0; i < DRAWS; i++) {
-            photon.emit(new double[3], random);
+            photon.aimAnywhere(random);
             double[] d = {photon.dx, photon.dy, photon.dz};
             stray = Math.max(stray, Math.abs(d[0] * d[0] + d[1] * d[1] + d[2] * d[2] - 1));
             for (int k = 0; k < 3; k++) {
@@ -35,13 +35,27 @@ class PhotonTest {
     }
 
     @Test
-    void theOtherPhotonLeavesTheSamePointTheOtherWay() {
-        Photon a = new Photon();
-        Photon b = new Photon();
-        a.emit(new double[] {1, 2, 3}, RandomStreams.stream(13, 0));
-        b.emitOpposite(a);
-        assertThat(new double[] {b.x, b.y, b.z}).containsExactly(1, 2, 3);
-        assertThat(new double[] {b.dx, b.dy, b.dz}).containsExactly(-a.dx, -a.dy, -a.dz);
-        assertThat(b.energyKeV).isEqualTo(a.energyKeV);
+    void turningKeepsTheAngleAndForgetsTheSide() {
+        UniformRandomProvider random = RandomStreams.stream(13, 0);
+        Photon photon = new Photon();
+        double cosine = 0.3;
+        double[] sums = new double[2];
+        double stray = 0;
+        for (int i = 0; i < DRAWS; i++) {
+            photon.dx = 0.6;
+            photon.dy = 0;
+            photon.dz = i % 2 == 0 ? -0.8 : 0.8; // both branches of the axes across
+            double ax = photon.dx;
+            double az = photon.dz;
+            photon.turn(cosine, random);
+            stray = Math.max(stray, Math.abs(photon.dx * ax + photon.dz * az - cosine));
+            sums[0] += photon.dy;
+            sums[1] += photon.dy * photon.dy;
+        }
+        double sine2 = 1 - cosine * cosine;
+        assertThat(stray).isLessThan(1e-12);
+        // y is across the first direction: mean 0, mean square sin²/2 with variance sin⁴/8
+        assertThat(sums[0] / DRAWS).isCloseTo(0, within(3.5 * Math.sqrt(sine2 / 2 / DRAWS)));
+        assertThat(sums[1] / DRAWS).isCloseTo(sine2 / 2, within(3.5 * sine2 * Math.sqrt(1.0 / 8 / DRAWS)));
     }
 }

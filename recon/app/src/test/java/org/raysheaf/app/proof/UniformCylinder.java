@@ -19,11 +19,11 @@ import org.raysheaf.geometry.detector.PairRule;
 import org.raysheaf.geometry.detector.Placement;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.matter.Material;
-import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.phantom.PhantomDescription;
 import org.raysheaf.geometry.phantom.PhantomPart;
@@ -32,13 +32,15 @@ import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
 import org.raysheaf.geometry.solid.Cylinder;
 import org.raysheaf.transport.Acquisition;
+import org.raysheaf.transport.Pairing;
+import org.raysheaf.transport.Physics;
 import org.raysheaf.transport.Simulation;
 
 /** A uniform cylinder of F-18 in heron-12: an ideal list of it, and the image that comes back, with no scale factor anywhere. */
 final class UniformCylinder {
     static final double RADIUS_MM = 18;
     static final double LENGTH_MM = 44;
-    static final double TRUTH_BQ_PER_ML = 50_000;
+    static final double TRUTH_BQ_PER_ML = 500;
 
     private final DetectorSystem system;
     private final ForkJoinPool pool;
@@ -73,19 +75,28 @@ final class UniformCylinder {
     }
 
     ListInMemory record(int events) throws IOException {
-        PhantomPart cylinder =
-                PhantomPart.of("cylinder", new Cylinder(RADIUS_MM, LENGTH_MM)).holding(TRUTH_BQ_PER_ML / 1000);
+        PhantomPart cylinder = new PhantomPart(
+                "cylinder",
+                new Cylinder(RADIUS_MM, LENGTH_MM),
+                Vector3.ZERO,
+                Vector3.ZERO,
+                "vacuum",
+                TRUTH_BQ_PER_ML / 1000);
+        // So weak that randoms are one in several thousand: 2 · 1 ns · (30,000 singles per second)².
         Acquisition acquisition = new Acquisition(
                 "",
                 "",
-                new Nuclide("F-18", 109.77 * 60, 0.9673),
+                "F-18",
                 36_000,
-                27_000.0,
                 Instant.EPOCH,
                 20,
                 (long) events,
+                ListKind.PAIRS,
                 false,
-                false);
+                false,
+                false,
+                Physics.STRAIGHT,
+                Pairing.within(1));
         Simulation simulation = new Simulation(
                 acquisition, new Phantom(new PhantomDescription("cylinder", List.of(cylinder))), system, "");
         ListInMemory list = new ListInMemory();
