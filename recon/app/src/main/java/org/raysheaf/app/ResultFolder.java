@@ -26,6 +26,8 @@ import org.raysheaf.quality.HalfDifference;
 /** The folder that a reconstruction leaves behind, and what is said about it on screen. */
 final class ResultFolder {
     private static final String UNIT = "kBq/mL";
+    private static final List<String> NOT_APPLIED =
+            List.of("energy window and scatter between crystals", "attenuation", "scatter", "randoms", "normalization");
     private static final List<String> NAMES = List.of(
             "activity.nii.gz",
             "activity.h5",
@@ -138,6 +140,13 @@ final class ResultFolder {
                         "centre_mm", List.of(0, 0, 0)));
         results.put("events", accounting(done.whole().tally()));
         results.put("activity", Figures.of(done, activity).named(header));
+        results.put(
+                "corrections",
+                Map.of(
+                        "applied",
+                        header.nuclide() == null ? List.of("live time") : List.of("live time", "decay", "branching"),
+                        "not_applied",
+                        NOT_APPLIED));
         results.put("passes", passes(done.whole()));
         results.put("lanes", done.whole().lanes());
         results.put("threads", threads);
@@ -264,6 +273,7 @@ final class ResultFolder {
                     100 * noise.relativeNoise(),
                     100 * noise.relativeNoiseError()));
         }
+        lines.add("           not corrected for " + String.join(", ", NOT_APPLIED));
         lines.add("written    " + folder);
         for (String name : NAMES) {
             if (Files.exists(folder.resolve(name))) {

@@ -80,7 +80,7 @@ final class SimulateVerb extends Verb {
             lines.addAll(PairVerb.lines(pairing));
         }
         lines.add(String.format(
-                Locale.ROOT, "events     %,12d in the list, %s per decay", simulated.events(), share(simulated)));
+                Locale.ROOT, "events     %,12d in the list; %s per decay", simulated.events(), share(simulated)));
         lines.add("written " + out);
         lines.add(Common.CAUTION);
         common().print(results, lines);
@@ -88,7 +88,10 @@ final class SimulateVerb extends Verb {
 
     private static String share(Simulated simulated) {
         double decays = Math.max(1, simulated.decays());
-        double share = simulated.events() / decays;
+        // with max_events the last slice goes on a little beyond the list, in decays and pairs alike
+        PairingTally pairing = simulated.pairing();
+        double events = pairing == null ? simulated.events() : pairing.prompts() + pairing.delayed();
+        double share = events / decays;
         return String.format(Locale.ROOT, "%.3f ± %.3f %%", 100 * share, 100 * Math.sqrt(share / decays));
     }
 }

@@ -38,7 +38,6 @@ final class Pairer implements EventSink {
     private final long horizonPs;
     private final double lowestKeV;
     private final double highestKeV;
-    private final Set<Attribute> singleAttributes;
     private final List<List<Attribute>> carried;
     private final boolean truth;
     private EventBlock singles;
@@ -68,7 +67,6 @@ final class Pairer implements EventSink {
         this.system = system;
         this.pairing = pairing;
         this.sink = sink;
-        this.singleAttributes = EnumSet.copyOf(singleAttributes);
         windowPs = Math.round(PS_PER_NS * pairing.windowNs());
         Double delayNs = pairing.delayNs();
         delayPs = delayNs == null ? -1 : Math.round(PS_PER_NS * delayNs);
@@ -312,9 +310,7 @@ final class Pairer implements EventSink {
 
     /** Forgets the singles that have opened all their windows. */
     private void drop(int count) {
-        EventBlock rest = new EventBlock(singleAttributes, Math.max(ROOM, singles.size() - count));
-        rest.append(singles, count, singles.size() - count);
-        singles = rest;
+        singles.removeFirst(count);
         nextOpener = Math.max(0, nextOpener - count);
     }
 

@@ -17,6 +17,7 @@ final class TimeOrder implements EventSink {
     private final EventSink next;
     private final long tolerancePs;
     private EventBlock waiting;
+    private EventBlock spare;
     private final EventBlock ready;
     private int[] order = new int[ROOM];
     private long newestPs = Long.MIN_VALUE;
@@ -27,6 +28,7 @@ final class TimeOrder implements EventSink {
         this.next = next;
         this.tolerancePs = tolerancePs;
         waiting = new EventBlock(attributes, ROOM);
+        spare = new EventBlock(attributes, ROOM);
         ready = new EventBlock(attributes, ROOM);
     }
 
@@ -73,9 +75,12 @@ final class TimeOrder implements EventSink {
             next.accept(ready);
             done = end;
         }
-        EventBlock rest = new EventBlock(waiting.attributes(), Math.max(ROOM, size - done));
-        rest.append(waiting, order, done, size - done);
-        waiting = rest;
+        spare.resize(0);
+        spare = spare.withRoomFor(size - done);
+        spare.append(waiting, order, done, size - done);
+        EventBlock emptied = waiting;
+        waiting = spare;
+        spare = emptied;
     }
 
     /** Insertion: events nearly are in order already. */

@@ -1,19 +1,26 @@
 /**
  * Photons through phantom and detectors, the readout of what they leave, and the pairing of singles. Read {@link
- * org.raysheaf.transport.Acquisition} for what a description can ask and {@link org.raysheaf.transport.Simulation} for
- * how it is done.
- *
- * <p>So far emission is ideal: pairs are emitted exactly back to back from where the decay was, nothing scatters, and
- * only crystals stop photons. The way of a decay is
+ * org.raysheaf.transport.Acquisition} for what a description can ask and {@link org.raysheaf.transport.Simulation} for how it is done.
  *
  * <pre>
- * DecayTimes ── when ──┐
- *                      ├─ Photon, Photon ── CrystalWalk ── PairReadout ── EventSink
- * ActiveParts ─ where ─┘                    (each photon)
+ * in slices of time, side by side, each with a random stream of its own:
+ *
+ *   DecayTimes ── when ──┐
+ *   Activity ──── where ─┼─ Emission ── Photon ── Flight ── Deposits ── PulseMaker ── Pulses
+ *   Lutetium ────────────┘  (range, angle,        (through World:       (per channel, with all
+ *                            gamma rays)           PhotonTable,          random numbers of the
+ *                                                  ComptonScatter)       readout drawn)
+ *
+ * then in order of time, slice after slice (InOrder), without random numbers:
+ *
+ *   Pulses ── Channels ── TimeOrder ── Pairer ── EventSink
+ *             (pile-up,   (sorts what   (windows,
+ *              dead time,  blur put out  delayed
+ *              singles)    of order)     pairs)
  * </pre>
  *
- * <p>This room knows geometry only and never opens files. Random streams belong to slices of the acquisition, never to
- * threads, so a seed gives the same events on any number of threads.
+ * <p>SinglesPairing runs the last two steps on a list of singles. This room knows geometry only and never opens files. Random streams
+ * belong to slices of the acquisition, never to threads, so a seed gives the same events on any number of threads.
  */
 @NullMarked
 package org.raysheaf.transport;
