@@ -5,13 +5,24 @@ import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
 import java.util.EnumSet;
+import java.util.List;
 import java.util.Set;
+import java.util.concurrent.ForkJoinPool;
 import org.junit.jupiter.api.Test;
+import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.FieldOfView;
+import org.raysheaf.geometry.detector.MonolithicBlock;
+import org.raysheaf.geometry.detector.PairRule;
+import org.raysheaf.geometry.detector.Placement;
+import org.raysheaf.geometry.detector.Readout;
+import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.detector.Systems;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventTally;
+import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.sheaf.SheafBundle;
 
 class CoincidenceSheavesTest {
@@ -47,6 +58,44 @@ class CoincidenceSheavesTest {
         // Block 0 looks along x: crystal 60 is its middle one, and the face is at x = 42.
         assertThat(out.rays()[0]).isCloseTo(42, within(1e-5f));
         assertThat(out.rays()[3]).isCloseTo(-42, within(1e-5f));
+    }
+
+    @Test
+    void raysEndAtMeasuredPointsInBlocksOfOnePieceOnly() {
+        MonolithicBlock slab = new MonolithicBlock(
+                "slab", new Vector3(30, 30, 12), new Vector3(10, 10, 6), "lyso", new Vector3(1, 1, 1), Readout.IDEAL);
+        CrystalBlock tile = new CrystalBlock("tile", 3, 3, 1, new Vector3(10, 10, 12), new Vector3(9, 9, 12), "lyso");
+        DetectorSystem system = new DetectorSystem(new SystemDescription(
+                "mixed",
+                new FieldOfView(20, 20),
+                new PairRule(1),
+                List.of(),
+                List.of(slab, tile),
+                List.of(
+                        new Placement.Single("slab", new Vector3(30, 0, 0), new Vector3(-1, 0, 0), Vector3.Z),
+                        new Placement.Single("tile", new Vector3(-30, 0, 0), Vector3.X, Vector3.Z))));
+        CoincidenceSheaves sheaves =
+                new CoincidenceSheaves(ElementResponse.tabulate(system, ForkJoinPool.commonPool(), Progress.SILENT));
+        Set<Attribute> columns = EnumSet.of(
+                Attribute.ELEMENT_A,
+                Attribute.ELEMENT_B,
+                Attribute.POSITION_A_X,
+                Attribute.POSITION_A_Y,
+                Attribute.POSITION_A_Z,
+                Attribute.POSITION_B_X,
+                Attribute.POSITION_B_Y,
+                Attribute.POSITION_B_Z);
+        EventBlock block = events(columns, 4, 18 + 4); // the middle cell in front, the middle crystal
+        block.floats(Attribute.POSITION_A_X)[0] = 34;
+        block.floats(Attribute.POSITION_A_Y)[0] = 1;
+        block.floats(Attribute.POSITION_A_Z)[0] = -2;
+        SheafBundle out = new SheafBundle(1, 1);
+        sheaves.make(block, out, new EventTally());
+        assertThat(out.rays()[0]).isEqualTo(34);
+        assertThat(out.rays()[1]).isEqualTo(1);
+        assertThat(out.rays()[2]).isEqualTo(-2);
+        // the crystal's end is its mean interaction point, whatever the columns say
+        assertThat(out.rays()[3]).isBetween(-42f, -30f);
     }
 
     @Test
