@@ -13,13 +13,15 @@ import org.raysheaf.geometry.settings.Problems;
  * @param liveTimeS time in which events could be recorded (s), greater than 0, at most the duration
  * @param start when the acquisition began; the reference time of all activities
  * @param nuclide what decayed, or null if it is not known (then nothing is corrected for decay or branching)
+ * @param pairing how its pairs were made of singles, or null if that is not known or the list holds singles
  */
 public record ListHeader(
         String systemDescription,
         double durationS,
         double liveTimeS,
         Instant start,
-        @Nullable Nuclide nuclide) {
+        @Nullable Nuclide nuclide,
+        @Nullable PairingRecord pairing) {
     public ListHeader {
         new Problems("list")
                 .above("duration_s", durationS, 0)
@@ -29,6 +31,20 @@ public record ListHeader(
                         "live_time_s",
                         "expected at most duration_s = " + durationS + ", found " + liveTimeS)
                 .orThrow();
+    }
+
+    /**
+     * A header that does not say how pairs were made.
+     *
+     * @param systemDescription the text of the system description
+     * @param durationS length of the acquisition by the clock (s)
+     * @param liveTimeS time in which events could be recorded (s)
+     * @param start when the acquisition began
+     * @param nuclide what decayed, or null
+     */
+    public ListHeader(
+            String systemDescription, double durationS, double liveTimeS, Instant start, @Nullable Nuclide nuclide) {
+        this(systemDescription, durationS, liveTimeS, start, nuclide, null);
     }
 
     /**

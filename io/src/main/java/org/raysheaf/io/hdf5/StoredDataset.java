@@ -191,6 +191,21 @@ public final class StoredDataset {
     }
 
     /**
+     * Reads all values as 64-bit integers. Verifies attribute {@code crc32c} if there is one.
+     *
+     * @return the values
+     * @throws Hdf5Exception if they are no whole numbers, more than an array can hold, or damaged
+     * @throws IOException if the file cannot be read
+     */
+    public long[] longs() throws IOException {
+        ValueReader reader = values(null);
+        long[] values = new long[arrayLength()];
+        requireChecksum();
+        reader.read(values, 0, values.length);
+        return values;
+    }
+
+    /**
      * Reads the dataset as one text. Verifies attribute {@code crc32c} if there is one.
      *
      * @return the text

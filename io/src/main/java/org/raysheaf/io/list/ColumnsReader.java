@@ -23,7 +23,8 @@ import org.raysheaf.io.list.ListFileException.Kind;
 /** Finds the columns of a list and checks everything that can be checked without reading them: presence, types, units, lengths. */
 final class ColumnsReader {
     /** Members that are no columns. */
-    private static final Set<String> OTHERS = Set.of(ListFormat.SYSTEM, ListFormat.CHECKSUMS, ListFormat.TRUTH);
+    private static final Set<String> OTHERS =
+            Set.of(ListFormat.SYSTEM, ListFormat.SINGLES, ListFormat.CHECKSUMS, ListFormat.TRUTH);
 
     private final Path path;
     private final StoredGroup root;

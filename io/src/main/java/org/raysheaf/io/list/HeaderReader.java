@@ -5,6 +5,7 @@ import java.nio.file.Path;
 import java.time.DateTimeException;
 import java.time.Instant;
 import java.time.OffsetDateTime;
+import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.List;
 import java.util.Optional;
@@ -13,6 +14,9 @@ import java.util.OptionalLong;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.geometry.settings.InvalidSettingsException;
 import org.raysheaf.io.hdf5.StoredAttributes;
@@ -40,7 +44,7 @@ final class HeaderReader {
         Instant start = start();
         String system = system();
         try {
-            return new ListHeader(system, durationS, liveTimeS, start, nuclide());
+            return new ListHeader(system, durationS, liveTimeS, start, nuclide(), pairing());
         } catch (InvalidSettingsException e) {
             throw trouble(Kind.IMPOSSIBLE_VALUE, "", e.getMessage() + "; correct the attributes");
         }
@@ -96,6 +100,53 @@ final class HeaderReader {
             return null;
         }
         return new Nuclide(name.get(), required(ListFormat.HALF_LIFE), required(ListFormat.BRANCHING));
+    }
+
+    private @Nullable PairingRecord pairing() throws IOException {
+        OptionalDouble window = optional(ListFormat.WINDOW);
+        if (window.isEmpty()) {
+            return null;
+        }
+        OptionalDouble highest = optional(ListFormat.HIGHEST);
+        OptionalDouble delay = optional(ListFormat.DELAY);
+        Pairing settings = new Pairing(
+                window.getAsDouble(),
+                optional(ListFormat.LOWEST).orElse(0),
+                highest.isPresent() ? highest.getAsDouble() : null,
+                delay.isPresent() ? delay.getAsDouble() : null,
+                crowds(),
+                optional(ListFormat.DISORDER).orElse(0));
+        PairingTally tally = new PairingTally(
+                count(ListFormat.OUTSIDE_ENERGIES),
+                count(ListFormat.ALONE),
+                count(ListFormat.CROWDED),
+                count(ListFormat.TOO_CLOSE),
+                count(ListFormat.PAIRED),
+                count(ListFormat.PROMPTS),
+                count(ListFormat.DELAYED));
+        List<Long> singles = new ArrayList<>();
+        Optional<StoredDataset> perElement = root.dataset(ListFormat.SINGLES);
+        if (perElement.isPresent()) {
+            for (long value : perElement.get().longs()) {
+                singles.add(value);
+            }
+        }
+        return new PairingRecord(settings, tally, singles);
+    }
+
+    private long count(String name) throws ListFileException {
+        return Math.round(optional(name).orElse(0));
+    }
+
+    private Pairing.Crowds crowds() throws ListFileException {
+        String word = attributes.text(ListFormat.CROWDS).orElse("discard");
+        return Arrays.stream(Pairing.Crowds.values())
+                .filter(rule -> rule.name().equalsIgnoreCase(word))
+                .findFirst()
+                .orElseThrow(() -> trouble(
+                        Kind.IMPOSSIBLE_VALUE,
+                        ListFormat.CROWDS,
+                        "expected discard, every_pair, first_two or strongest_two, found \"" + word + "\""));
     }
 
     private String system() throws IOException {

@@ -30,6 +30,9 @@ final class ListDigest {
         if (nuclide != null) {
             add(digest, "\n" + nuclide.name() + "\n" + nuclide.halfLifeS() + "\n" + nuclide.positronBranching());
         }
+        if (header.pairing() != null) {
+            add(digest, "\n" + header.pairing());
+        }
         add(digest, "\n" + events);
         for (Map.Entry<Attribute, ColumnsReader.Column> column : columns.entrySet()) {
             int[] checksums = column.getValue().checksums;

@@ -17,6 +17,9 @@ import java.util.HexFormat;
  *     nuclide              name of what decayed                                 else no decay and no branching
  *     half_life_s          its half-life (s)                                    required with nuclide
  *     positron_branching   its positrons per decay                              required with nuclide
+ *     window_ns crowds     how pairs were made: window, rule for crowds,        else not known; some corrections need it
+ *     lowest_keV …           energies, delay_ns, disorder_ns, and what
+ *     singles_alone …        became of the singles, by number
  *     events               number of events                                     else the length of the columns
  *     writer               program and version that wrote the file              for people
  * /system                  text of the system description (UTF-8);              else an attribute of that name,
@@ -24,6 +27,7 @@ import java.util.HexFormat;
  * /element_a /element_b    one column per attribute, all of the same length     these two required in a list,
  * /time_ps …               (every {@link org.raysheaf.geometry.event.Attribute} has its column name)     element and time_ps in singles
  *     unit meaning         of the column's values                               else the format's own unit
+ * /singles                 singles within the energies in each element          else not known
  * /crc32c/element_a …      CRC-32C of every chunk of that column                else a warning
  * /truth/decay …           what only a simulation knows, in the same way        else none; reconstruction never reads it
  * </pre>
@@ -51,6 +55,21 @@ final class ListFormat {
     static final String SHA256 = "sha256";
     static final String UNIT = "unit";
     static final String MEANING = "meaning";
+
+    static final String WINDOW = "window_ns";
+    static final String LOWEST = "lowest_keV";
+    static final String HIGHEST = "highest_keV";
+    static final String DELAY = "delay_ns";
+    static final String DISORDER = "disorder_ns";
+    static final String CROWDS = "crowds";
+    static final String OUTSIDE_ENERGIES = "singles_outside_energies";
+    static final String ALONE = "singles_alone";
+    static final String CROWDED = "singles_crowded";
+    static final String TOO_CLOSE = "singles_too_close";
+    static final String PAIRED = "singles_paired";
+    static final String PROMPTS = "pairs_prompt";
+    static final String DELAYED = "pairs_delayed";
+    static final String SINGLES = "singles";
 
     /** Group of the checksums. */
     static final String CHECKSUMS = "crc32c";

@@ -3,6 +3,7 @@ package org.raysheaf.io.list;
 import java.io.IOException;
 import java.nio.file.Path;
 import java.util.EnumMap;
+import java.util.Locale;
 import java.util.Map;
 import java.util.Objects;
 import java.util.Set;
@@ -11,6 +12,9 @@ import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.geometry.matter.Nuclide;
 import org.raysheaf.io.hdf5.ArrayWriter;
 import org.raysheaf.io.hdf5.ColumnWriter;
@@ -143,8 +147,41 @@ public final class ListWriter implements EventSink, AutoCloseable {
             root.attribute(ListFormat.HALF_LIFE, nuclide.halfLifeS());
             root.attribute(ListFormat.BRANCHING, nuclide.positronBranching());
         }
+        PairingRecord pairing = header.pairing();
+        if (pairing != null) {
+            writePairing(root, pairing);
+        }
         ArrayWriter system = root.text(ListFormat.SYSTEM, header.systemDescription());
         system.attribute(ListFormat.SHA256, ListFormat.sha256(header.systemDescription()));
+    }
+
+    private static void writePairing(GroupWriter root, PairingRecord pairing) throws IOException {
+        Pairing settings = pairing.settings();
+        root.attribute(ListFormat.WINDOW, settings.windowNs());
+        root.attribute(ListFormat.LOWEST, settings.lowestKeV());
+        Double highest = settings.highestKeV();
+        if (highest != null) {
+            root.attribute(ListFormat.HIGHEST, highest);
+        }
+        Double delay = settings.delayNs();
+        if (delay != null) {
+            root.attribute(ListFormat.DELAY, delay);
+        }
+        root.attribute(ListFormat.DISORDER, settings.disorderNs());
+        root.attribute(ListFormat.CROWDS, settings.crowds().name().toLowerCase(Locale.ROOT));
+        PairingTally tally = pairing.tally();
+        root.attribute(ListFormat.OUTSIDE_ENERGIES, tally.outsideEnergies());
+        root.attribute(ListFormat.ALONE, tally.alone());
+        root.attribute(ListFormat.CROWDED, tally.crowded());
+        root.attribute(ListFormat.TOO_CLOSE, tally.tooClose());
+        root.attribute(ListFormat.PAIRED, tally.paired());
+        root.attribute(ListFormat.PROMPTS, tally.prompts());
+        root.attribute(ListFormat.DELAYED, tally.delayed());
+        if (!pairing.singles().isEmpty()) {
+            long[] singles =
+                    pairing.singles().stream().mapToLong(Long::longValue).toArray();
+            root.array(ListFormat.SINGLES, singles, singles.length).attribute(ListFormat.UNIT, "1");
+        }
     }
 
     private static String writerName() {

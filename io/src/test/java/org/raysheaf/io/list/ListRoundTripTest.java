@@ -8,6 +8,7 @@ import java.nio.file.FileAlreadyExistsException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.EnumSet;
+import java.util.List;
 import java.util.Set;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.Test;
@@ -20,6 +21,9 @@ import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.io.hdf5.Compression;
 
 class ListRoundTripTest {
@@ -65,6 +69,23 @@ class ListRoundTripTest {
         }
 
         assertThat(ListFile.open(path).header()).isEqualTo(header);
+    }
+
+    @Test
+    void keepsHowPairsWereMade() throws IOException {
+        Pairing settings = new Pairing(3.5, 350, 650.0, 200.0, Pairing.Crowds.STRONGEST_TWO, 10);
+        PairingTally tally = new PairingTally(1, 2, 3, 4, 5, 6, 7);
+        PairingRecord record = new PairingRecord(settings, tally, List.of(3L, 0L, 5_000_000_000L));
+        ListHeader old = SampleLists.HEADER;
+        ListHeader header = new ListHeader(
+                old.systemDescription(), old.durationS(), old.liveTimeS(), old.start(), old.nuclide(), record);
+        Path path = folder.resolve("list.h5");
+        try (ListWriter writer = ListWriter.create(SampleLists.ALL, path, false)) {
+            writer.commit(header);
+        }
+
+        assertThat(ListFile.open(path).header()).isEqualTo(header);
+        assertThat(ListFile.open(path).warnings()).isEmpty();
     }
 
     @Test

@@ -10,13 +10,13 @@ import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.io.hdf5.Compression;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.list.ListWriter;
-import org.raysheaf.transport.Pairing;
-import org.raysheaf.transport.PairingTally;
 import org.raysheaf.transport.SinglesPairing;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
@@ -113,12 +113,12 @@ final class PairVerb extends Verb {
         Set<Attribute> columns = EnumSet.copyOf(singles.attributes());
         columns.addAll(singles.truth());
         SinglesPairing work = new SinglesPairing(systems.system(), pairing, columns);
-        ListHeader header = SinglesPairing.header(singles.header());
         PairingTally tally;
         try (ListWriter writer = ListWriter.create(
                 work.attributes(), out, common().replace(), small ? Compression.DEFLATE : Compression.NONE)) {
-            tally = work.run(singles, writer, common().progress());
-            writer.commit(header);
+            PairingRecord record = work.run(singles, writer, common().progress());
+            writer.commit(SinglesPairing.header(singles.header(), record));
+            tally = record.tally();
         }
         List<String> lines = new java.util.ArrayList<>(lines(tally));
         lines.add("written " + out);

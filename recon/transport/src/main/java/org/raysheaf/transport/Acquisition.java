@@ -3,6 +3,7 @@ package org.raysheaf.transport;
 import java.time.Instant;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
 import org.raysheaf.geometry.matter.DecayScheme;
 import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;

@@ -1,6 +1,7 @@
 package org.raysheaf.transport;
 
 import java.io.IOException;
+import java.util.Arrays;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
@@ -9,6 +10,9 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
+import org.raysheaf.geometry.event.PairingTally;
 
 /**
  * Makes pairs of singles that come in order of time; {@link Pairing} says how. The pair's time is that of its earlier single (for a
@@ -47,6 +51,7 @@ final class Pairer implements EventSink {
     // Rows before this one are inside a window that an earlier single opened.
     private int nextOpener;
 
+    private final long[] singlesOf;
     private long outsideEnergies;
     private long alone;
     private long crowded;
@@ -81,6 +86,7 @@ final class Pairer implements EventSink {
         truth = singleAttributes.stream().anyMatch(Attribute::truth);
         singles = new EventBlock(singleAttributes, ROOM);
         pairs = new EventBlock(attributes(pairing, singleAttributes), ROOM);
+        singlesOf = new long[system.elements()];
     }
 
     /**
@@ -106,6 +112,12 @@ final class Pairer implements EventSink {
             pairs.addAll(ListKind.PAIRS.truth());
         }
         return pairs;
+    }
+
+    /** How pairs were made so far; complete after {@link #finish}. */
+    PairingRecord record() {
+        return new PairingRecord(
+                pairing, tally(), Arrays.stream(singlesOf).boxed().toList());
     }
 
     /** What became of the singles so far; complete after {@link #finish}. */
@@ -145,6 +157,10 @@ final class Pairer implements EventSink {
                     accepted[count++] = i;
                 }
             }
+        }
+        int[] elements = block.ints(Attribute.ELEMENT);
+        for (int i = 0; i < count; i++) {
+            singlesOf[elements[accepted[i]]]++;
         }
         outsideEnergies += block.size() - count;
         return count;

@@ -2,6 +2,7 @@ package org.raysheaf.transport;
 
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.PairingTally;
 
 /**
  * What came of a simulated acquisition.

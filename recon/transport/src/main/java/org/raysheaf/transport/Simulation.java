@@ -147,7 +147,8 @@ public final class Simulation {
                 duration,
                 duration * fraction,
                 acquisition.start(),
-                scheme == null ? null : scheme.nuclide());
+                scheme == null ? null : scheme.nuclide(),
+                chain.pairer == null ? null : chain.pairer.record());
         return new Simulated(
                 header,
                 chain.decays,

@@ -9,6 +9,8 @@ import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.port.Progress;
 
 /**
@@ -49,11 +51,13 @@ public final class SinglesPairing {
      * What the list of pairs says about itself: a pair is recorded when both photons could be, so the live share counts twice.
      *
      * @param of header of the singles
+     * @param record how the pairs were made
      * @return the header of the pairs
      */
-    public static ListHeader header(ListHeader of) {
+    public static ListHeader header(ListHeader of, PairingRecord record) {
         double live = of.liveTimeS() / of.durationS();
-        return new ListHeader(of.systemDescription(), of.durationS(), live * of.liveTimeS(), of.start(), of.nuclide());
+        return new ListHeader(
+                of.systemDescription(), of.durationS(), live * of.liveTimeS(), of.start(), of.nuclide(), record);
     }
 
     /**
@@ -62,10 +66,10 @@ public final class SinglesPairing {
      * @param source the singles, in order of time within the disorder that the settings allow
      * @param sink receives the pairs in order of time, with the columns of {@link #attributes()}
      * @param progress hears of it, in singles
-     * @return what became of the singles
+     * @return how the pairs were made
      * @throws IOException if the list cannot be read, is in greater disorder, or the sink fails
      */
-    public PairingTally run(EventSource source, EventSink sink, Progress progress) throws IOException {
+    public PairingRecord run(EventSource source, EventSink sink, Progress progress) throws IOException {
         Pairer pairer = new Pairer(system, pairing, singles, sink);
         TimeOrder order = new TimeOrder(singles, Math.round(PS_PER_NS * pairing.disorderNs()), pairer);
         EventBlock block = new EventBlock(singles, ROOM);
@@ -78,8 +82,8 @@ public final class SinglesPairing {
         }
         order.finish();
         pairer.finish();
-        PairingTally tally = pairer.tally();
-        progress.end(tally.prompts() + " pairs");
-        return tally;
+        PairingRecord record = pairer.record();
+        progress.end(record.tally().prompts() + " pairs");
+        return record;
     }
 }

@@ -13,6 +13,8 @@ import org.junit.jupiter.api.Test;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.geometry.settings.InvalidSettingsException;
 
 class PairerTest {

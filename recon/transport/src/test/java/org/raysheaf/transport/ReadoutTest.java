@@ -25,6 +25,8 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
+import org.raysheaf.geometry.event.PairingTally;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.phantom.Source;

@@ -19,6 +19,7 @@ import org.raysheaf.geometry.detector.Readout;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.matter.KleinNishina;
 import org.raysheaf.geometry.phantom.Phantom;

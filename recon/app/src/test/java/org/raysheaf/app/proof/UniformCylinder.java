@@ -20,6 +20,7 @@ import org.raysheaf.geometry.detector.Placement;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
+import org.raysheaf.geometry.event.Pairing;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
@@ -32,7 +33,6 @@ import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
 import org.raysheaf.geometry.solid.Cylinder;
 import org.raysheaf.transport.Acquisition;
-import org.raysheaf.transport.Pairing;
 import org.raysheaf.transport.Physics;
 import org.raysheaf.transport.Simulation;
 

@@ -1,4 +1,4 @@
-package org.raysheaf.transport;
+package org.raysheaf.geometry.event;
 
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.settings.Default;

@@ -1,4 +1,4 @@
-package org.raysheaf.transport;
+package org.raysheaf.geometry.event;
 
 /**
  * What became of singles in pairing: every single read is in exactly one of the first five counts.
