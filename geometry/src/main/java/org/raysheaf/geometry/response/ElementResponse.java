@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.List;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.FieldOfView;
 import org.raysheaf.geometry.detector.PlacedBlock;
@@ -33,13 +34,74 @@ public final class ElementResponse {
     private final SlopeAxis u;
     private final SlopeAxis v;
     private final float[] table;
+    private final @Nullable WindowShares window;
 
     private ElementResponse(DetectorSystem system, ElementClasses classes, SlopeAxis u, SlopeAxis v, float[] table) {
+        this(system, classes, u, v, table, null);
+    }
+
+    private ElementResponse(
+            DetectorSystem system,
+            ElementClasses classes,
+            SlopeAxis u,
+            SlopeAxis v,
+            float[] table,
+            @Nullable WindowShares window) {
         this.system = system;
         this.classes = classes;
         this.u = u;
         this.v = v;
         this.table = table;
+        this.window = window;
+    }
+
+    /**
+     * The response in an energy window: effective areas times the share of signals in the window. Points of interaction stay.
+     *
+     * @param shares what becomes of first interactions in this system
+     * @return the response for signals in the window; it shares the tables
+     */
+    public ElementResponse within(WindowShares shares) {
+        return new ElementResponse(system, classes, u, v, table, shares);
+    }
+
+    /**
+     * Number of classes of elements that see the same surroundings.
+     *
+     * @return the count
+     */
+    public int classes() {
+        return classes.classes();
+    }
+
+    /**
+     * The class of an element.
+     *
+     * @param element the element
+     * @return number of its class, from 0
+     */
+    public int classOf(int element) {
+        return classes.classOf(element);
+    }
+
+    /**
+     * Whether an element sees the surroundings of its class mirrored along u.
+     *
+     * @param element the element
+     * @return true if u is to be mirrored
+     */
+    public boolean flipsU(int element) {
+        return classes.flipsU(element);
+    }
+
+    /**
+     * Whether an element sees the surroundings of its class mirrored along v.
+     *
+     * @param element the element
+     * @return true if v is to be mirrored
+     */
+    public boolean flipsV(int element) {
+        return classes.flipsV(element);
     }
 
     /**
@@ -213,6 +275,9 @@ public final class ElementResponse {
         double fv = pv - iv;
         int at = VALUES * ((classes.classOf(element) * u.nodes() + iu) * v.nodes() + iv);
         out.area = sw * blend(at, fu, fv);
+        if (window != null) {
+            out.area *= window.of(classes.classOf(element), signU * su, signV * sv);
+        }
         out.u = signU * blend(at + 1, fu, fv);
         out.v = signV * blend(at + 2, fu, fv);
         out.w = blend(at + 3, fu, fv);

@@ -2,7 +2,6 @@ package org.raysheaf.transport;
 
 import java.io.IOException;
 import java.util.Set;
-import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSink;
@@ -19,6 +18,7 @@ final class Channels {
     private final EventSink sink;
     private final EventBlock singles;
     private final boolean truth;
+    private final Decoder decoder = new Decoder();
 
     // Pulses that may still precede some of the next slice; then, those that are being integrated.
     private Pulses held = new Pulses(16);
@@ -94,7 +94,7 @@ final class Channels {
             if (block.paralysable) {
                 blind(channel, timePs, block.deadPs);
             }
-        } else if (measured(block, from, row) >= block.lowestKeV) {
+        } else if (Decoder.energyKeV(block, from, row) >= block.lowestKeV) {
             begun[channel]++;
             blind(channel, timePs, block.deadPs);
             if (block.integrationPs == 0) {
@@ -178,17 +178,8 @@ final class Channels {
         }
     }
 
-    private static double measured(ReadoutPlan.Block block, Pulses from, int row) {
-        double keV = from.real[Pulses.ENERGY][row];
-        if (block.blursEnergy()) {
-            keV += from.real[Pulses.NORMAL_ENERGY][row] * block.energySdKeV(keV);
-        }
-        double step = block.readout.energyStepKeV();
-        return Math.max(0, step > 0 ? step * Math.rint(keV / step) : keV);
-    }
-
     private void emit(ReadoutPlan.Block block, Pulses from, int row) throws IOException {
-        double keV = measured(block, from, row);
+        double keV = Decoder.energyKeV(block, from, row);
         if (keV > block.highestKeV) {
             return;
         }
@@ -215,58 +206,19 @@ final class Channels {
     }
 
     private void place(ReadoutPlan.Block block, Pulses from, int row, int i) {
-        double keV = from.real[Pulses.ENERGY][row];
-        double u = from.real[Pulses.SUM_U][row] / keV;
-        double v = from.real[Pulses.SUM_V][row] / keV;
-        double w = from.real[Pulses.SUM_W][row] / keV;
-        CrystalBlock lattice = block.lattice;
-        int element = from.element[row];
-        if (block.monolithic) {
-            u = inside(
-                    u + from.real[Pulses.NORMAL_U][row] * block.pointSdMm.x(),
-                    -0.5 * lattice.widthMm(),
-                    lattice.widthMm());
-            v = inside(
-                    v + from.real[Pulses.NORMAL_V][row] * block.pointSdMm.y(),
-                    -0.5 * lattice.heightMm(),
-                    lattice.heightMm());
-            w = inside(w + from.real[Pulses.NORMAL_W][row] * block.pointSdMm.z(), 0, lattice.depthMm());
-            element = block.placed.firstElement() + lattice.nearest(u, v, w);
-        } else {
-            int crystal = element - block.placed.firstElement();
-            if (block.lightSdMm > 0
-                    || block.readout.decoding() == org.raysheaf.geometry.detector.Readout.Decoding.CENTROID) {
-                double depth = lattice.layer(crystal) * lattice.pitchMm().z();
-                crystal = lattice.nearest(
-                        u + from.real[Pulses.NORMAL_U][row] * block.lightSdMm,
-                        v + from.real[Pulses.NORMAL_V][row] * block.lightSdMm,
-                        depth + 0.5 * lattice.crystalMm().z());
-                element = block.placed.firstElement() + crystal;
-            }
-            boolean depthMeasured = block.readout.depthFwhmMm() != null;
-            w = depthMeasured
-                    ? inside(w + from.real[Pulses.NORMAL_W][row] * block.depthSdMm, 0, lattice.depthMm())
-                    : (lattice.layer(crystal) * lattice.pitchMm().z()
-                            + 0.5 * lattice.crystalMm().z());
-            u = lattice.centreU(crystal);
-            v = lattice.centreV(crystal);
-        }
-        singles.ints(Attribute.ELEMENT)[i] = element;
+        decoder.decode(block, from, row);
+        singles.ints(Attribute.ELEMENT)[i] = decoder.element;
         if (singles.has(Attribute.DEPTH)) {
-            singles.floats(Attribute.DEPTH)[i] = (float) w;
+            singles.floats(Attribute.DEPTH)[i] = (float) decoder.w;
         }
         if (singles.has(Attribute.POSITION_X)) {
-            singles.floats(Attribute.POSITION_X)[i] = (float) block.world(0, u, v, w);
-            singles.floats(Attribute.POSITION_Y)[i] = (float) block.world(1, u, v, w);
-            singles.floats(Attribute.POSITION_Z)[i] = (float) block.world(2, u, v, w);
+            singles.floats(Attribute.POSITION_X)[i] = (float) block.world(0, decoder.u, decoder.v, decoder.w);
+            singles.floats(Attribute.POSITION_Y)[i] = (float) block.world(1, decoder.u, decoder.v, decoder.w);
+            singles.floats(Attribute.POSITION_Z)[i] = (float) block.world(2, decoder.u, decoder.v, decoder.w);
             singles.floats(Attribute.POSITION_U_SD)[i] = (float) block.pointSdMm.x();
             singles.floats(Attribute.POSITION_V_SD)[i] = (float) block.pointSdMm.y();
             singles.floats(Attribute.POSITION_W_SD)[i] = (float) block.depthSdMm;
         }
-    }
-
-    private static double inside(double value, double from, double length) {
-        return Math.max(from, Math.min(from + length, value));
     }
 
     private void tell(Pulses from, int row, int i) {

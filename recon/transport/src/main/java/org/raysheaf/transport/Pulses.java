@@ -53,6 +53,10 @@ final class Pulses {
         return size;
     }
 
+    void clear() {
+        size = 0;
+    }
+
     /** Adds a pulse, its columns to be filled; returns its row. */
     int append() {
         if (size == timePs.length) {

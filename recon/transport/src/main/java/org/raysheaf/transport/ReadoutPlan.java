@@ -86,6 +86,11 @@ final class ReadoutPlan {
                     + axes[3 * axis + 2] * (z - origin[2]);
         }
 
+        /** One component of a direction in the block's frame: 0, 1, 2 for u, v, w. */
+        double along(int axis, double dx, double dy, double dz) {
+            return axes[3 * axis] * dx + axes[3 * axis + 1] * dy + axes[3 * axis + 2] * dz;
+        }
+
         /** One coordinate in the world of a point in the block's frame (mm). */
         double world(int axis, double u, double v, double w) {
             return origin[axis] + axes[axis] * u + axes[3 + axis] * v + axes[6 + axis] * w;
