@@ -16,6 +16,8 @@ public final class EventTally {
         BLOCKS_TOO_CLOSE("blocks closer than blocks_apart"),
         /** Its line misses the field of view. */
         OUTSIDE_FIELD_OF_VIEW("line misses the field of view"),
+        /** One of its elements was found to be dead or was left out. */
+        SILENT_ELEMENT("an element that counts for nothing"),
         /** It comes from the delayed window. */
         DELAYED("from the delayed window"),
         /** Its line misses the image grid, or no voxel on it can hold activity. */

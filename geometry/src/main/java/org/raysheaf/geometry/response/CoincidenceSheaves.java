@@ -29,7 +29,9 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     private final DetectorSystem system;
     private final PairLines lines;
-    private final List<PlacedBlock[]> blockPairs = new ArrayList<>();
+    private final List<PlacedBlock[]> blockPairs;
+    private final PairFactor.Maker factors;
+    private final boolean[] silent;
 
     /**
      * The sheaves of a system.
@@ -37,15 +39,91 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @param response the tabulated response of its elements
      */
     public CoincidenceSheaves(ElementResponse response) {
-        this.system = response.system();
-        this.lines = new PairLines(response);
+        this(
+                response.system(),
+                new PairLines(response),
+                admitted(response.system()),
+                () -> (a, b, line) -> 1,
+                new boolean[response.system().elements()]);
+    }
+
+    private CoincidenceSheaves(
+            DetectorSystem system,
+            PairLines lines,
+            List<PlacedBlock[]> blockPairs,
+            PairFactor.Maker factors,
+            boolean[] silent) {
+        this.system = system;
+        this.lines = lines;
+        this.blockPairs = blockPairs;
+        this.factors = factors;
+        this.silent = silent;
+    }
+
+    private static List<PlacedBlock[]> admitted(DetectorSystem system) {
+        List<PlacedBlock[]> pairs = new ArrayList<>();
         for (PlacedBlock a : system.blocks()) {
             for (PlacedBlock b : system.blocks().subList(0, a.index())) {
                 if (system.pairs().admits(a, b)) {
-                    blockPairs.add(new PlacedBlock[] {a, b});
+                    pairs.add(new PlacedBlock[] {a, b});
                 }
             }
         }
+        return pairs;
+    }
+
+    /**
+     * The same sheaves, weighted with a factor more.
+     *
+     * @param more makes the factor
+     * @return sheaves whose catalogue counts with it
+     */
+    public CoincidenceSheaves with(PairFactor.Maker more) {
+        PairFactor.Maker before = factors;
+        return new CoincidenceSheaves(
+                system,
+                lines,
+                blockPairs,
+                () -> {
+                    PairFactor one = before.make();
+                    PairFactor other = more.make();
+                    return (a, b, line) -> one.of(a, b, line) * other.of(a, b, line);
+                },
+                silent);
+    }
+
+    /**
+     * The same sheaves, weighted with the efficiencies of elements. Pairs of an element of efficiency 0 are left out of the catalogue and
+     * set aside in lists.
+     *
+     * @param efficiencies one for each element, at least 0
+     * @return sheaves that count with them
+     */
+    public CoincidenceSheaves withEfficiencies(double[] efficiencies) {
+        boolean[] quiet = silent.clone();
+        for (int e = 0; e < quiet.length; e++) {
+            quiet[e] |= !(efficiencies[e] > 0);
+        }
+        CoincidenceSheaves weighted = with(() -> (a, b, line) -> efficiencies[a] * efficiencies[b]);
+        return new CoincidenceSheaves(system, lines, blockPairs, weighted.factors, quiet);
+    }
+
+    /**
+     * The system whose pairs these are.
+     *
+     * @return the system
+     */
+    public DetectorSystem system() {
+        return system;
+    }
+
+    /**
+     * The factor that the catalogue counts with, for one thread.
+     *
+     * @return all factors together
+     */
+    public PairFactor factor() {
+        return factors.make();
     }
 
     private static Set<Attribute> alsoReadSet() {
@@ -80,6 +158,18 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      */
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
+        visit(events, tally, (a, b, line) -> append(out, line, 1));
+    }
+
+    /**
+     * Finds the line of every usable event, in order, and counts every event as used or set aside: the same events that {@link #make} makes
+     * sheaves of.
+     *
+     * @param events the events
+     * @param tally counts them
+     * @param visitor hears of every usable one
+     */
+    public void visit(EventBlock events, EventTally tally, PairVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         int[] a = events.ints(Attribute.ELEMENT_A);
@@ -94,6 +184,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.DELAYED);
             } else if (!system.admits(a[i], b[i])) {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
+            } else if (silent[a[i]] || silent[b[i]]) {
+                tally.setAside(EventTally.Reason.SILENT_ELEMENT);
             } else if (!maker.line(a[i], b[i], line)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
@@ -107,7 +199,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                     line.by = events.floats(Attribute.POSITION_B_Y)[i];
                     line.bz = events.floats(Attribute.POSITION_B_Z)[i];
                 }
-                append(out, line, 1);
+                visitor.pair(a[i], b[i], line);
                 tally.use();
             }
         }
@@ -137,14 +229,32 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     @Override
     public void fill(int part, SheafBundle out) {
+        PairFactor factor = factors.make();
+        visit(part, (a, b, line) -> {
+            double weight = line.etendue / (2 * Math.PI) * factor.of(a, b, line);
+            if (weight > 0) {
+                append(out, line, weight);
+            }
+        });
+    }
+
+    /**
+     * Finds the line of every pair of a part of the catalogue, those of silent elements left out.
+     *
+     * @param part the part
+     * @param visitor hears of every pair
+     */
+    public void visit(int part, PairVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         PlacedBlock a = blockPairs.get(part)[0];
         PlacedBlock b = blockPairs.get(part)[1];
         for (int i = 0; i < a.kind().elements(); i++) {
             for (int j = 0; j < b.kind().elements(); j++) {
-                if (maker.line(a.firstElement() + i, b.firstElement() + j, line)) {
-                    append(out, line, line.etendue / (2 * Math.PI));
+                int first = a.firstElement() + i;
+                int second = b.firstElement() + j;
+                if (!silent[first] && !silent[second] && maker.line(first, second, line)) {
+                    visitor.pair(first, second, line);
                 }
             }
         }

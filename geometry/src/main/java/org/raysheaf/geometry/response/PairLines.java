@@ -100,8 +100,14 @@ public final class PairLines {
         return crosses;
     }
 
-    /** The line of a pair whether or not it crosses the field of view. */
-    void lineAnywhere(int a, int b, LineOfResponse line) {
+    /**
+     * The line of a pair whether or not it crosses the field of view.
+     *
+     * @param a one element
+     * @param b the other element
+     * @param line receives the ends and the étendue
+     */
+    public void lineAnywhere(int a, int b, LineOfResponse line) {
         double product = whole(a, b, 0, 0, 0, 0, line);
         line.etendue = refined(a, b, product, line.lengthMm());
     }

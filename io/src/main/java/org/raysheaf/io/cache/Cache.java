@@ -63,6 +63,24 @@ public final class Cache {
     }
 
     /**
+     * Digest of numbers.
+     *
+     * @param values the numbers
+     * @return SHA-256 of their bits in hexadecimal
+     */
+    public static String digest(float[] values) {
+        try {
+            MessageDigest sha = MessageDigest.getInstance("SHA-256");
+            ByteBuffer bytes = ByteBuffer.allocate(Math.multiplyExact(Float.BYTES, values.length));
+            bytes.asFloatBuffer().put(values);
+            sha.update(bytes);
+            return HexFormat.of().formatHex(sha.digest());
+        } catch (NoSuchAlgorithmException e) {
+            throw new IllegalStateException("every Java has SHA-256", e);
+        }
+    }
+
+    /**
      * Looks for an entry.
      *
      * @param kind what it is, part of the file's name

@@ -39,6 +39,7 @@ final class ReconstructVerb extends Verb {
         ResultFolder folder = new ResultFolder(out, common.replace());
         folder.requireFree();
         ReconstructionPlan plan = ReconstructionPlan.bare();
+        Path base = with;
         Path list = input;
         if (input.toString().endsWith(".yaml")) {
             plan = DescriptionReader.read(input, "reconstruction", ReconstructionPlan.class);
@@ -47,6 +48,7 @@ final class ReconstructVerb extends Verb {
                 throw new IOException(input + ": names no list; add a line \"list: LIST.h5\", or give the list itself");
             }
             list = input.resolveSibling(named);
+            base = input;
         } else if (with != null) {
             plan = DescriptionReader.read(with, "reconstruction", ReconstructionPlan.class);
         } else {
@@ -54,7 +56,7 @@ final class ReconstructVerb extends Verb {
                     "no description given: 20 passes, 1 subset (MLEM), no filter, voxels of half the crystal pitch over the field of view, in kBq/mL");
         }
         ForkJoinPool pool = common.pool();
-        Reconstruction done = Reconstruction.of(list, plan.with(common.lanes(), halves), common, pool);
+        Reconstruction done = Reconstruction.of(list, plan.with(common.lanes(), halves), base, common, pool);
         Map<String, Object> results = folder.write(done, pool.getParallelism());
         common.print(results, folder.lines(done));
     }

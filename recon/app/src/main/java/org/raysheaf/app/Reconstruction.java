@@ -5,10 +5,8 @@ import java.nio.file.Path;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
-import org.raysheaf.engine.FieldOfView;
 import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
-import org.raysheaf.engine.ray.EventBackground;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
@@ -17,7 +15,6 @@ import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
-import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.io.list.ListFile;
 
 /**
@@ -27,7 +24,7 @@ import org.raysheaf.io.list.ListFile;
  * @param systems the system that the list carries
  * @param plan how to reconstruct
  * @param grid the voxels
- * @param sensitivity expected counts of the whole list per Bq/mL
+ * @param model sheaves with all factors, sensitivity, background
  * @param whole the image of all events (Bq/mL)
  * @param odd the image of the odd events, if halves were asked for
  * @param even the image of the even events, if halves were asked for
@@ -37,11 +34,12 @@ record Reconstruction(
         Systems systems,
         ReconstructionPlan plan,
         Grid grid,
-        Image sensitivity,
+        CorrectedModel model,
         Estimate whole,
         @Nullable Estimate odd,
         @Nullable Estimate even) {
-    static Reconstruction of(Path listPath, ReconstructionPlan plan, Common common, ForkJoinPool pool)
+    static Reconstruction of(
+            Path listPath, ReconstructionPlan plan, @Nullable Path base, Common common, ForkJoinPool pool)
             throws IOException {
         Progress progress = common.progress();
         ListFile opened = ListFile.open(listPath);
@@ -51,17 +49,14 @@ record Reconstruction(
         Systems systems = Systems.of(header.systemDescription(), listPath + " (its system)", common, pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
         Grid grid = plan.grid().gridFor(systems.system());
-        CoincidenceSheaves sheaves = systems.sheaves();
-        Image counts = countsPerBqPerMl(systems.sensitivity(sheaves, grid), header.pairsPerBecquerel());
-        Image support = FieldOfView.support(
-                counts, FieldOfView.cylinder(systems.system().fieldOfView().radiusMm()));
-        Estimation estimation = new Estimation(list, sheaves, counts, support, plan, pool, progress);
+        CorrectedModel model = CorrectedModel.of(list, systems, plan.corrections(), base, grid, common, pool);
+        Estimation estimation = new Estimation(list, model, plan, pool, progress);
         return new Reconstruction(
                 list,
                 systems,
                 plan,
                 grid,
-                counts,
+                model,
                 estimation.of(EventSelection.ALL),
                 plan.halves() ? estimation.of(EventSelection.ODD) : null,
                 plan.halves() ? estimation.of(EventSelection.EVEN) : null);
@@ -85,24 +80,18 @@ record Reconstruction(
     }
 
     private record Estimation(
-            ListFile list,
-            CoincidenceSheaves sheaves,
-            Image sensitivity,
-            Image support,
-            ReconstructionPlan plan,
-            ForkJoinPool pool,
-            Progress progress) {
+            ListFile list, CorrectedModel model, ReconstructionPlan plan, ForkJoinPool pool, Progress progress) {
         Estimate of(EventSelection selection) throws IOException {
             EventStore store = EventLoader.load(
                     list,
-                    sheaves,
-                    support,
+                    model.sheaves(),
+                    model.support(),
                     selection,
                     plan.estimation().subsets(),
-                    EventBackground.NONE,
+                    model.background(),
                     pool,
                     progress);
-            return new ListModeEm(store, sensitivity, plan.estimation(), pool).run(PassListener.SILENT, progress);
+            return new ListModeEm(store, model.counts(), plan.estimation(), pool).run(PassListener.SILENT, progress);
         }
     }
 }

@@ -12,17 +12,24 @@ import org.raysheaf.geometry.settings.Default;
  * @param grid the voxels
  * @param estimation passes, subsets, lanes, filter
  * @param halves whether to make the images of the odd and of the even events as well
+ * @param corrections which corrections to make
  */
 record ReconstructionPlan(
         @Nullable String list,
         @Nullable String system,
         @Default("{}") GridSettings grid,
         @Default("{}") EstimationSettings estimation,
-        @Default("false") boolean halves) {
+        @Default("false") boolean halves,
+        @Default("{}") Corrections corrections) {
     /** What is done with a bare list. */
     static ReconstructionPlan bare() {
         return new ReconstructionPlan(
-                null, null, new GridSettings(null, null, null), EstimationSettings.mlem(20), false);
+                null,
+                null,
+                new GridSettings(null, null, null),
+                EstimationSettings.mlem(20),
+                false,
+                Corrections.OF_A_BARE_LIST);
     }
 
     /** The same with the number of lanes given on the command line, and halves if asked for there. */
@@ -33,6 +40,7 @@ record ReconstructionPlan(
                 system,
                 grid,
                 new EstimationSettings(e.passes(), e.subsets(), lanes > 0 ? lanes : e.lanes(), e.postFilterFwhmMm()),
-                halves || wantHalves);
+                halves || wantHalves,
+                corrections);
     }
 }

@@ -26,8 +26,6 @@ import org.raysheaf.quality.HalfDifference;
 /** The folder that a reconstruction leaves behind, and what is said about it on screen. */
 final class ResultFolder {
     private static final String UNIT = "kBq/mL";
-    private static final List<String> NOT_APPLIED =
-            List.of("energy window and scatter between crystals", "attenuation", "scatter", "randoms", "normalization");
     private static final List<String> NAMES = List.of(
             "activity.nii.gz",
             "activity.h5",
@@ -64,7 +62,7 @@ final class ResultFolder {
         Image activity = kilo(done.whole().image());
         volume(activity, UNIT, "activity.nii.gz");
         volume(activity, UNIT, "activity.h5");
-        volume(done.sensitivity(), "mL/Bq", "sensitivity.nii.gz");
+        volume(done.model().counts(), "mL/Bq", "sensitivity.nii.gz");
         Estimate odd = done.odd();
         Estimate even = done.even();
         if (odd != null && even != null) {
@@ -144,9 +142,9 @@ final class ResultFolder {
                 "corrections",
                 Map.of(
                         "applied",
-                        header.nuclide() == null ? List.of("live time") : List.of("live time", "decay", "branching"),
+                        done.model().applied(),
                         "not_applied",
-                        NOT_APPLIED));
+                        done.model().left()));
         results.put("passes", passes(done.whole()));
         results.put("lanes", done.whole().lanes());
         results.put("threads", threads);
@@ -273,7 +271,10 @@ final class ResultFolder {
                     100 * noise.relativeNoise(),
                     100 * noise.relativeNoiseError()));
         }
-        lines.add("           not corrected for " + String.join(", ", NOT_APPLIED));
+        if (!done.model().left().isEmpty()) {
+            lines.add("           not corrected for "
+                    + String.join(", ", done.model().left()));
+        }
         lines.add("written    " + folder);
         for (String name : NAMES) {
             if (Files.exists(folder.resolve(name))) {

@@ -55,7 +55,7 @@ final class SensitivityVerb extends Verb {
             throw new IOException(input + ": names neither a list nor a system; add one of them");
         }
         Image image = Reconstruction.countsPerBqPerMl(
-                systems.sensitivity(systems.sheaves(), plan.grid().gridFor(systems.system())), pairs);
+                systems.sensitivity(systems.sheaves(), plan.grid().gridFor(systems.system()), ""), pairs);
         VolumeFile.write(image, "mL/Bq", out, common().replace());
         common().print(Map.of("volume", out.toString(), "sum", image.sum()), List.of("written " + out, Common.CAUTION));
     }

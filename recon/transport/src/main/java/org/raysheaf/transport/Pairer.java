@@ -52,6 +52,7 @@ final class Pairer implements EventSink {
     private int nextOpener;
 
     private final long[] singlesOf;
+    private final long most;
     private long outsideEnergies;
     private long alone;
     private long crowded;
@@ -69,6 +70,12 @@ final class Pairer implements EventSink {
      * @param sink receives pairs, with the columns that {@link #attributes} names
      */
     Pairer(DetectorSystem system, Pairing pairing, Set<Attribute> singleAttributes, EventSink sink) {
+        this(system, pairing, singleAttributes, Long.MAX_VALUE, sink);
+    }
+
+    /** The same, ending with a number of pairs; singles that come later are counted nowhere. */
+    Pairer(DetectorSystem system, Pairing pairing, Set<Attribute> singleAttributes, long most, EventSink sink) {
+        this.most = most;
         this.system = system;
         this.pairing = pairing;
         this.sink = sink;
@@ -125,8 +132,16 @@ final class Pairer implements EventSink {
         return new PairingTally(outsideEnergies, alone, crowded, tooClose, paired, prompts, delayed);
     }
 
+    /** Whether there are pairs enough. */
+    boolean full() {
+        return prompts + delayed >= most;
+    }
+
     @Override
     public void accept(EventBlock block) throws IOException {
+        if (full()) {
+            return;
+        }
         int count = select(block);
         singles = singles.withRoomFor(singles.size() + count);
         singles.append(block, accepted, 0, count);
@@ -158,10 +173,6 @@ final class Pairer implements EventSink {
                 }
             }
         }
-        int[] elements = block.ints(Attribute.ELEMENT);
-        for (int i = 0; i < count; i++) {
-            singlesOf[elements[accepted[i]]]++;
-        }
         outsideEnergies += block.size() - count;
         return count;
     }
@@ -170,9 +181,11 @@ final class Pairer implements EventSink {
     private void pairUntil(long timePs) throws IOException {
         long[] times = singles.longs(Attribute.TIME);
         int size = singles.size();
+        int[] elements = singles.ints(Attribute.ELEMENT);
         int opener = 0;
         int later = 0;
-        while (opener < size && times[opener] < timePs) {
+        while (opener < size && times[opener] < timePs && !full()) {
+            singlesOf[elements[opener]]++;
             if (opener >= nextOpener) {
                 int end = opener + 1;
                 while (end < size && times[end] - times[opener] <= windowPs) {
@@ -273,7 +286,7 @@ final class Pairer implements EventSink {
     /** Makes a pair of an earlier and a later single, unless their blocks stand too close. */
     private void pair(int earlier, int later, boolean late) throws IOException {
         int[] elements = singles.ints(Attribute.ELEMENT);
-        if (!system.admits(elements[earlier], elements[later])) {
+        if (full() || !system.admits(elements[earlier], elements[later])) {
             return;
         }
         if (late) {

@@ -168,11 +168,12 @@ public final class Simulation {
         private long positrons;
 
         Chain(EventSink sink) {
-            last = new Limit(sink, acquisition.maxEvents() == null ? Long.MAX_VALUE : acquisition.maxEvents());
+            long most = acquisition.maxEvents() == null ? Long.MAX_VALUE : acquisition.maxEvents();
+            last = new Limit(sink, most);
             Set<Attribute> singles = singleAttributes();
             EventSink next = last;
             if (acquisition.output() == ListKind.PAIRS) {
-                pairer = new Pairer(system, acquisition.pairing(), singles, last);
+                pairer = new Pairer(system, acquisition.pairing(), singles, most, last);
                 next = pairer;
             } else {
                 pairer = null;
@@ -186,7 +187,7 @@ public final class Simulation {
             decays += slice.decays();
             positrons += slice.positrons();
             channels.take(slice.pulses(), setting.times().startPs(number + 1));
-            return !last.full();
+            return !(last.full() || (pairer != null && pairer.full()));
         }
 
         void finish() throws IOException {
