@@ -85,26 +85,6 @@ public final class ElementResponse {
     }
 
     /**
-     * Whether an element sees the surroundings of its class mirrored along u.
-     *
-     * @param element the element
-     * @return true if u is to be mirrored
-     */
-    public boolean flipsU(int element) {
-        return classes.flipsU(element);
-    }
-
-    /**
-     * Whether an element sees the surroundings of its class mirrored along v.
-     *
-     * @param element the element
-     * @return true if v is to be mirrored
-     */
-    public boolean flipsV(int element) {
-        return classes.flipsV(element);
-    }
-
-    /**
      * Makes the tables of a system. Takes some 0.1 ms of one core per node; the result does not depend on the number of threads.
      *
      * @param system the system
@@ -275,13 +255,14 @@ public final class ElementResponse {
         double fv = pv - iv;
         int at = VALUES * ((classes.classOf(element) * u.nodes() + iu) * v.nodes() + iv);
         out.area = sw * blend(at, fu, fv);
-        if (window != null) {
-            out.area *= window.of(classes.classOf(element), signU * su, signV * sv);
-        }
         out.u = signU * blend(at + 1, fu, fv);
         out.v = signV * blend(at + 2, fu, fv);
         out.w = blend(at + 3, fu, fv);
         out.variance = blend(at + 4, fu, fv);
+        if (window != null) {
+            out.area *= window.of(classes.classOf(element), su, sv);
+            out.w += window.deeperMm();
+        }
     }
 
     private double blend(int at, double fu, double fv) {

@@ -1,68 +1,88 @@
 package org.raysheaf.geometry.response;
 
 /**
- * Signals in the energy window for every first interaction: for each class of elements a quadratic polynomial in the direction, and how it
- * falls for photons of less than 511 keV. Turns the effective area for first interactions into that for signals. Immutable.
+ * Signals in the energy window for every first interaction: a share over direction common to all elements, times a factor for each class of
+ * elements; and how it falls for photons of less than 511 keV. Turns the effective area for first interactions into that for signals. Immutable.
  */
 public final class WindowShares {
-    /** Coefficients of one class: of 1, u, v, u², uv, v², with the components u and v of the unit direction in the block's frame. */
-    public static final int TERMS = 6;
+    /** Nodes of the common share along |u| and along |v|, from 0 to 1. */
+    public static final int SHAPE = 26;
 
-    private final double[] coefficients;
+    private final double deeperMm;
+    private final double[] shape;
+    private final double[] factors;
     private final double[] energiesKeV;
     private final double[] relative;
     private final double mean;
     private final double relativeError;
-    private final double reducedChiSquare;
 
     /**
      * Takes what was found.
      *
-     * @param coefficients {@value #TERMS} for each class of elements
+     * @param deeperMm how much deeper than the mean first interaction the line is where the named element stands (mm)
+     * @param shape common share at {@value #SHAPE} × {@value #SHAPE} nodes of |u| and |v|
+     * @param factors one for each class of elements
      * @param energiesKeV rising energies up to 511 keV (keV)
      * @param relative share at each of them relative to that at 511 keV
      * @param mean share over all elements and directions
      * @param relativeError mean relative standard error of one element's share
-     * @param reducedChiSquare goodness of the fits; NaN if unknown
      */
     public WindowShares(
-            double[] coefficients,
+            double deeperMm,
+            double[] shape,
+            double[] factors,
             double[] energiesKeV,
             double[] relative,
             double mean,
-            double relativeError,
-            double reducedChiSquare) {
-        this.coefficients = coefficients.clone();
+            double relativeError) {
+        this.deeperMm = deeperMm;
+        this.shape = shape.clone();
+        this.factors = factors.clone();
         this.energiesKeV = energiesKeV.clone();
         this.relative = relative.clone();
         this.mean = mean;
         this.relativeError = relativeError;
-        this.reducedChiSquare = reducedChiSquare;
+    }
+
+    /** Share of a class for a direction with the components u and v. */
+    double of(int classNumber, double u, double v) {
+        return factors[classNumber] * shapeAt(shape, u, v);
     }
 
     /**
-     * The terms of the polynomial.
+     * The node of the common share nearest to a component of the direction.
      *
-     * @param u component of the unit direction along u
-     * @param v component along v
-     * @param terms receives the {@value #TERMS} terms
+     * @param component the component, −1 to 1
+     * @return the node, 0 to {@value #SHAPE} − 1
      */
-    public static void terms(double u, double v, double[] terms) {
-        terms[0] = 1;
-        terms[1] = u;
-        terms[2] = v;
-        terms[3] = u * u;
-        terms[4] = u * v;
-        terms[5] = v * v;
+    public static int shapeNode(double component) {
+        return (int) Math.rint(stretched(component));
     }
 
-    /** Share of a class for a direction, at least 0. */
-    double of(int classNumber, double u, double v) {
-        int at = TERMS * classNumber;
-        double share = coefficients[at]
-                + u * (coefficients[at + 1] + u * coefficients[at + 3] + v * coefficients[at + 4])
-                + v * (coefficients[at + 2] + v * coefficients[at + 5]);
-        return Math.max(0, share);
+    /** Place among the nodes, which stand denser near 0: they are even in the square root of the component. */
+    private static double stretched(double component) {
+        return (SHAPE - 1) * Math.sqrt(Math.min(1, Math.abs(component)));
+    }
+
+    /**
+     * The common share, interpolated between nodes.
+     *
+     * @param shape the table
+     * @param u component of the direction along u
+     * @param v component along v
+     * @return the share
+     */
+    public static double shapeAt(double[] shape, double u, double v) {
+        double pu = Math.min(SHAPE - 1 - 1e-9, stretched(u));
+        double pv = Math.min(SHAPE - 1 - 1e-9, stretched(v));
+        int iu = (int) pu;
+        int iv = (int) pv;
+        double fu = pu - iu;
+        double fv = pv - iv;
+        int at = iu * SHAPE + iv;
+        double low = shape[at] + fv * (shape[at + 1] - shape[at]);
+        double high = shape[at + SHAPE] + fv * (shape[at + SHAPE + 1] - shape[at + SHAPE]);
+        return low + fu * (high - low);
     }
 
     /**
@@ -88,6 +108,16 @@ public final class WindowShares {
     }
 
     /**
+     * How much deeper than the mean first interaction the end of a line is to be put: photons that scatter go on before they leave most of
+     * their energy, so the element that is named stands farther along the line.
+     *
+     * @return the distance along the block's w (mm)
+     */
+    public double deeperMm() {
+        return deeperMm;
+    }
+
+    /**
      * The share over all elements and directions.
      *
      * @return signals in the window per first interaction
@@ -106,31 +136,26 @@ public final class WindowShares {
     }
 
     /**
-     * Whether the polynomials describe what was found.
-     *
-     * @return χ² per degree of freedom; about 1 if they do
-     */
-    public double reducedChiSquare() {
-        return reducedChiSquare;
-    }
-
-    /**
      * All numbers, to be kept and given to {@link #restore} later.
      *
      * @return the numbers in one row
      */
     public float[] toFloats() {
-        float[] row = new float[4 + 2 * energiesKeV.length + coefficients.length];
+        int shapeAt = 4 + 2 * energiesKeV.length + factors.length;
+        float[] row = new float[shapeAt + shape.length];
         row[0] = energiesKeV.length;
         row[1] = (float) mean;
         row[2] = (float) relativeError;
-        row[3] = (float) reducedChiSquare;
+        row[3] = (float) deeperMm;
         for (int i = 0; i < energiesKeV.length; i++) {
             row[4 + i] = (float) energiesKeV[i];
             row[4 + energiesKeV.length + i] = (float) relative[i];
         }
-        for (int i = 0; i < coefficients.length; i++) {
-            row[4 + 2 * energiesKeV.length + i] = (float) coefficients[i];
+        for (int i = 0; i < factors.length; i++) {
+            row[4 + 2 * energiesKeV.length + i] = (float) factors[i];
+        }
+        for (int i = 0; i < shape.length; i++) {
+            row[shapeAt + i] = (float) shape[i];
         }
         return row;
     }
@@ -145,19 +170,23 @@ public final class WindowShares {
      */
     public static WindowShares restore(float[] row, int classes) {
         int n = row.length < 4 ? -1 : (int) row[0];
-        if (n < 1 || row.length != 4 + 2 * n + TERMS * classes) {
+        if (n < 1 || row.length != 4 + 2 * n + classes + SHAPE * SHAPE) {
             throw new IllegalArgumentException("not the window shares of this system");
         }
         double[] energies = new double[n];
         double[] relative = new double[n];
-        double[] coefficients = new double[TERMS * classes];
+        double[] factors = new double[classes];
         for (int i = 0; i < n; i++) {
             energies[i] = row[4 + i];
             relative[i] = row[4 + n + i];
         }
-        for (int i = 0; i < coefficients.length; i++) {
-            coefficients[i] = row[4 + 2 * n + i];
+        for (int i = 0; i < factors.length; i++) {
+            factors[i] = row[4 + 2 * n + i];
         }
-        return new WindowShares(coefficients, energies, relative, row[1], row[2], row[3]);
+        double[] shape = new double[SHAPE * SHAPE];
+        for (int i = 0; i < shape.length; i++) {
+            shape[i] = row[4 + 2 * n + factors.length + i];
+        }
+        return new WindowShares(row[3], shape, factors, energies, relative, row[1], row[2]);
     }
 }

@@ -240,7 +240,7 @@ record CorrectedModel(
             row.put("highest_keV", Double.isInfinite(highest) ? "none" : highest);
             row.put("signals_per_first_interaction", shares.mean());
             row.put("relative_error_of_an_element", shares.relativeError());
-            row.put("reduced_chi_square", shares.reducedChiSquare());
+            row.put("deeper_than_first_interaction_mm", shares.deeperMm());
             applied.put("window", row);
             return shares;
         }

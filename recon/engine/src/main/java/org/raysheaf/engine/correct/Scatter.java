@@ -213,16 +213,26 @@ public final class Scatter {
             for (int p = 0; p < places.size(); p++) {
                 double[] place = places.get(p);
                 Vector3 point = new Vector3(place[0], place[1], place[2]);
-                Vector3 way = centre.minus(point);
+                // From the centre to the mean point of interaction for this direction.
+                Vector3 end = centre;
+                for (int round = 0; round < 2; round++) {
+                    Vector3 d = end.minus(point).unit();
+                    elementResponse.lookUp(element, u.dot(d), v.dot(d), w.dot(d), found);
+                    end = centre.plus(u.times(found.u()))
+                            .plus(v.times(found.v()))
+                            .plus(w.times(found.w()));
+                }
+                Vector3 way = end.minus(point);
                 Vector3 d = way.unit();
-                elementResponse.lookUp(element, u.dot(d), v.dot(d), w.dot(d), found);
+                double square = way.dot(way);
                 int at = e * places.size() + p;
                 dx[at] = d.x();
                 dy[at] = d.y();
                 dz[at] = d.z();
-                seen[at] = found.areaMm2() / way.dot(way);
-                tau[at] = mu.along(place[0], place[1], place[2], centre.x(), centre.y(), centre.z());
-                activity[at] = active.along(place[0], place[1], place[2], centre.x(), centre.y(), centre.z());
+                // the second term of the mean of 1/distance² over the depths
+                seen[at] = found.areaMm2() / square * (1 + 3 * found.varianceMm2() / square);
+                tau[at] = mu.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
+                activity[at] = active.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
             }
         }
 
