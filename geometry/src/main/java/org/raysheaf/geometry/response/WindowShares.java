@@ -9,6 +9,7 @@ public final class WindowShares {
     public static final int SHAPE = 26;
 
     private final double deeperMm;
+    private final double pileUpShare;
     private final double[] shape;
     private final double[] factors;
     private final double[] energiesKeV;
@@ -20,6 +21,7 @@ public final class WindowShares {
      * Takes what was found.
      *
      * @param deeperMm how much deeper than the mean first interaction the line is where the named element stands (mm)
+     * @param pileUpShare signals in the window with the energy of another pulse added, over those without
      * @param shape common share at {@value #SHAPE} × {@value #SHAPE} nodes of |u| and |v|
      * @param factors one for each class of elements
      * @param energiesKeV rising energies up to 511 keV (keV)
@@ -29,6 +31,7 @@ public final class WindowShares {
      */
     public WindowShares(
             double deeperMm,
+            double pileUpShare,
             double[] shape,
             double[] factors,
             double[] energiesKeV,
@@ -36,6 +39,7 @@ public final class WindowShares {
             double mean,
             double relativeError) {
         this.deeperMm = deeperMm;
+        this.pileUpShare = pileUpShare;
         this.shape = shape.clone();
         this.factors = factors.clone();
         this.energiesKeV = energiesKeV.clone();
@@ -118,6 +122,15 @@ public final class WindowShares {
     }
 
     /**
+     * What pile-up leaves in the window.
+     *
+     * @return signals in the window with the energy of another pulse added, over those without
+     */
+    public double pileUpShare() {
+        return pileUpShare;
+    }
+
+    /**
      * The share over all elements and directions.
      *
      * @return signals in the window per first interaction
@@ -142,7 +155,8 @@ public final class WindowShares {
      */
     public float[] toFloats() {
         int shapeAt = 4 + 2 * energiesKeV.length + factors.length;
-        float[] row = new float[shapeAt + shape.length];
+        float[] row = new float[shapeAt + shape.length + 1];
+        row[row.length - 1] = (float) pileUpShare;
         row[0] = energiesKeV.length;
         row[1] = (float) mean;
         row[2] = (float) relativeError;
@@ -170,7 +184,7 @@ public final class WindowShares {
      */
     public static WindowShares restore(float[] row, int classes) {
         int n = row.length < 4 ? -1 : (int) row[0];
-        if (n < 1 || row.length != 4 + 2 * n + classes + SHAPE * SHAPE) {
+        if (n < 1 || row.length != 4 + 2 * n + classes + SHAPE * SHAPE + 1) {
             throw new IllegalArgumentException("not the window shares of this system");
         }
         double[] energies = new double[n];
@@ -187,6 +201,6 @@ public final class WindowShares {
         for (int i = 0; i < shape.length; i++) {
             shape[i] = row[4 + 2 * n + factors.length + i];
         }
-        return new WindowShares(row[3], shape, factors, energies, relative, row[1], row[2]);
+        return new WindowShares(row[3], row[row.length - 1], shape, factors, energies, relative, row[1], row[2]);
     }
 }

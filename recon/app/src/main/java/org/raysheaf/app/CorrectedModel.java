@@ -15,6 +15,7 @@ import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.correct.Attenuation;
 import org.raysheaf.engine.correct.Backgrounds;
+import org.raysheaf.engine.correct.PileUp;
 import org.raysheaf.engine.correct.Randoms;
 import org.raysheaf.engine.correct.Scatter;
 import org.raysheaf.engine.ray.EventBackground;
@@ -128,7 +129,7 @@ record CorrectedModel(
             if (attenuation != null) {
                 sheaves = sheaves.with(attenuation);
             }
-            double survival = survival();
+            double survival = survival(window);
             double perUnit = 1e-3 * header.pairsPerBecquerel() * survival;
             Image counts = Reconstruction.countsPerBqPerMl(
                     systems.sensitivity(sheaves, grid, key(window, efficiencies, attenuation)),
@@ -288,14 +289,18 @@ record CorrectedModel(
             return new Attenuation(map);
         }
 
-        private double survival() {
-            if (!corrections.losses()) {
-                left.add("losses in pairing");
+        private double survival(@Nullable WindowShares window) {
+            PairingRecord pairing = header.pairing();
+            if (!corrections.losses() || pairing == null) {
+                left.add("losses in pairing and by pile-up");
                 return 1;
             }
-            double survival = Randoms.survival(header.pairing(), header.durationS());
-            applied.put("share_of_pairs_not_spoilt_by_a_third_photon", survival);
-            return survival;
+            double unspoilt = Randoms.survival(pairing, header.durationS());
+            double piled =
+                    window == null ? 1 : PileUp.pairShare(systems.system(), header, pairing, window.pileUpShare());
+            applied.put("share_of_pairs_not_spoilt_by_a_third_photon", unspoilt);
+            applied.put("share_of_pairs_left_by_pile_up", piled);
+            return unspoilt * piled;
         }
 
         private @Nullable Randoms randoms() throws IOException {

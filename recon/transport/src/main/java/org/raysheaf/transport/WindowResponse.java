@@ -43,6 +43,11 @@ public final class WindowResponse {
     private static final int PHOTONS_PER_CHUNK = 1 << 16;
     private static final int SHAPE = WindowShares.SHAPE;
 
+    /** Bins of the energy spectrum, and their width (keV). */
+    private static final int SPECTRUM = 300;
+
+    private static final double SPECTRUM_KEV = 5;
+
     /** Expected signals below which a bin or class is drawn toward the mean. */
     private static final double LEAST = 50;
 
@@ -69,6 +74,7 @@ public final class WindowResponse {
         final double[] expected;
         final double[] shapeSignals = new double[SHAPE * SHAPE];
         final double[] shapeExpected = new double[SHAPE * SHAPE];
+        final double[] spectrum = new double[SPECTRUM];
         double offsetTimesSlope;
         double slopeSquared;
 
@@ -85,6 +91,9 @@ public final class WindowResponse {
             for (int i = 0; i < shapeSignals.length; i++) {
                 shapeSignals[i] += other.shapeSignals[i];
                 shapeExpected[i] += other.shapeExpected[i];
+            }
+            for (int i = 0; i < SPECTRUM; i++) {
+                spectrum[i] += other.spectrum[i];
             }
             offsetTimesSlope += other.offsetTimesSlope;
             slopeSquared += other.slopeSquared;
@@ -249,6 +258,7 @@ public final class WindowResponse {
             for (int row = 0; row < pulses.size(); row++) {
                 ReadoutPlan.Block block = readout.blockOfChannel(pulses.channel[row]);
                 double keV = Decoder.energyKeV(block, pulses, row);
+                counts.spectrum[(int) Math.min(SPECTRUM - 1, keV / SPECTRUM_KEV)]++;
                 boolean seen = keV >= block.lowestKeV && keV <= block.highestKeV;
                 if (seen && keV >= lowestKeV && keV <= highestKeV) {
                     decoder.decode(block, pulses, row);
@@ -310,6 +320,29 @@ public final class WindowResponse {
         return shape;
     }
 
+    /**
+     * What pile-up leaves: signals in the window when the energy of another pulse of the same spectrum is added, over those without. The
+     * first pulse must have been noticed at all.
+     */
+    private double pileUpShare(double[] spectrum) {
+        double all = Arrays.stream(spectrum).sum();
+        double least = system.blocks().stream()
+                .mapToDouble(block -> block.kind().readout().lowestKeV())
+                .min()
+                .orElse(0);
+        double clean = 0;
+        double piled = 0;
+        for (int i = 0; i < SPECTRUM; i++) {
+            double first = (i + 0.5) * SPECTRUM_KEV;
+            clean += first >= lowestKeV && first <= highestKeV ? spectrum[i] : 0;
+            for (int j = 0; first >= least && j < SPECTRUM; j++) {
+                double sum = first + (j + 0.5) * SPECTRUM_KEV;
+                piled += sum >= lowestKeV && sum <= highestKeV ? spectrum[i] * spectrum[j] / all : 0;
+            }
+        }
+        return clean > 0 ? piled / clean : 1;
+    }
+
     private WindowShares shares(Counts counts, double[] shape, double all, double[] relative) {
         double[] factors = new double[response.classes()];
         double squares = 0;
@@ -322,6 +355,14 @@ public final class WindowResponse {
             energies[i] = energyKeV(i);
         }
         double deeper = counts.slopeSquared > 0 ? -counts.offsetTimesSlope / counts.slopeSquared : 0;
-        return new WindowShares(deeper, shape, factors, energies, relative, all, Math.sqrt(squares / factors.length));
+        return new WindowShares(
+                deeper,
+                pileUpShare(counts.spectrum),
+                shape,
+                factors,
+                energies,
+                relative,
+                all,
+                Math.sqrt(squares / factors.length));
     }
 }
