@@ -150,17 +150,29 @@ public final class Backgrounds {
             double scatterClear,
             double attenuationLow,
             double attenuationMean) {
-        /** Fewer events than this on clear lines say too little about the scale of scatter. */
-        private static final double ENOUGH = 400;
+        /** What is known of the scale beforehand: scatter twice and more adds some per cent in small animals. */
+        private static final double PRIOR_SCALE = 1.07;
+
+        private static final double PRIOR_SD = 0.1;
+
+        /** How well the randoms on clear lines are known (relative): third photons spoil them unevenly. */
+        private static final double RANDOMS_SD = 0.02;
 
         /**
-         * The scale that makes expected scatter and randoms add up to the events found on lines clear of the object.
+         * The scale that makes expected scatter and randoms add up to the events found on lines clear of the object, weighed against what is
+         * known beforehand: where randoms outnumber scatter there, their error would otherwise become that of scatter.
          *
-         * @return the scale; 1 if there are too few such events
+         * @return the scale
          */
         public double scatterScale() {
-            boolean known = promptsClear >= ENOUGH && scatterClear > 0.1 * promptsClear;
-            return known ? Math.max(0, (promptsClear - randomsClear) / scatterClear) : 1;
+            if (!(scatterClear > 0)) {
+                return 1;
+            }
+            double found = (promptsClear - randomsClear) / scatterClear;
+            double sd = Math.hypot(Math.sqrt(promptsClear), RANDOMS_SD * randomsClear) / scatterClear;
+            double weight = 1 / (sd * sd);
+            double prior = 1 / (PRIOR_SD * PRIOR_SD);
+            return Math.max(0, (weight * found + prior * PRIOR_SCALE) / (weight + prior));
         }
     }
 
