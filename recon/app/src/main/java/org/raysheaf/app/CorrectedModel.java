@@ -15,6 +15,7 @@ import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.correct.Attenuation;
 import org.raysheaf.engine.correct.Backgrounds;
+import org.raysheaf.engine.correct.PhantomMaps;
 import org.raysheaf.engine.correct.PileUp;
 import org.raysheaf.engine.correct.Randoms;
 import org.raysheaf.engine.correct.Scatter;
@@ -55,8 +56,8 @@ record CorrectedModel(
         EventBackground background,
         Map<String, Object> applied,
         List<String> left) {
-    private static final double ATTENUATION_VOXEL_MM = 1;
-    private static final int SCATTER_POINTS = 500;
+    static final double ATTENUATION_VOXEL_MM = 1;
+    static final int SCATTER_POINTS = 500;
     private static final int SCATTER_ROUNDS = 2;
 
     /** Enough for a smooth estimate of scatter: ten updates. */
@@ -271,7 +272,7 @@ record CorrectedModel(
             Image map;
             if (phantomFile != null) {
                 Phantom phantom = Phantoms.read(resolve(phantomFile));
-                map = Attenuation.map(phantom, ATTENUATION_VOXEL_MM);
+                map = PhantomMaps.attenuation(phantom, ATTENUATION_VOXEL_MM);
             } else if (volumeFile != null) {
                 map = VolumeFile.read(resolve(volumeFile)).image().copy();
                 for (int j = 0; j < map.values().length; j++) {

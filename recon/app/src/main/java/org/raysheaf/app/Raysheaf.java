@@ -17,6 +17,7 @@ import picocli.CommandLine.Spec;
             CheckVerb.class,
             SimulateVerb.class,
             PairVerb.class,
+            NormalizeVerb.class,
             SensitivityVerb.class,
             ReconstructVerb.class,
             LinesVerb.class,
@@ -60,7 +61,8 @@ public final class Raysheaf implements Runnable {
     @Override
     public void run() {
         throw new CommandLine.ParameterException(
-                spec.commandLine(), "which verb? check, simulate, pair, sensitivity, reconstruct, lines or demo");
+                spec.commandLine(),
+                "which verb? check, simulate, pair, normalize, sensitivity, reconstruct, lines or demo");
     }
 
     /** The version of the program, for results. */
