@@ -35,24 +35,36 @@ final class Systems {
     private final Progress progress;
     private final Cache cache;
 
-    private Systems(String text, String source, Common common, ForkJoinPool pool, Progress progress)
+    private Systems(String text, String source, Common common, ForkJoinPool pool, Progress progress, Cache cache)
             throws IOException {
         this.text = text;
         this.common = common;
         this.pool = pool;
         this.progress = progress;
-        this.cache = common.cache();
+        this.cache = cache;
         this.system = new DetectorSystem(DescriptionReader.readText(text, source, "system", SystemDescription.class));
     }
 
     static Systems of(String text, String source, Common common, ForkJoinPool pool, Progress progress)
             throws IOException {
-        return new Systems(text, source, common, pool, progress);
+        return new Systems(text, source, common, pool, progress, common.cache());
+    }
+
+    /** The same with a cache of its own. */
+    static Systems of(String text, String source, Common common, ForkJoinPool pool, Progress progress, Path cacheFolder)
+            throws IOException {
+        return new Systems(text, source, common, pool, progress, new Cache(cacheFolder));
     }
 
     static Systems read(Path file, Common common, ForkJoinPool pool, Progress progress) throws IOException {
         DescriptionReader.read(file, "system", SystemDescription.class); // for errors that name the file
-        return new Systems(Files.readString(file, StandardCharsets.UTF_8), file.toString(), common, pool, progress);
+        return new Systems(
+                Files.readString(file, StandardCharsets.UTF_8),
+                file.toString(),
+                common,
+                pool,
+                progress,
+                common.cache());
     }
 
     DetectorSystem system() {
