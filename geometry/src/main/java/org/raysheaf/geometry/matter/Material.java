@@ -1,7 +1,9 @@
 package org.raysheaf.geometry.matter;
 
+import java.util.Collections;
 import java.util.Map;
 import java.util.Optional;
+import java.util.TreeMap;
 import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.settings.Problems;
@@ -21,7 +23,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param like name of a material of the library
  * @param densityGPerCm3 density (g/cm³), greater than 0
  * @param formula chemical formula without brackets; counts may be broken, as in {@code Lu1.8Y0.2SiO5}
- * @param massFractions share of each element in the mass; they add up to 1
+ * @param massFractions share of each element in the mass; they add up to 1. In the order of their symbols
  */
 public record Material(
         String name,
@@ -36,7 +38,8 @@ public record Material(
     private static final double BARN_MOL = 0.602214076;
 
     public Material {
-        massFractions = massFractions == null ? null : Map.copyOf(massFractions);
+        // Sorted, because descriptions are digested: the order of Map.copyOf changes with every start of Java.
+        massFractions = massFractions == null ? null : Collections.unmodifiableMap(new TreeMap<>(massFractions));
         Problems problems =
                 new Problems("material " + name).rule(!name.isBlank(), "name", "expected a name, found an empty text");
         if (attenuationLengthMm != null) {

@@ -2,8 +2,10 @@ package org.raysheaf.geometry.matter;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
+import static org.assertj.core.api.Assertions.entry;
 import static org.assertj.core.api.Assertions.within;
 
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import org.junit.jupiter.api.Test;
@@ -19,6 +21,20 @@ class MaterialTest {
         assertThat(fractions.attenuationPerMm(511, true)).isCloseTo(formula.attenuationPerMm(511, true), within(1e-8));
         assertThat(formula.attenuationPerMm(511, true))
                 .isCloseTo(Material.named("water").attenuationPerMm(511, true), within(1e-12));
+    }
+
+    /** Descriptions are digested, so equal settings must be written alike whatever order they were given in. */
+    @Test
+    void fractionsStandInOneOrder() {
+        Map<String, Double> backwards = new LinkedHashMap<>();
+        backwards.put("Zn", 0.1);
+        backwards.put("O", 0.5);
+        backwards.put("H", 0.1);
+        backwards.put("C", 0.3);
+        Map<String, Double> fractions = new Material("x", null, null, 1.0, null, backwards).massFractions();
+        assertThat(fractions).containsExactly(entry("C", 0.3), entry("H", 0.1), entry("O", 0.5), entry("Zn", 0.1));
+        backwards.put("C", 0.2);
+        assertThat(fractions).containsEntry("C", 0.3);
     }
 
     @Test
