@@ -6,6 +6,7 @@ import java.util.Optional;
 import java.util.TreeMap;
 import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.settings.Nearest;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
@@ -54,6 +55,7 @@ public record Material(
                             Materials.find(wanted).isPresent(),
                             like == null ? "name" : "like",
                             "expected a material of the library or a composition, found " + wanted
+                                    + "; the nearest is " + Nearest.to(wanted, Materials.names())
                                     + "; the library has " + String.join(", ", Materials.names()))
                     .rule(
                             formula == null && massFractions == null,

@@ -70,7 +70,7 @@ class MaterialTest {
     void refusesWhatIsNoMaterialAndSaysWhy() {
         assertThatThrownBy(() -> Material.named("wotar"))
                 .isInstanceOf(InvalidSettingsException.class)
-                .hasMessageContaining("found wotar")
+                .hasMessageContaining("found wotar; the nearest is water; the library has")
                 .hasMessageContaining("water, pmma");
         assertThatThrownBy(() -> new Material("x", null, null, 1.0, "H2X", null))
                 .hasMessageContaining("formula: expected elements with known cross sections")
@@ -87,5 +87,16 @@ class MaterialTest {
                 .hasMessageContaining("density_g_per_cm3: expected a number > 0, found -2");
         assertThatThrownBy(() -> new Material("x", 3.0, "water", null, null, null))
                 .hasMessageContaining("attenuation_length_mm: expected it alone");
+        assertThatThrownBy(() -> new Material("x", null, "leed", 1.0, null, null))
+                .hasMessageContaining("like: expected a material of the library or a composition, found leed")
+                .hasMessageContaining("the nearest is lead");
+        assertThatThrownBy(() -> new Material("x", null, "lead", null, "H2O", null))
+                .hasMessageContaining("like: expected no composition beside it");
+        assertThatThrownBy(() -> new Material("lead", null, null, 11.0, null, null))
+                .hasMessageContaining("density_g_per_cm3: expected formula, mass_fractions or like beside it");
+        assertThatThrownBy(() -> new Material("x", null, null, Double.NaN, "H2O", null))
+                .hasMessageContaining("density_g_per_cm3: expected a number > 0, found NaN");
+        assertThatThrownBy(() -> new Material("x", null, null, 1.0, null, Map.of("H", Double.NaN)))
+                .hasMessageContaining("mass_fractions: expected fractions from 0 to 1, found NaN of H");
     }
 }
