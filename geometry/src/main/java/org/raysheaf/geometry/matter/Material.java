@@ -163,8 +163,9 @@ public record Material(
      * interpolated log-log) and atomic weights A.
      *
      * @param process the process
-     * @param energyKeV energy of the photon (keV), 10 to 3000; outside, the nearest end counts
+     * @param energyKeV energy of the photon (keV), above 0; the table has 10 to 3000, outside, the nearest end counts
      * @return the coefficient (1/mm); for an ideal material all is photoelectric
+     * @throws IllegalArgumentException if the energy is not above 0 and the material is not ideal
      */
     public double attenuationPerMm(Interaction process, double energyKeV) {
         if (attenuationLengthMm != null) {
