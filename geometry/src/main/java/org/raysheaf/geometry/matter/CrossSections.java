@@ -49,8 +49,15 @@ final class CrossSections {
         return element(symbol).weight;
     }
 
-    /** Cross section (barn per atom) at an energy (keV); energies outside the table are taken as its ends. */
+    /**
+     * Cross section (barn per atom) at an energy (keV); energies outside the table are taken as its ends.
+     *
+     * @throws IllegalArgumentException if the energy is not above 0
+     */
     static double barn(String symbol, Interaction process, double energyKeV) {
+        if (!(energyKeV > 0)) {
+            throw new IllegalArgumentException("photon energy: expected more than 0 keV, found " + energyKeV);
+        }
         double inside = Math.max(LOWEST_KEV, Math.min(HIGHEST_KEV, energyKeV));
         return Objects.requireNonNull(element(symbol).curves.get(process)).at(inside);
     }

@@ -1,25 +1,56 @@
 package org.raysheaf.geometry.matter;
 
+import java.util.Collections;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import org.raysheaf.geometry.settings.Problems;
 
 /**
  * What a radionuclide emits, as far as a scan of annihilation photons or single gamma rays sees it. The library, {@code nuclides.csv},
- * has evaluated data with their sources. Lines are taken as independent of each other; true cascades are not followed.
+ * has evaluated data with their sources. Lines are taken as independent of each other; true cascades are not followed. A line that follows some
+ * positron branches only stands twice, one entry after the other, once with either timing, so that it comes with a positron as often as it does
+ * in nature; both entries together are one line, and a decay sends out at most one photon of it.
  *
  * @param nuclide name, half-life and positrons per decay
  * @param positrons the branches of the positron decay; their shares are of the positrons, adding up to 1; empty without any
- * @param gammas gamma rays other than annihilation photons
+ * @param gammas gamma rays other than annihilation photons, and X-rays where they matter
  */
 public record DecayScheme(Nuclide nuclide, List<PositronBranch> positrons, List<GammaLine> gammas) {
+    /** Departure of a sum of shares from 1 that is rounding in the last digit of a double, many times over. */
+    private static final double ROUNDING = 1e-9;
+
     private static final Map<String, DecayScheme> LIBRARY = read();
 
     public DecayScheme {
         positrons = List.copyOf(positrons);
         gammas = List.copyOf(gammas);
+        Problems problems = new Problems("decay scheme of " + nuclide.name());
+        double shares = 0;
+        for (int i = 0; i < positrons.size(); i++) {
+            problems.above("positrons[" + i + "].endpoint_keV", positrons.get(i).endpointKeV(), 0)
+                    .within("positrons[" + i + "].share", positrons.get(i).share(), 0, 1);
+            shares += positrons.get(i).share();
+        }
+        problems.rule(
+                positrons.isEmpty() || Math.abs(shares - 1) <= ROUNDING,
+                "positrons",
+                "expected shares that add up to 1, found " + shares);
+        problems.rule(
+                positrons.isEmpty() == (nuclide.positronBranching() == 0),
+                "positrons",
+                "expected branches if there are positrons and none if not, found " + positrons.size() + " with "
+                        + nuclide.positronBranching() + " positrons per decay");
+        for (int i = 0; i < gammas.size(); i++) {
+            GammaLine line = gammas.get(i);
+            // Lines without positron must find room in the decays that emit none.
+            double most = line.timing() == Timing.WITHOUT_POSITRON ? 1 - nuclide.positronBranching() : 1;
+            problems.above("gammas[" + i + "].energy_keV", line.energyKeV(), 0)
+                    .within("gammas[" + i + "].per_decay", line.perDecay(), 0, most);
+        }
+        problems.orThrow();
     }
 
     /**
@@ -43,7 +74,7 @@ public record DecayScheme(Nuclide nuclide, List<PositronBranch> positrons, List<
     public enum Timing {
         /** At the same time, as often with a positron as without. */
         TOGETHER,
-        /** Only in decays by electron capture, without a positron. */
+        /** Only in decays by electron capture, without a positron; so at most as often as there are such decays. */
         WITHOUT_POSITRON,
         /** Later, from a level that lives so long that it is in time with nothing. */
         LATER
@@ -87,7 +118,7 @@ public record DecayScheme(Nuclide nuclide, List<PositronBranch> positrons, List<
                     .toList();
             library.put(nuclide.name(), new DecayScheme(nuclide, positrons, gammas));
         }
-        return java.util.Collections.unmodifiableMap(library);
+        return Collections.unmodifiableMap(library);
     }
 
     private static Timing timing(List<String> line) {

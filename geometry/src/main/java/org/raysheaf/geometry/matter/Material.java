@@ -1,9 +1,12 @@
 package org.raysheaf.geometry.matter;
 
+import java.util.Collections;
 import java.util.Map;
 import java.util.Optional;
+import java.util.TreeMap;
 import java.util.function.Supplier;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.settings.Nearest;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
@@ -21,7 +24,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param like name of a material of the library
  * @param densityGPerCm3 density (g/cm³), greater than 0
  * @param formula chemical formula without brackets; counts may be broken, as in {@code Lu1.8Y0.2SiO5}
- * @param massFractions share of each element in the mass; they add up to 1
+ * @param massFractions share of each element in the mass; they add up to 1. In the order of their symbols
  */
 public record Material(
         String name,
@@ -36,7 +39,8 @@ public record Material(
     private static final double BARN_MOL = 0.602214076;
 
     public Material {
-        massFractions = massFractions == null ? null : Map.copyOf(massFractions);
+        // Sorted, because descriptions are digested: the order of Map.copyOf changes with every start of Java.
+        massFractions = massFractions == null ? null : Collections.unmodifiableMap(new TreeMap<>(massFractions));
         Problems problems =
                 new Problems("material " + name).rule(!name.isBlank(), "name", "expected a name, found an empty text");
         if (attenuationLengthMm != null) {
@@ -51,6 +55,7 @@ public record Material(
                             Materials.find(wanted).isPresent(),
                             like == null ? "name" : "like",
                             "expected a material of the library or a composition, found " + wanted
+                                    + "; the nearest is " + Nearest.to(wanted, Materials.names())
                                     + "; the library has " + String.join(", ", Materials.names()))
                     .rule(
                             formula == null && massFractions == null,
@@ -158,8 +163,9 @@ public record Material(
      * interpolated log-log) and atomic weights A.
      *
      * @param process the process
-     * @param energyKeV energy of the photon (keV), 10 to 3000; outside, the nearest end counts
+     * @param energyKeV energy of the photon (keV), above 0; the table has 10 to 3000, outside, the nearest end counts
      * @return the coefficient (1/mm); for an ideal material all is photoelectric
+     * @throws IllegalArgumentException if the energy is not above 0 and the material is not ideal
      */
     public double attenuationPerMm(Interaction process, double energyKeV) {
         if (attenuationLengthMm != null) {

@@ -1,5 +1,6 @@
 package org.raysheaf.geometry.matter;
 
+import java.util.ArrayList;
 import java.util.Collections;
 import java.util.HashMap;
 import java.util.LinkedHashMap;
@@ -7,6 +8,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Optional;
 import java.util.Set;
+import org.raysheaf.geometry.settings.Nearest;
 
 /** The library of materials: composition, density and the source of both; the resource {@code materials.csv} lists them. Immutable. */
 public final class Materials {
@@ -61,18 +63,24 @@ public final class Materials {
      *
      * @param name the name that was not found
      * @param own the description's own materials
-     * @return expected and found, in words
+     * @return expected and found, and what the name may have been meant to be, in words
      */
     public static String unknown(String name, List<Material> own) {
         StringBuilder text = new StringBuilder("expected a material of the library (")
                 .append(String.join(", ", names()))
                 .append(')');
+        List<String> known = new ArrayList<>(own.stream().map(Material::name).toList());
         if (!own.isEmpty()) {
             text.append(" or one of the materials here (")
-                    .append(String.join(", ", own.stream().map(Material::name).toList()))
+                    .append(String.join(", ", known))
                     .append(')');
         }
-        return text.append(", found ").append(name).toString();
+        known.addAll(names());
+        return text.append(", found ")
+                .append(name)
+                .append("; the nearest is ")
+                .append(Nearest.to(name, known))
+                .toString();
     }
 
     private static Map<String, Entry> read() {

@@ -54,8 +54,12 @@ public final class PositronRange {
      *
      * @param endpointKeV largest kinetic energy of the branch (keV), greater than 0
      * @return the distribution of distances in water
+     * @throws IllegalArgumentException if the energy is not finite and above 0
      */
     public static PositronRange of(double endpointKeV) {
+        if (!(endpointKeV > 0 && Double.isFinite(endpointKeV))) {
+            throw new IllegalArgumentException("endpoint energy: expected more than 0 keV, found " + endpointKeV);
+        }
         double range = csdaRangeMm(endpointKeV);
         for (double[] fit : FITS) {
             if (Math.abs(fit[0] - endpointKeV) < SAME_KEV) {

@@ -88,7 +88,8 @@ class SystemDescriptionTest {
                 .isInstanceOf(InvalidSettingsException.class)
                 .hasMessageContaining("materials[1].name: expected a new name, found glass a second time")
                 .hasMessageContaining("blocks[0].material: expected a material of the library (water, pmma, ")
-                .hasMessageContaining("or one of the materials here (glass, glass), found scintillator")
+                .hasMessageContaining(
+                        "or one of the materials here (glass, glass), found scintillator; the nearest is ")
                 .hasMessageContaining("placements[0].block: expected one of [tile], found brick");
     }
 

@@ -1,6 +1,7 @@
 package org.raysheaf.geometry.matter;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
 import org.junit.jupiter.api.Test;
@@ -145,16 +146,49 @@ class AttenuationTest {
         }
     }
 
-    /** Derived path checks of reference-values C. */
     @Test
-    void pathsThroughMatter() {
-        double water = Material.named("water").attenuationPerMm(510.999, true);
-        assertThat(Math.exp(-25 * water)).isCloseTo(0.78667, within(0.78667 * TOLERANCE * 0.24));
-        assertThat(Math.exp(-30 * water)).isCloseTo(0.74981, within(0.74981 * TOLERANCE * 0.288));
-        double hdpe = Material.named("hdpe").attenuationPerMm(510.999, true);
-        assertThat(Math.exp(-50 * hdpe)).isCloseTo(0.62308, within(0.62308 * TOLERANCE * 0.473));
-        assertThat(1 - Math.exp(-10 / Material.named("lso").meanFreePathMm())).isCloseTo(0.5593, within(0.002));
-        assertThat(1 - Math.exp(-20 / Material.named("bgo").meanFreePathMm())).isCloseTo(0.8366, within(0.002));
+    void energiesOutsideTheTablesCountAsTheirEnds() {
+        Material lead = Material.named("lead");
+        assertThat(lead.attenuationPerMm(5, true)).isEqualTo(lead.attenuationPerMm(10, true));
+        assertThat(lead.attenuationPerMm(4000, true)).isEqualTo(lead.attenuationPerMm(3000, true));
+        for (double energyKeV : new double[] {0, -1, Double.NaN}) {
+            assertThatThrownBy(() -> lead.attenuationPerMm(energyKeV, true))
+                    .hasMessage("photon energy: expected more than 0 keV, found " + energyKeV);
+        }
+    }
+
+    /** Derived path checks of reference-values C, printed with 5 decimals: exp(−µL) at 511 keV, coherent scatter included. */
+    @ParameterizedTest
+    @CsvSource({
+        "water, 25, 0.78667",
+        "water, 30, 0.74981",
+        "hdpe, 25, 0.78935",
+        "hdpe, 50, 0.62308",
+        "hdpe, 100, 0.38822"
+    })
+    void photonsThatGetThrough(String name, double pathMm, double expected) {
+        double depth = pathMm * Material.named(name).attenuationPerMm(510.999, true);
+        // an error of µ, carried over
+        assertThat(Math.exp(-depth)).isCloseTo(expected, within(TOLERANCE * depth * expected + 5e-6));
+    }
+
+    /** Efficiencies of reference-values C, printed with 4 decimals: 1 − exp(−µL) at 511 keV without coherent scatter. */
+    @ParameterizedTest
+    @CsvSource({
+        "lso, 10, 0.5593",
+        "lso, 20, 0.8058",
+        "bgo, 10, 0.5958",
+        "bgo, 20, 0.8366",
+        "lyso, 10, 0.5387",
+        "lyso, 20, 0.7872",
+        "nai, 10, 0.2780",
+        "czt, 10, 0.3932"
+    })
+    void photonsThatInteract(String name, double pathMm, double expected) {
+        Material material = Material.named(name);
+        double depth = pathMm / material.meanFreePathMm();
+        assertThat(1 - material.transmission(pathMm))
+                .isCloseTo(expected, within(TOLERANCE * depth * (1 - expected) + 5e-5));
     }
 
     @Test

@@ -2,8 +2,10 @@ package org.raysheaf.geometry.matter;
 
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
+import static org.assertj.core.api.Assertions.entry;
 import static org.assertj.core.api.Assertions.within;
 
+import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
 import org.junit.jupiter.api.Test;
@@ -19,6 +21,20 @@ class MaterialTest {
         assertThat(fractions.attenuationPerMm(511, true)).isCloseTo(formula.attenuationPerMm(511, true), within(1e-8));
         assertThat(formula.attenuationPerMm(511, true))
                 .isCloseTo(Material.named("water").attenuationPerMm(511, true), within(1e-12));
+    }
+
+    /** Descriptions are digested, so equal settings must be written alike whatever order they were given in. */
+    @Test
+    void fractionsStandInOneOrder() {
+        Map<String, Double> backwards = new LinkedHashMap<>();
+        backwards.put("Zn", 0.1);
+        backwards.put("O", 0.5);
+        backwards.put("H", 0.1);
+        backwards.put("C", 0.3);
+        Map<String, Double> fractions = new Material("x", null, null, 1.0, null, backwards).massFractions();
+        assertThat(fractions).containsExactly(entry("C", 0.3), entry("H", 0.1), entry("O", 0.5), entry("Zn", 0.1));
+        backwards.put("C", 0.2);
+        assertThat(fractions).containsEntry("C", 0.3);
     }
 
     @Test
@@ -54,7 +70,7 @@ class MaterialTest {
     void refusesWhatIsNoMaterialAndSaysWhy() {
         assertThatThrownBy(() -> Material.named("wotar"))
                 .isInstanceOf(InvalidSettingsException.class)
-                .hasMessageContaining("found wotar")
+                .hasMessageContaining("found wotar; the nearest is water; the library has")
                 .hasMessageContaining("water, pmma");
         assertThatThrownBy(() -> new Material("x", null, null, 1.0, "H2X", null))
                 .hasMessageContaining("formula: expected elements with known cross sections")
@@ -71,5 +87,16 @@ class MaterialTest {
                 .hasMessageContaining("density_g_per_cm3: expected a number > 0, found -2");
         assertThatThrownBy(() -> new Material("x", 3.0, "water", null, null, null))
                 .hasMessageContaining("attenuation_length_mm: expected it alone");
+        assertThatThrownBy(() -> new Material("x", null, "leed", 1.0, null, null))
+                .hasMessageContaining("like: expected a material of the library or a composition, found leed")
+                .hasMessageContaining("the nearest is lead");
+        assertThatThrownBy(() -> new Material("x", null, "lead", null, "H2O", null))
+                .hasMessageContaining("like: expected no composition beside it");
+        assertThatThrownBy(() -> new Material("lead", null, null, 11.0, null, null))
+                .hasMessageContaining("density_g_per_cm3: expected formula, mass_fractions or like beside it");
+        assertThatThrownBy(() -> new Material("x", null, null, Double.NaN, "H2O", null))
+                .hasMessageContaining("density_g_per_cm3: expected a number > 0, found NaN");
+        assertThatThrownBy(() -> new Material("x", null, null, 1.0, null, Map.of("H", Double.NaN)))
+                .hasMessageContaining("mass_fractions: expected fractions from 0 to 1, found NaN of H");
     }
 }

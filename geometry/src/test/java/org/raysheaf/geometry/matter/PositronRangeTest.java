@@ -1,6 +1,7 @@
 package org.raysheaf.geometry.matter;
 
 import static org.assertj.core.api.Assertions.assertThat;
+import static org.assertj.core.api.Assertions.assertThatThrownBy;
 import static org.assertj.core.api.Assertions.within;
 
 import java.util.Arrays;
@@ -9,6 +10,7 @@ import org.apache.commons.rng.simple.RandomSource;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
+import org.junit.jupiter.params.provider.ValueSource;
 
 /** Against reference-values E: CSDA ranges [C], widths of the fits of Levin and Hoffman [fits M, widths C]. */
 class PositronRangeTest {
@@ -75,6 +77,13 @@ class PositronRangeTest {
             at += bin / 8;
         }
         return at + bin / 2;
+    }
+
+    @ParameterizedTest
+    @ValueSource(doubles = {0, -1, Double.NaN, Double.POSITIVE_INFINITY})
+    void refusesEndpointsThatAreNone(double endpointKeV) {
+        assertThatThrownBy(() -> PositronRange.of(endpointKeV))
+                .hasMessage("endpoint energy: expected more than 0 keV, found " + endpointKeV);
     }
 
     @Test

@@ -12,6 +12,7 @@ import java.util.Optional;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.settings.InvalidSettingsException;
+import org.raysheaf.geometry.settings.Nearest;
 import org.raysheaf.geometry.settings.Problems;
 import org.yaml.snakeyaml.nodes.MappingNode;
 import org.yaml.snakeyaml.nodes.Node;

@@ -57,13 +57,14 @@ class OwnDescriptionsTest {
 
     @Test
     void pointsAtTheLineOfARuleThatTheSystemStates() {
-        String text = RINGS.replace("material: crystal", "material: glass").replace("[1.7, 1.7, 13]", "[1.7, 1.7, 14]");
+        String text =
+                RINGS.replace("material: crystal", "material: cristal").replace("[1.7, 1.7, 13]", "[1.7, 1.7, 14]");
 
         assertThatExceptionOfType(DescriptionException.class)
                 .isThrownBy(() -> read(text))
                 .withMessageStartingWith(
                         "rings.yaml, line 13, field blocks[0].material: expected a material of the library (")
-                .withMessageEndingWith("or one of the materials here (crystal), found glass");
+                .withMessageEndingWith("or one of the materials here (crystal), found cristal; the nearest is crystal");
     }
 
     @Test

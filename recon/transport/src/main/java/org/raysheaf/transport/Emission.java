@@ -75,15 +75,23 @@ final class Emission {
      */
     boolean decay(double[] point, Flight flight) {
         boolean positron = random.nextDouble() < plan.positronsPerDecay;
-        for (DecayScheme.GammaLine line : plan.gammas) {
-            double chance = switch (line.timing()) {
+        double chance = 0;
+        for (int i = 0; i < plan.gammas.size(); i++) {
+            DecayScheme.GammaLine line = plan.gammas.get(i);
+            chance += switch (line.timing()) {
                 case TOGETHER -> line.perDecay();
                 case WITHOUT_POSITRON -> positron ? 0 : line.perDecay() / (1 - plan.positronsPerDecay);
                 case LATER -> 0;
             };
+            // A line may stand twice, once with either timing; it is still one photon at most.
+            boolean again = i + 1 < plan.gammas.size() && plan.gammas.get(i + 1).energyKeV() == line.energyKeV();
+            if (again) {
+                continue;
+            }
             if (chance > 0 && random.nextDouble() < chance) {
                 gamma(point, line.energyKeV(), flight);
             }
+            chance = 0;
         }
         if (positron) {
             travel(point);

@@ -150,6 +150,38 @@ class EmissionTest {
     }
 
     @Test
+    void aLineThatFollowsSomeBranchesComesOnceAndWithItsPositrons() {
+        // reference-values D, I-124: the branches of 1534.9 and 812.1 keV, 11.99 % of decays, pass through the level of
+        // 602.7 keV, which sends out 62.9 photons per 100 decays
+        World world = new World(SLABS, Trials.sources(new Source.Point("p", Vector3.ZERO, 1)), Physics.STRAIGHT);
+        Physics physics = new Physics(false, 0, true, false, "vacuum");
+        Emission emission =
+                new Emission(world, new Emission.Plan(DecayScheme.find("I-124").orElseThrow(), physics), random);
+        Flight flight = new Flight(world, deposits, random);
+        int decays = 300_000;
+        int seen = 0;
+        int withPair = 0;
+        for (int i = 0; i < decays; i++) {
+            deposits.clear();
+            emission.decay(new double[3], flight);
+            int lines = 0;
+            int annihilation = 0;
+            for (int k = 0; k < deposits.size(); k++) {
+                lines += Math.abs(deposits.energyKeV[k] - 602.73) < 1 ? 1 : 0;
+                annihilation += Math.abs(deposits.energyKeV[k] - 511) < 1 ? 1 : 0;
+            }
+            assertThat(lines).isLessThanOrEqualTo(1);
+            seen += lines;
+            withPair += lines > 0 && annihilation > 0 ? 1 : 0;
+        }
+        // a third of all directions meets a slab, and so does a third of all opposite pairs
+        double single = 0.629 / 3;
+        double joint = 0.1199 / 9;
+        assertThat((double) seen / decays).isCloseTo(single, within(3 * Math.sqrt(single * (1 - single) / decays)));
+        assertThat((double) withPair / decays).isCloseTo(joint, within(3 * Math.sqrt(joint * (1 - joint) / decays)));
+    }
+
+    @Test
     void betaRaysOfLutetiumHaveTheirMean() {
         // reference-values C: mean 182 keV, largest 593 keV; the allowed shape used here may differ from the true one
         // by 5 %

@@ -1,4 +1,4 @@
-package org.raysheaf.io.description;
+package org.raysheaf.geometry.settings;
 
 import static org.assertj.core.api.Assertions.assertThat;
 

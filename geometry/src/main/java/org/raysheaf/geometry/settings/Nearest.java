@@ -1,14 +1,20 @@
-package org.raysheaf.io.description;
+package org.raysheaf.geometry.settings;
 
 import java.util.Collection;
 import java.util.Comparator;
 
 /** Finds the word that a mistyped one was probably meant to be. */
-final class Nearest {
+public final class Nearest {
     private Nearest() {}
 
-    /** The candidate with the smallest edit distance; the first one among equals. */
-    static String to(String word, Collection<String> candidates) {
+    /**
+     * The candidate with the smallest edit distance; the first one among equals.
+     *
+     * @param word the word that was found
+     * @param candidates the words that it may have been meant to be, at least one
+     * @return one of the candidates
+     */
+    public static String to(String word, Collection<String> candidates) {
         return candidates.stream()
                 .min(Comparator.comparingInt(candidate -> distance(word, candidate)))
                 .orElseThrow();
