@@ -34,6 +34,7 @@ import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
 import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.cache.Cache;
+import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.efficiency.EfficiencyFile;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.volume.VolumeFile;
@@ -131,6 +132,7 @@ record CorrectedModel(
                 sheaves = sheaves.with(attenuation);
             }
             double survival = survival(window);
+            survival /= calibration();
             double perUnit = 1e-3 * header.pairsPerBecquerel() * survival;
             Image counts = Reconstruction.countsPerBqPerMl(
                     systems.sensitivity(sheaves, grid, key(window, efficiencies, attenuation)),
@@ -302,6 +304,24 @@ record CorrectedModel(
             applied.put("share_of_pairs_not_spoilt_by_a_third_photon", unspoilt);
             applied.put("share_of_pairs_left_by_pile_up", piled);
             return unspoilt * piled;
+        }
+
+        /** The factor that a measured phantom asks for; counting with fewer pairs per becquerel multiplies the image with it. */
+        private double calibration() throws IOException {
+            String name = corrections.calibration();
+            if (name == null) {
+                return 1;
+            }
+            Calibration calibration = DescriptionReader.read(resolve(name), "calibration", Calibration.class);
+            String system = systems.system().description().name();
+            if (!calibration.system().equals(system)) {
+                throw new IOException(
+                        name + ": expected a calibration of " + system + ", found one of " + calibration.system());
+            }
+            applied.put(
+                    "calibration",
+                    Map.of("factor", calibration.factor(), "relative_error", calibration.relativeError()));
+            return calibration.factor();
         }
 
         private @Nullable Randoms randoms() throws IOException {

@@ -15,6 +15,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param scatter whether to estimate scatter in the object; needs attenuation
  * @param losses whether to count with pairs spoilt by a third photon, where the list says how crowds were treated
  * @param efficiencies path of a file with the efficiency of each element, as {@code normalize} writes it
+ * @param calibration path of a calibration, as {@code reconstruct --reference} writes it; the image is multiplied with its factor
  */
 record Corrections(
         @Default("true") boolean window,
@@ -24,10 +25,11 @@ record Corrections(
         @Default("auto") RandomsFrom randoms,
         @Default("true") boolean scatter,
         @Default("true") boolean losses,
-        @Nullable String efficiencies) {
+        @Nullable String efficiencies,
+        @Nullable String calibration) {
     /** Everything that a list alone allows. */
     static final Corrections OF_A_BARE_LIST =
-            new Corrections(true, null, null, null, RandomsFrom.AUTO, true, true, null);
+            new Corrections(true, null, null, null, RandomsFrom.AUTO, true, true, null, null);
 
     /** Where the rate of random coincidences comes from. */
     enum RandomsFrom {

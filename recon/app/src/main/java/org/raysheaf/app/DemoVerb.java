@@ -29,6 +29,6 @@ final class DemoVerb extends Verb {
         common().note(
                         "A list of about 400,000 coincidences, simulated for the invented scanner heron-12, becomes an image.");
         common().note("The detector's response is worked out first; that takes longest and is kept for the next time.");
-        ReconstructVerb.reconstruct(common(), plan, null, out, true);
+        ReconstructVerb.reconstruct(common(), plan, null, out, true, null);
     }
 }

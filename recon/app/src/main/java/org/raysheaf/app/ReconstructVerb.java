@@ -5,6 +5,7 @@ import java.nio.file.Path;
 import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.io.description.DescriptionReader;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
@@ -27,14 +28,23 @@ final class ReconstructVerb extends Verb {
     @Option(names = "--halves", description = "Also the images of the odd and of the even events.")
     private boolean halves;
 
+    @Option(
+            names = "--reference",
+            paramLabel = "PHANTOM.yaml",
+            description =
+                    "The list is of this uniform phantom of known activity: also write calibration.yaml, for later lists.")
+    private @Nullable Path reference;
+
     ReconstructVerb() {}
 
     @Override
     void run() throws IOException {
-        reconstruct(common(), input, with, out, halves);
+        Phantom known = reference == null ? null : Phantoms.read(reference);
+        reconstruct(common(), input, with, out, halves, known);
     }
 
-    static void reconstruct(Common common, Path input, @Nullable Path with, Path out, boolean halves)
+    static void reconstruct(
+            Common common, Path input, @Nullable Path with, Path out, boolean halves, @Nullable Phantom known)
             throws IOException {
         ResultFolder folder = new ResultFolder(out, common.replace());
         folder.requireFree();
@@ -57,7 +67,14 @@ final class ReconstructVerb extends Verb {
         }
         ForkJoinPool pool = common.pool();
         Reconstruction done = Reconstruction.of(list, plan.with(common.lanes(), halves), base, common, pool);
-        Map<String, Object> results = folder.write(done, pool.getParallelism());
+        Calibration calibration = known == null
+                ? null
+                : Calibration.of(
+                        done.whole().image(),
+                        known,
+                        0.5 * done.systems().system().fieldOfView().lengthMm(),
+                        done.systems().system().description().name());
+        Map<String, Object> results = folder.write(done, calibration, pool.getParallelism());
         common.print(results, folder.lines(done));
     }
 }

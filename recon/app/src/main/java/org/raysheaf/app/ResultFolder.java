@@ -17,6 +17,8 @@ import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.io.cache.Cache;
+import org.raysheaf.io.description.DescriptionWriter;
+import org.raysheaf.io.file.AtomicFile;
 import org.raysheaf.io.picture.SlicePicture;
 import org.raysheaf.io.result.NotKnown;
 import org.raysheaf.io.result.ResultFile;
@@ -33,6 +35,7 @@ final class ResultFolder {
             "activity-even.nii.gz",
             "sensitivity.nii.gz",
             "planes.png",
+            "calibration.yaml",
             "result.json");
 
     private final Path folder;
@@ -57,7 +60,7 @@ final class ResultFolder {
     }
 
     /** Writes everything and returns what result.json says. */
-    Map<String, Object> write(Reconstruction done, int threads) throws IOException {
+    Map<String, Object> write(Reconstruction done, @Nullable Calibration calibration, int threads) throws IOException {
         Files.createDirectories(folder);
         Image activity = kilo(done.whole().image());
         volume(activity, UNIT, "activity.nii.gz");
@@ -72,6 +75,11 @@ final class ResultFolder {
         SlicePicture.write(
                 activity, UNIT, centre(activity), "activity concentration", folder.resolve("planes.png"), replace);
         Map<String, Object> results = results(done, activity, threads);
+        if (calibration != null) {
+            results.put("calibration", calibration);
+            String text = DescriptionWriter.render("calibration", calibration);
+            AtomicFile.write(folder.resolve("calibration.yaml"), replace, file -> Files.writeString(file, text));
+        }
         ResultFile.write(results, folder.resolve("result.json"), replace);
         return results;
     }

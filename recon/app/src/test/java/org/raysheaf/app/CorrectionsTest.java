@@ -159,7 +159,7 @@ class CorrectionsTest {
 
     @Test
     void lowRatesComeBackWithinTwoPerCent() throws IOException {
-        record("low", 6, 2000, 2_000_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 5);
+        record("low", 6, 2000, 1_500_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 5);
         Image image = reconstruct("low");
         double mean = mean(image, 0, 0.8 * RADIUS_MM, -22, 22);
         System.out.printf("low rate: mean %.4f, cupping %.4f%n", mean / 6, cupping(image));
@@ -174,8 +174,8 @@ class CorrectionsTest {
 
     @Test
     void highRatesComeBackWithinFourPerCent() throws IOException {
-        Path list =
-                record("high", 700, 10, 2_000_000, "window_ns: 8, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 6);
+        Path list = record(
+                "high", 700, 10, 2_000_000, "window_ns: 8.5, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 6);
         Image image = reconstruct("high");
         double[] truth = truth(list);
         double live = ListFile.open(list).header().liveTimeS()
@@ -215,7 +215,7 @@ class CorrectionsTest {
     void randomsAreFoundUnderEveryRuleForCrowds(Pairing.Crowds crowds) throws IOException {
         String name = crowds.name().toLowerCase(java.util.Locale.ROOT);
         String pairing = "window_ns: 5, lowest_keV: 350, highest_keV: 650, delay_ns: 200, crowds: " + name;
-        Path list = record(name, 500, 10, 800_000, pairing, 8);
+        Path list = record(name, 300, 10, 600_000, pairing, 8);
         ListFile opened = ListFile.open(list);
         Systems systems = systems(list);
         double found = Randoms.fromDelayed(opened, systems.system()).total();
@@ -242,7 +242,7 @@ class CorrectionsTest {
     @Test
     void scatterHasItsShapeAndSize() throws IOException {
         Path path = record(
-                "scatter", 6, 2000, 1_500_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 9);
+                "scatter", 6, 2000, 800_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 9);
         ListFile list = ListFile.open(path);
         Systems systems = systems(path);
         Phantom phantom = Phantoms.read(folder.resolve("scatter-phantom.yaml"));
@@ -320,7 +320,7 @@ class CorrectionsTest {
     @Test
     void unequalAndDeadCrystalsAreFound() throws IOException {
         Path equal = record(
-                "equal", 6, 2000, 2_500_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 10);
+                "equal", 6, 2000, 2_000_000, "window_ns: 3, lowest_keV: 350, highest_keV: 650, delay_ns: 200", 10);
         ListFile list = ListFile.open(equal);
         int elements = systems(equal).system().elements();
         SplittableRandom random = new SplittableRandom(15);

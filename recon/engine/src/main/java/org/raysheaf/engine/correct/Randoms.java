@@ -82,7 +82,8 @@ public final class Randoms {
     }
 
     /**
-     * From singles: 2τ · S_a · S_b · T with the one-sided window τ and the time T, times what {@link #promptShare} says.
+     * From singles: 2τ · S_a · S_b · T with the one-sided window τ and the time T, times the share that the rule for crowds leaves (see {@link
+     * #promptShare}).
      *
      * @param list the list, whose header tells the singles of each element
      * @param system its system
@@ -100,7 +101,7 @@ public final class Randoms {
         double durationS = list.header().durationS();
         double sum = pairSum(system, singles);
         double windowS = 1e-9 * pairing.settings().windowNs();
-        double expected = 2 * windowS * sum / durationS * rateSpread(list, durationS) * promptShare(pairing);
+        double expected = 2 * windowS * sum / durationS * rateSpread(list, durationS) * singlesShare(pairing);
         return scaledTo(system, singles, expected, 0);
     }
 
@@ -119,8 +120,8 @@ public final class Randoms {
     /**
      * Prompt random pairs for each delayed one. A random pair of two decays is lost or spoilt where a third photon, the partner of one of
      * the two, is in the window too. With the share q of decays that gave two accepted photons among those that gave any, and so 1 + q photons per
-     * decay: prompt groups come as (1−q)² of two photons, 2q(1−q) of three and q² of four, and every opened delayed window as
-     * (1+q) times (1−q) of one and q of two. Which of them make random pairs is up to the rule for crowds.
+     * decay: prompt groups of two decays come as (1−q)² of two photons, 2q(1−q) of three and q² of four, and every opened delayed window
+     * as (1+q) times (1−q) of one and q of two. Which of them make random pairs is up to the rule for crowds.
      *
      * @param pairing how the pairs were made; null gives 1
      * @return the ratio
@@ -130,15 +131,30 @@ public final class Randoms {
             return 1;
         }
         double q = pairShare(pairing);
-        Pairing.Crowds crowds = pairing.settings().crowds();
+        double delayed = switch (pairing.settings().crowds()) {
+            case DISCARD -> (1 + q) * (1 - q);
+            case EVERY_PAIR -> (1 + q) * (1 + q);
+            case FIRST_TWO, STRONGEST_TWO -> 1 + q;
+        };
+        return randomPairs(pairing.settings().crowds(), q) / delayed;
+    }
+
+    /** Random pairs for every two decays that share a window. */
+    private static double randomPairs(Pairing.Crowds crowds, double q) {
         double lone = 1 - q;
         return switch (crowds) {
-            case DISCARD -> lone * lone / ((1 + q) * lone);
-            case EVERY_PAIR -> 1;
-            case FIRST_TWO -> lone / (1 + q);
+            case DISCARD -> lone * lone;
+            case EVERY_PAIR -> (1 + q) * (1 + q);
+            case FIRST_TWO -> lone;
             // of three photons, two of which belong together, two of three pairs are random; of four, four of six
-            case STRONGEST_TWO -> (lone * lone + 2 * q * lone * 2 / 3 + q * q * 2 / 3) / (1 + q);
+            case STRONGEST_TWO -> lone * lone + 2 * q * lone * 2 / 3 + q * q * 2 / 3;
         };
+    }
+
+    /** Random pairs for each one that 2τ S_a S_b counts, which takes all photons. */
+    private static double singlesShare(PairingRecord pairing) {
+        double q = pairShare(pairing);
+        return randomPairs(pairing.settings().crowds(), q) / ((1 + q) * (1 + q));
     }
 
     /** Decays that gave two accepted photons, among those that gave any: from the numbers of singles and of true pairs. */
