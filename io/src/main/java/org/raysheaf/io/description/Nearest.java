@@ -3,12 +3,18 @@ package org.raysheaf.io.description;
 import java.util.Collection;
 import java.util.Comparator;
 
-/** Finds the word that a mistyped one was probably meant to be. */
-final class Nearest {
+/** Finds the word that a mistyped one was probably meant to be. Safe for use by several threads. */
+public final class Nearest {
     private Nearest() {}
 
-    /** The candidate with the smallest edit distance; the first one among equals. */
-    static String to(String word, Collection<String> candidates) {
+    /**
+     * The candidate with the smallest edit distance.
+     *
+     * @param word what was written
+     * @param candidates what could have been meant, at least one
+     * @return one of the candidates; the first among equals
+     */
+    public static String to(String word, Collection<String> candidates) {
         return candidates.stream()
                 .min(Comparator.comparingInt(candidate -> distance(word, candidate)))
                 .orElseThrow();

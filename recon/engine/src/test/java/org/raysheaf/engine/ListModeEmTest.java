@@ -17,11 +17,13 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.JosephTwin;
+import org.raysheaf.engine.ray.Lattice;
 import org.raysheaf.geometry.event.EventTally.Reason;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.settings.InvalidSettingsException;
 
 /** The estimator on 100,000 lines through a cylinder, seen by an ideal ring. */
 final class ListModeEmTest {
@@ -190,6 +192,26 @@ final class ListModeEmTest {
                 .hasMessageContaining("subsets")
                 .hasMessageContaining("lanes")
                 .hasMessageContaining("post_filter_fwhm_mm");
+    }
+
+    /** An image from nothing would be 0/0 in every voxel. */
+    @Test
+    void refusesAStoreWithoutEventsWhichAnySubsetsAreGoodFor() throws Exception {
+        EventStore empty = EventLoader.load(
+                LIST, LIST, new Image(GRID), EventSelection.ALL, 3, EventBackground.NONE, POOL, Progress.SILENT);
+        assertThat(empty.events()).isZero();
+        assertThat(empty.tally().setAsideFor(Reason.OUTSIDE_IMAGE)).isEqualTo(EVENTS);
+        assertThatThrownBy(() -> run(empty, new EstimationSettings(1, 3, 0, 0), POOL))
+                .hasMessageContaining("an estimate needs at least one event");
+    }
+
+    /** What a user's settings can cause must not look like a mistake in the program. */
+    @Test
+    void tooManySubsetsAndTooFineAGridAreMistakesInSettings() {
+        assertThatThrownBy(() -> load(EventSelection.ALL, EVENTS)).isInstanceOf(InvalidSettingsException.class);
+        assertThatThrownBy(() -> new Lattice(Grid.centred(40_000, 1, 1, 1)))
+                .isInstanceOf(InvalidSettingsException.class)
+                .hasMessageContaining("found 40000 x 1 x 1; take larger voxels");
     }
 
     @Test
