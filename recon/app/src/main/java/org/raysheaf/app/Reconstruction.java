@@ -23,7 +23,7 @@ import org.raysheaf.io.list.ListFile;
  * The way from a list to an image: its system, the sheaves of its events, the sensitivity, the estimate.
  *
  * @param list the list
- * @param systems the system that the list carries
+ * @param systems the system that the list carries, or that the plan names if the list carries none
  * @param plan how to reconstruct
  * @param grid the voxels
  * @param sensitivity expected counts of the whole list per Bq/mL
@@ -40,13 +40,14 @@ record Reconstruction(
         Estimate whole,
         @Nullable Estimate odd,
         @Nullable Estimate even) {
-    static Reconstruction of(Path listPath, ReconstructionPlan plan, Common common, ForkJoinPool pool)
+    static Reconstruction of(
+            Path listPath, ReconstructionPlan plan, @Nullable Path base, Common common, ForkJoinPool pool)
             throws IOException {
         Progress progress = common.progress();
         ListFile opened = ListFile.open(listPath);
         opened.warnings().forEach(common::note);
         ListHeader header = opened.header();
-        Systems systems = Systems.of(header.systemDescription(), listPath + " (its system)", common, pool, progress);
+        Systems systems = SystemOfList.of(header, listPath, plan.systemBeside(base), common, pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
         Grid grid = plan.grid().gridFor(systems.system());
         CoincidenceSheaves sheaves = systems.sheaves();

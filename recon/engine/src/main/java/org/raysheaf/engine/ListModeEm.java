@@ -44,17 +44,13 @@ public final class ListModeEm {
      * @param sensitivity expected counts of the whole list per Bq/mL in each voxel; above 0 wherever the store's support is
      * @param settings passes, subsets, lanes, filter
      * @param pool does the work
-     * @throws IllegalArgumentException if the store has no events or another number of subsets, the sensitivity another shape, or
-     *     if voxels of the support have no sensitivity
+     * @throws IllegalArgumentException if the store has another number of subsets, the sensitivity another shape, or if voxels of the
+     *     support have no sensitivity
      */
     public ListModeEm(EventStore store, Image sensitivity, EstimationSettings settings, ForkJoinPool pool) {
         if (store.subsets() != settings.subsets()) {
             throw new IllegalArgumentException("the events were dealt into " + store.subsets()
                     + " subsets, the settings ask for " + settings.subsets());
-        }
-        if (store.events() == 0) {
-            throw new IllegalArgumentException(
-                    "an estimate needs at least one event; ask the store's tally what became of them");
         }
         this.store = store;
         this.settings = settings;

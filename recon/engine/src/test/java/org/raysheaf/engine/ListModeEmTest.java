@@ -18,6 +18,7 @@ import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.JosephTwin;
 import org.raysheaf.engine.ray.Lattice;
+import org.raysheaf.engine.ray.NoUsableEventsException;
 import org.raysheaf.geometry.event.EventTally.Reason;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
@@ -196,13 +197,20 @@ final class ListModeEmTest {
 
     /** An image from nothing would be 0/0 in every voxel. */
     @Test
-    void refusesAStoreWithoutEventsWhichAnySubsetsAreGoodFor() throws Exception {
-        EventStore empty = EventLoader.load(
-                LIST, LIST, new Image(GRID), EventSelection.ALL, 3, EventBackground.NONE, POOL, Progress.SILENT);
-        assertThat(empty.events()).isZero();
-        assertThat(empty.tally().setAsideFor(Reason.OUTSIDE_IMAGE)).isEqualTo(EVENTS);
-        assertThatThrownBy(() -> run(empty, new EstimationSettings(1, 3, 0, 0), POOL))
-                .hasMessageContaining("an estimate needs at least one event");
+    void refusesAListWithoutUsableEventsAndSaysWhatBecameOfThem() {
+        assertThatThrownBy(() -> EventLoader.load(
+                        LIST,
+                        LIST,
+                        new Image(GRID),
+                        EventSelection.ALL,
+                        3,
+                        EventBackground.NONE,
+                        POOL,
+                        Progress.SILENT))
+                .isInstanceOfSatisfying(NoUsableEventsException.class, e -> {
+                    assertThat(e.tally().used()).isZero();
+                    assertThat(e.tally().setAsideFor(Reason.OUTSIDE_IMAGE)).isEqualTo(EVENTS);
+                });
     }
 
     /** What a user's settings can cause must not look like a mistake in the program. */

@@ -81,7 +81,8 @@ public final class EventLoader {
      * @param background the background of each event, or {@link EventBackground#NONE}
      * @param pool prepares the rays
      * @param progress hears of the events read
-     * @return the events, sorted; none if the list has none that can be used, and then the tally says why
+     * @return the events, sorted; at least one
+     * @throws NoUsableEventsException if no event was kept; its tally says why
      * @throws IOException if the list cannot be read or lacks a column that the maker needs
      * @throws org.raysheaf.geometry.settings.InvalidSettingsException if the list has too many events for memory, or usable ones but
      *     fewer than there are subsets
@@ -170,14 +171,15 @@ public final class EventLoader {
         events++;
     }
 
-    private EventStore sorted(int subsets, ForkJoinPool pool) {
-        // Without any event there is nothing to deal, and the tally, which the store hands on, says why.
+    private EventStore sorted(int subsets, ForkJoinPool pool) throws NoUsableEventsException {
+        if (events == 0) {
+            throw new NoUsableEventsException(tally);
+        }
         new Problems("estimation")
                 .rule(
-                        subsets >= 1 && (events == 0 || subsets <= events),
+                        subsets >= 1 && subsets <= events,
                         "subsets",
-                        "expected 1 to " + Math.max(1, events) + " subsets, for " + events + " usable events; found "
-                                + subsets)
+                        "expected 1 to " + events + " subsets, for " + events + " usable events; found " + subsets)
                 .orThrow();
         int[] starts = new int[subsets + 1];
         for (int s = 0; s < subsets; s++) {
