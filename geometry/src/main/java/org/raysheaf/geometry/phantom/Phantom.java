@@ -40,8 +40,7 @@ public final class Phantom {
      *
      * @param description a sound description
      * @param volume the volume of labels that it names, or null if it names none
-     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if one of the two is there without the other
-     * @throws IllegalArgumentException if a voxel holds no label
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if one of the two is there without the other, or a voxel holds no label
      */
     public Phantom(PhantomDescription description, @Nullable Image volume) {
         LabelledVolume labels = description.volume();

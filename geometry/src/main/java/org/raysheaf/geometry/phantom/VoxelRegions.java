@@ -5,6 +5,7 @@ import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Pose;
 import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.geometry.settings.Problems;
 import org.raysheaf.geometry.solid.Bounds;
 
 /** Which label fills each voxel, looked up fast. Immutable. */
@@ -17,7 +18,7 @@ final class VoxelRegions {
     /**
      * Reads a volume of labels.
      *
-     * @throws IllegalArgumentException if a voxel is no whole number
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if a voxel is no whole number
      */
     VoxelRegions(LabelledVolume description, Image volume) {
         grid = volume.grid();
@@ -30,8 +31,13 @@ final class VoxelRegions {
         for (int j = 0; j < labelOf.length; j++) {
             float value = volume.values()[j];
             if (!(value >= 0 && value < table.length && value == Math.rint(value))) {
-                throw new IllegalArgumentException(description.file()
-                        + ": expected whole numbers from 0 to 65535 as labels, found " + value + " in voxel " + j);
+                new Problems("phantom")
+                        .rule(
+                                false,
+                                "volume.file",
+                                "expected whole numbers from 0 to 65535 as labels in " + description.file() + ", found "
+                                        + value + " in voxel " + j)
+                        .orThrow();
             }
             labelOf[j] = (short) table[(int) value];
         }

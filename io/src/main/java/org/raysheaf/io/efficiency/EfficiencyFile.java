@@ -1,14 +1,11 @@
 package org.raysheaf.io.efficiency;
 
 import java.io.IOException;
-import java.nio.charset.StandardCharsets;
 import java.nio.file.Path;
-import java.security.MessageDigest;
-import java.security.NoSuchAlgorithmException;
 import java.util.ArrayList;
-import java.util.HexFormat;
 import java.util.List;
 import java.util.Optional;
+import org.raysheaf.io.file.Sha256;
 import org.raysheaf.io.hdf5.Hdf5File;
 import org.raysheaf.io.hdf5.Hdf5Writer;
 import org.raysheaf.io.hdf5.StoredDataset;
@@ -52,7 +49,7 @@ public final class EfficiencyFile {
             throws IOException {
         try (Hdf5Writer file = Hdf5Writer.create(path, replace)) {
             file.root().attribute(MARK, VERSION);
-            file.root().attribute(SYSTEM, sha256(systemText));
+            file.root().attribute(SYSTEM, Sha256.ofText(systemText));
             file.root()
                     .array(EFFICIENCY, floats(efficiencies), efficiencies.length)
                     .attribute("unit", "1");
@@ -127,18 +124,9 @@ public final class EfficiencyFile {
             throw new IOException(place + ": expected efficiencies of " + elements + " elements, found "
                     + efficiencies.length + "; it belongs to another system, make one with: raysheaf normalize");
         }
-        if (!systemSha256.isEmpty() && !systemSha256.equals(sha256(systemText))) {
+        if (!systemSha256.isEmpty() && !systemSha256.equals(Sha256.ofText(systemText))) {
             throw new IOException(place + ": expected the efficiencies of the list's own system, found those of"
                     + " another description; make them again with: raysheaf normalize");
-        }
-    }
-
-    private static String sha256(String text) {
-        try {
-            byte[] digest = MessageDigest.getInstance("SHA-256").digest(text.getBytes(StandardCharsets.UTF_8));
-            return HexFormat.of().formatHex(digest);
-        } catch (NoSuchAlgorithmException e) {
-            throw new IllegalStateException("every Java has SHA-256", e);
         }
     }
 

@@ -1,7 +1,10 @@
 package org.raysheaf.io.hdf5;
 
 import java.io.IOException;
+import java.io.InputStream;
+import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 
 /**
  * An HDF5 file open for reading. Objects taken from it can be used until it is closed. Every read either gives what was written or throws
@@ -34,6 +37,20 @@ public final class Hdf5File implements AutoCloseable {
         } catch (IOException | RuntimeException e) {
             bytes.close();
             throw e;
+        }
+    }
+
+    /**
+     * Tells from its first bytes whether a file is HDF5, whatever its name; the rest may be damaged.
+     *
+     * @param path the file
+     * @return whether it begins as an HDF5 file does
+     * @throws IOException if it cannot be read
+     */
+    public static boolean recognises(Path path) throws IOException {
+        byte[] signature = Superblock.signature();
+        try (InputStream in = Files.newInputStream(path)) {
+            return Arrays.equals(in.readNBytes(signature.length), signature);
         }
     }
 

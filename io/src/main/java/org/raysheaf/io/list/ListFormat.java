@@ -1,9 +1,7 @@
 package org.raysheaf.io.list;
 
-import java.nio.charset.StandardCharsets;
 import java.security.MessageDigest;
-import java.security.NoSuchAlgorithmException;
-import java.util.HexFormat;
+import org.raysheaf.io.file.Sha256;
 
 /**
  * The list format, version 1: an HDF5 file with these members.
@@ -84,16 +82,10 @@ final class ListFormat {
 
     /** SHA-256 of a text's UTF-8 bytes, in hexadecimal. */
     static String sha256(String text) {
-        MessageDigest digest = newSha256();
-        digest.update(text.getBytes(StandardCharsets.UTF_8));
-        return HexFormat.of().formatHex(digest.digest());
+        return Sha256.ofText(text);
     }
 
     static MessageDigest newSha256() {
-        try {
-            return MessageDigest.getInstance("SHA-256");
-        } catch (NoSuchAlgorithmException e) {
-            throw new IllegalStateException("every Java platform has SHA-256", e);
-        }
+        return Sha256.start();
     }
 }

@@ -53,6 +53,18 @@ class Hdf5RoundTripTest {
         }
     }
 
+    @Test
+    void isRecognisedByItsBytesWhateverItsName() throws IOException {
+        Path odd = folder.resolve("no-ending");
+        try (Hdf5Writer file = Hdf5Writer.create(odd, false)) {
+            file.commit();
+        }
+        assertThat(Hdf5File.recognises(odd)).isTrue();
+        assertThat(Hdf5File.recognises(Files.writeString(path, "raysheaf: system/1\n")))
+                .isFalse();
+        assertThat(Hdf5File.recognises(Files.write(path, new byte[0]))).isFalse();
+    }
+
     private static long[] unsigned(int[] values) {
         return IntStream.of(values).mapToLong(Integer::toUnsignedLong).toArray();
     }

@@ -16,6 +16,7 @@ import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.CsvSource;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.io.OutsideReader;
 import org.raysheaf.io.hdf5.Compression;
 
 /** What others make of our lists. */
@@ -26,12 +27,13 @@ class OutsideReadersTest {
     @ParameterizedTest
     @CsvSource({"0,NONE,9", "1,DEFLATE,9", "1000,NONE,9", "1000,DEFLATE,9", "50000,NONE,7", "5000,DEFLATE,262144"})
     void h5pyFindsEveryValueAndAttribute(int events, Compression compression, int chunkLength) throws IOException {
-        Python.assumeH5py();
+        OutsideReader.assumePython("h5py", "numpy");
         EventBlock block = SampleLists.block(events, 1);
         Path path = SampleLists.write(folder.resolve("list.h5"), compression, chunkLength, block);
 
-        List<String> printed =
-                Python.script(folder, "describe.py", path).lines().toList();
+        List<String> printed = OutsideReader.pythonFile(getClass(), "describe.py", path)
+                .lines()
+                .toList();
 
         for (Attribute attribute : SampleLists.ALL) {
             String type = attribute.type().toString().toLowerCase(Locale.ROOT);
@@ -70,10 +72,10 @@ class OutsideReadersTest {
 
     @Test
     void h5dumpShowsTheStructure() throws IOException {
-        Python.assumeH5dump();
+        OutsideReader.assumeH5dump();
         Path path = SampleLists.write(folder.resolve("list.h5"), SampleLists.block(100, 2));
 
-        String printed = Python.run(List.of("h5dump", "-H", "-p", path.toString()));
+        String printed = OutsideReader.run(List.of("h5dump", "-H", "-p", path.toString()));
 
         assertThat(printed)
                 .contains(
@@ -86,10 +88,10 @@ class OutsideReadersTest {
 
     @Test
     void aListWrittenWithAFewLinesOfH5pyIsAList() throws IOException {
-        Python.assumeH5py();
+        OutsideReader.assumePython("h5py", "numpy");
         Path path = folder.resolve("plain.h5");
 
-        Python.script(folder, "plain.py", path);
+        OutsideReader.pythonFile(getClass(), "plain.py", path);
 
         ListFile list = ListFile.open(path).withElements(200);
         EventBlock events = SampleLists.read(list);

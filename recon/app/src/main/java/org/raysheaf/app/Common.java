@@ -69,9 +69,13 @@ final class Common {
 
     private void within(String option, int value, int most) {
         if (value < 0 || value > most) {
-            throw new ParameterException(
-                    verb.commandLine(), option + ": expected a number from 1 to " + most + ", found " + value);
+            throw misused(option + ": expected a number from 1 to " + most + ", found " + value);
         }
+    }
+
+    /** A call that the parser takes but that makes no sense; to be thrown. */
+    ParameterException misused(String message) {
+        return new ParameterException(verb.commandLine(), message);
     }
 
     int lanes() {

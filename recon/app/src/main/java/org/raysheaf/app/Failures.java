@@ -4,10 +4,19 @@ import java.io.IOException;
 import java.io.UncheckedIOException;
 import java.nio.file.AccessDeniedException;
 import java.nio.file.FileAlreadyExistsException;
+import java.nio.file.FileSystemException;
+import java.nio.file.InvalidPathException;
 import java.nio.file.NoSuchFileException;
+import java.util.Collection;
+import java.util.List;
+import org.raysheaf.geometry.settings.InvalidSettingsException;
+import org.raysheaf.geometry.settings.Nearest;
 import picocli.CommandLine;
 
-/** Turns what went wrong into one message and an exit code: 1 for a problem in data or files, 2 for usage. */
+/**
+ * Turns what went wrong into one message and an exit code: 1 for a problem in data or files, 2 for usage. Only exceptions about files and settings
+ * count as the user's; any other is a mistake of ours and says so.
+ */
 final class Failures implements CommandLine.IExecutionExceptionHandler, CommandLine.IParameterExceptionHandler {
     Failures() {}
 
@@ -37,9 +46,13 @@ final class Failures implements CommandLine.IExecutionExceptionHandler, CommandL
         if (failure instanceof AccessDeniedException denied) {
             return denied.getFile() + ": permission denied";
         }
+        if (failure instanceof FileSystemException other && other.getReason() == null) {
+            return other.getFile() + ": cannot be used (" + other.getClass().getSimpleName() + ")";
+        }
         boolean expected = failure instanceof IOException
                 || failure instanceof UncheckedIOException
-                || failure instanceof IllegalArgumentException;
+                || failure instanceof InvalidSettingsException
+                || failure instanceof InvalidPathException; // a name in a description that no file can have
         if (expected && failure.getMessage() != null) {
             return failure.getMessage();
         }
@@ -50,11 +63,54 @@ final class Failures implements CommandLine.IExecutionExceptionHandler, CommandL
     @Override
     public int handleParseException(CommandLine.ParameterException usage, String[] arguments) {
         CommandLine line = usage.getCommandLine();
-        line.getErr().println("raysheaf: " + usage.getMessage());
-        CommandLine.UnmatchedArgumentException.printSuggestions(usage, line.getErr());
+        line.getErr().println("raysheaf: " + words(usage, arguments).replaceAll("\\s*\\R\\s*", "; "));
         line.getErr().println("see: raysheaf " + verb(line) + "--help");
         line.getErr().flush();
         return 2;
+    }
+
+    private static String words(CommandLine.ParameterException usage, String[] arguments) {
+        CommandLine line = usage.getCommandLine();
+        if (usage instanceof CommandLine.MissingParameterException) {
+            // A mistyped option is missing under its right name, but the name that was typed tells more.
+            for (String argument : arguments) {
+                if (argument.startsWith("--") && !options(List.of(line)).contains(name(argument))) {
+                    return unknown(line, argument);
+                }
+            }
+        }
+        if (!(usage instanceof CommandLine.UnmatchedArgumentException unmatched)) {
+            return String.valueOf(usage.getMessage());
+        }
+        String found = unmatched.getUnmatched().get(0);
+        boolean noVerb = !line.getSubcommands().isEmpty();
+        if (!unmatched.isUnknownOption()) {
+            return noVerb
+                    ? "unknown verb " + found + "; the nearest is "
+                            + Nearest.to(found, line.getSubcommands().keySet())
+                    : "expected no further argument, found " + found;
+        }
+        if (noVerb && options(line.getSubcommands().values()).contains(name(found))) {
+            return "expected a verb, found the option " + name(found) + "; options stand behind the verb";
+        }
+        return unknown(line, found);
+    }
+
+    private static String unknown(CommandLine line, String option) {
+        return "unknown option " + name(option) + "; the nearest is "
+                + Nearest.to(name(option), options(List.of(line)));
+    }
+
+    /** An option without the value that may hang on it. */
+    private static String name(String option) {
+        int end = option.indexOf('=');
+        return end < 0 ? option : option.substring(0, end);
+    }
+
+    private static List<String> options(Collection<CommandLine> lines) {
+        return lines.stream()
+                .flatMap(line -> line.getCommandSpec().optionsMap().keySet().stream())
+                .toList();
     }
 
     private static String verb(CommandLine line) {

@@ -66,8 +66,7 @@ final class LinesVerb extends Verb {
         ForkJoinPool pool = common().pool();
         ListFile opened = ListFile.open(input);
         Reconstruction.requirePairs(input, opened);
-        Systems systems = Systems.of(
-                opened.header().systemDescription(), input + " (its system)", common(), pool, common().progress());
+        Systems systems = SystemOfList.of(opened.header(), input, null, common(), pool, common().progress());
         ListFile list = opened.withElements(systems.system().elements());
         CoincidenceSheaves sheaves = systems.sheaves();
         EventTally tally =

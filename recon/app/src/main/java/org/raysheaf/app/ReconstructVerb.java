@@ -5,8 +5,9 @@ import java.nio.file.Path;
 import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.engine.ray.NoUsableEventsException;
+import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.phantom.Phantom;
-import org.raysheaf.io.description.DescriptionReader;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
@@ -48,25 +49,16 @@ final class ReconstructVerb extends Verb {
             throws IOException {
         ResultFolder folder = new ResultFolder(out, common.replace());
         folder.requireFree();
-        ReconstructionPlan plan = ReconstructionPlan.bare();
-        Path base = with;
-        Path list = input;
-        if (input.toString().endsWith(".yaml")) {
-            plan = DescriptionReader.read(input, "reconstruction", ReconstructionPlan.class);
-            String named = plan.list();
-            if (named == null) {
-                throw new IOException(input + ": names no list; add a line \"list: LIST.h5\", or give the list itself");
-            }
-            list = input.resolveSibling(named);
-            base = input;
-        } else if (with != null) {
-            plan = DescriptionReader.read(with, "reconstruction", ReconstructionPlan.class);
-        } else {
-            common.note(
-                    "no description given: 20 passes, 1 subset (MLEM), no filter, voxels of half the crystal pitch over the field of view, in kBq/mL");
-        }
+        ReconstructionInput found = ReconstructionInput.of(input, with, common);
         ForkJoinPool pool = common.pool();
-        Reconstruction done = Reconstruction.of(list, plan.with(common.lanes(), halves), base, common, pool);
+        Reconstruction done;
+        try {
+            ReconstructionPlan plan = found.plan().with(common.lanes(), halves);
+            done = Reconstruction.of(found.list(), plan, found.base(), common, pool);
+        } catch (NoUsableEventsException e) {
+            throw new IOException(nothingUsable(found.list(), e.tally()), e);
+        }
+        Figures figures = Figures.of(done);
         Calibration calibration = known == null
                 ? null
                 : Calibration.of(
@@ -74,7 +66,14 @@ final class ReconstructVerb extends Verb {
                         known,
                         0.5 * done.systems().system().fieldOfView().lengthMm(),
                         done.systems().system().description().name());
-        Map<String, Object> results = folder.write(done, calibration, pool.getParallelism());
-        common.print(results, folder.lines(done));
+        Map<String, Object> results = folder.write(done, figures, calibration, pool.getParallelism());
+        common.print(results, folder.lines(done, figures));
+    }
+
+    private static String nothingUsable(Path list, EventTally tally) {
+        String trouble = tally.used() > 0
+                ? "too few events for images of the odd and of the even ones; leave out halves"
+                : "no event can be used, so there is no image";
+        return list + ": " + trouble + "\n" + String.join("\n", new Accounting(tally).lines());
     }
 }

@@ -21,7 +21,7 @@ import org.raysheaf.io.list.ListFile;
  * The way from a list to an image: its system, the sheaves of its events, the sensitivity, the estimate.
  *
  * @param list the list
- * @param systems the system that the list carries
+ * @param systems the system that the list carries, or that the plan names if the list carries none
  * @param plan how to reconstruct
  * @param grid the voxels
  * @param model sheaves with all factors, sensitivity, background
@@ -46,7 +46,7 @@ record Reconstruction(
         requirePairs(listPath, opened);
         opened.warnings().forEach(common::note);
         ListHeader header = opened.header();
-        Systems systems = Systems.of(header.systemDescription(), listPath + " (its system)", common, pool, progress);
+        Systems systems = SystemOfList.of(header, listPath, plan.systemBeside(base), common, pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
         Grid grid = plan.grid().gridFor(systems.system());
         CorrectedModel model = CorrectedModel.of(list, systems, plan.corrections(), base, grid, common, pool);

@@ -1,5 +1,6 @@
 package org.raysheaf.app;
 
+import java.nio.file.Path;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.EstimationSettings;
 import org.raysheaf.geometry.settings.Default;
@@ -8,7 +9,8 @@ import org.raysheaf.geometry.settings.Default;
  * How to get from a list to an image, as a description file ({@code raysheaf: reconstruction/1}) gives it.
  *
  * @param list path of the list, from the description's folder
- * @param system path of the system, for a sensitivity without a list
+ * @param system path of the system, from the description's folder: for a list that carries none, or a sensitivity without a list; if the
+ *     list carries one too it must be the same
  * @param grid the voxels
  * @param estimation passes, subsets, lanes, filter
  * @param halves whether to make the images of the odd and of the even events as well
@@ -30,6 +32,15 @@ record ReconstructionPlan(
                 EstimationSettings.mlem(20),
                 false,
                 Corrections.OF_A_BARE_LIST);
+    }
+
+    /** The file of the system, or null; paths start from the folder of the file that the plan came from. */
+    @Nullable
+    Path systemBeside(@Nullable Path base) {
+        if (system == null) {
+            return null;
+        }
+        return base == null ? Path.of(system) : base.resolveSibling(system);
     }
 
     /** The same with the number of lanes given on the command line, and halves if asked for there. */

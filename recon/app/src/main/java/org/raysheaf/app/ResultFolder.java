@@ -11,23 +11,22 @@ import java.util.Map;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
 import org.raysheaf.engine.PassReport;
-import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
-import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionWriter;
 import org.raysheaf.io.file.AtomicFile;
+import org.raysheaf.io.file.Sha256;
 import org.raysheaf.io.picture.SlicePicture;
 import org.raysheaf.io.result.NotKnown;
 import org.raysheaf.io.result.ResultFile;
 import org.raysheaf.io.volume.VolumeFile;
-import org.raysheaf.quality.HalfDifference;
 
 /** The folder that a reconstruction leaves behind, and what is said about it on screen. */
 final class ResultFolder {
-    private static final String UNIT = "kBq/mL";
+    static final String UNIT = "kBq/mL";
+    /** Everything that a reconstruction may leave behind. The last one is written last, and removed first: a folder that has it is complete. */
     private static final List<String> NAMES = List.of(
             "activity.nii.gz",
             "activity.h5",
@@ -59,9 +58,16 @@ final class ResultFolder {
         }
     }
 
-    /** Writes everything and returns what result.json says. */
-    Map<String, Object> write(Reconstruction done, @Nullable Calibration calibration, int threads) throws IOException {
+    /** Writes everything, in place of all that an earlier reconstruction left if that may be replaced, and returns what result.json says. */
+    Map<String, Object> write(Reconstruction done, Figures figures, @Nullable Calibration calibration, int threads)
+            throws IOException {
+        Map<String, Object> results = results(done, figures, threads);
         Files.createDirectories(folder);
+        if (replace) {
+            for (int i = NAMES.size() - 1; i >= 0; i--) {
+                Files.deleteIfExists(folder.resolve(NAMES.get(i)));
+            }
+        }
         Image activity = kilo(done.whole().image());
         volume(activity, UNIT, "activity.nii.gz");
         volume(activity, UNIT, "activity.h5");
@@ -74,7 +80,6 @@ final class ResultFolder {
         }
         SlicePicture.write(
                 activity, UNIT, centre(activity), "activity concentration", folder.resolve("planes.png"), replace);
-        Map<String, Object> results = results(done, activity, threads);
         if (calibration != null) {
             results.put("calibration", calibration);
             String text = DescriptionWriter.render("calibration", calibration);
@@ -117,7 +122,7 @@ final class ResultFolder {
         return grid.centre(Math.rint(mean.x()), Math.rint(mean.y()), Math.rint(mean.z()));
     }
 
-    private static Map<String, Object> results(Reconstruction done, Image activity, int threads) {
+    private static Map<String, Object> results(Reconstruction done, Figures figures, int threads) {
         ListHeader header = done.list().header();
         Map<String, Object> results = new LinkedHashMap<>();
         results.put("caution", Common.CAUTION);
@@ -128,7 +133,7 @@ final class ResultFolder {
                 Map.of(
                         "name", done.systems().system().description().name(),
                         "elements", done.systems().system().elements(),
-                        "sha256", Cache.digest(done.systems().text())));
+                        "sha256", Sha256.ofText(done.systems().text())));
         results.put("plan", done.plan());
         results.put(
                 "grid",
@@ -144,8 +149,8 @@ final class ResultFolder {
                                         done.grid().spacingYMm(),
                                         done.grid().spacingZMm()),
                         "centre_mm", List.of(0, 0, 0)));
-        results.put("events", accounting(done.whole().tally()));
-        results.put("activity", Figures.of(done, activity).named(header));
+        results.put("events", new Accounting(done.whole().tally()).named());
+        results.put("activity", figures.named(header));
         results.put(
                 "corrections",
                 Map.of(
@@ -171,62 +176,6 @@ final class ResultFolder {
         return list;
     }
 
-    private static Map<String, Object> accounting(EventTally tally) {
-        Map<String, Object> events = new LinkedHashMap<>();
-        events.put("read", tally.read());
-        events.put("used", tally.used());
-        Map<String, Object> aside = new LinkedHashMap<>();
-        for (EventTally.Reason reason : EventTally.Reason.values()) {
-            aside.put(reason.words(), tally.setAsideFor(reason));
-        }
-        events.put("set_aside", aside);
-        return events;
-    }
-
-    /** The figures of the image: total activity with the error of counting, and the noise if halves were made. */
-    private record Figures(
-            double totalKBq,
-            double standardErrorKBq,
-            double maxKBqPerMl,
-            @Nullable HalfDifference noise) {
-        static Figures of(Reconstruction done, Image activity) {
-            double total = activity.sum() * 1e-3 * activity.grid().voxelVolumeMm3();
-            float max = 0;
-            for (float value : activity.values()) {
-                max = Math.max(max, value);
-            }
-            double bound = 1 / Math.sqrt((double) Math.max(1, done.whole().events()));
-            Estimate odd = done.odd();
-            Estimate even = done.even();
-            HalfDifference noise = odd == null || even == null || !(max > 0)
-                    ? null
-                    : HalfDifference.of(kilo(odd.image()), kilo(even.image()), hot(activity, 0.5f * max));
-            return new Figures(total, total * bound, max, noise);
-        }
-
-        Map<String, Object> named(ListHeader header) {
-            Map<String, Object> named = new LinkedHashMap<>();
-            named.put("unit", UNIT);
-            named.put("reference_time", header.start().toString());
-            named.put("total_kBq", totalKBq);
-            named.put("total_standard_error_kBq", standardErrorKBq);
-            named.put("total_standard_error_from", "Poisson bound 1/sqrt(events used); model errors are not in it");
-            named.put("max_kBq_per_mL", maxKBqPerMl);
-            named.put(
-                    "noise_where_above_half_max",
-                    noise == null ? new NotKnown("no halves were made, see --halves") : noise);
-            return named;
-        }
-    }
-
-    private static Image hot(Image activity, float above) {
-        Image region = new Image(activity.grid());
-        for (int j = 0; j < region.values().length; j++) {
-            region.values()[j] = activity.values()[j] >= above ? 1 : 0;
-        }
-        return region;
-    }
-
     private static List<Map<String, Object>> passes(Estimate estimate) {
         List<Map<String, Object>> passes = new ArrayList<>();
         for (PassReport pass : estimate.passes()) {
@@ -241,7 +190,7 @@ final class ResultFolder {
     }
 
     /** What is said on screen. */
-    List<String> lines(Reconstruction done) {
+    List<String> lines(Reconstruction done, Figures figures) {
         List<String> lines = new ArrayList<>();
         Grid grid = done.grid();
         lines.add(String.format(
@@ -255,30 +204,8 @@ final class ResultFolder {
                 done.whole().subsets(),
                 done.whole().postFilterFwhmMm(),
                 UNIT));
-        EventTally tally = done.whole().tally();
-        lines.add(String.format(Locale.ROOT, "events     %,12d read", tally.read()));
-        lines.add(String.format(Locale.ROOT, "           %,12d used", tally.used()));
-        for (EventTally.Reason reason : EventTally.Reason.values()) {
-            if (tally.setAsideFor(reason) > 0) {
-                lines.add(String.format(
-                        Locale.ROOT, "           %,12d set aside: %s", tally.setAsideFor(reason), reason.words()));
-            }
-        }
-        Figures figures = Figures.of(done, kilo(done.whole().image()));
-        lines.add(String.format(
-                Locale.ROOT,
-                "activity   %.1f ± %.1f kBq in the image (counting only), at most %.1f kBq/mL",
-                figures.totalKBq(),
-                figures.standardErrorKBq(),
-                figures.maxKBqPerMl()));
-        HalfDifference noise = figures.noise();
-        if (noise != null) {
-            lines.add(String.format(
-                    Locale.ROOT,
-                    "noise      %.1f ± %.1f %% per voxel where above half the maximum, from odd and even events",
-                    100 * noise.relativeNoise(),
-                    100 * noise.relativeNoiseError()));
-        }
+        lines.addAll(new Accounting(done.whole().tally()).lines());
+        lines.addAll(figures.lines());
         if (!done.model().left().isEmpty()) {
             lines.add("           not corrected for "
                     + String.join(", ", done.model().left()));

@@ -45,9 +45,9 @@ final class SensitivityVerb extends Verb {
         Systems systems;
         double pairs = 1;
         if (listName != null) {
-            ListFile list = ListFile.open(input.resolveSibling(listName));
-            systems =
-                    Systems.of(list.header().systemDescription(), listName + " (its system)", common(), pool, progress);
+            Path listPath = input.resolveSibling(listName);
+            ListFile list = ListFile.open(listPath);
+            systems = SystemOfList.of(list.header(), listPath, plan.systemBeside(input), common(), pool, progress);
             pairs = list.header().pairsPerBecquerel();
         } else if (systemName != null) {
             systems = Systems.read(input.resolveSibling(systemName), common(), pool, progress);

@@ -2,14 +2,9 @@ package org.raysheaf.app;
 
 import static org.assertj.core.api.Assertions.assertThat;
 
-import java.io.ByteArrayOutputStream;
 import java.io.IOException;
-import java.io.PrintStream;
-import java.io.PrintWriter;
-import java.io.StringWriter;
 import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
-import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.List;
@@ -17,12 +12,12 @@ import java.util.stream.Stream;
 import org.junit.jupiter.api.BeforeEach;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
+import org.raysheaf.app.Calls.Outcome;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.volume.VolumeFile;
-import picocli.CommandLine;
 
 /** Verbs as a user calls them: exit codes, messages, files. */
 class VerbsTest {
@@ -33,33 +28,8 @@ class VerbsTest {
 
     private Path acquisition = Path.of("");
 
-    /** What a call printed and how it ended. */
-    private record Outcome(int exit, String out, String err) {}
-
-    private Outcome call(String... arguments) {
-        StringWriter err = new StringWriter();
-        ByteArrayOutputStream bytes = new ByteArrayOutputStream();
-        PrintStream before = System.out;
-        PrintStream out = new PrintStream(bytes, true, StandardCharsets.UTF_8);
-        System.setOut(out);
-        try {
-            CommandLine line = Raysheaf.commandLine();
-            line.setErr(new PrintWriter(err, true));
-            line.setOut(new PrintWriter(out, true, StandardCharsets.UTF_8));
-            line.getSubcommands().values().forEach(verb -> verb.setErr(new PrintWriter(err, true)));
-            int exit = line.execute(arguments);
-            return new Outcome(exit, bytes.toString(StandardCharsets.UTF_8), err.toString());
-        } finally {
-            System.setOut(before);
-        }
-    }
-
     private Outcome work(String... arguments) {
-        List<String> all = Stream.concat(
-                        Stream.of(arguments),
-                        Stream.of("--quiet", "--cache", folder.resolve("cache").toString()))
-                .toList();
-        return call(all.toArray(String[]::new));
+        return Calls.work(folder.resolve("cache"), (Object[]) arguments);
     }
 
     /** Two facing panels of a few large crystals: no ring, and nothing takes long. */
@@ -271,17 +241,6 @@ class VerbsTest {
         Outcome damage = work("check", damaged.toString());
         assertThat(damage.exit()).isEqualTo(1);
         assertThat(damage.err()).contains("damaged.h5").doesNotContain("\tat ");
-    }
-
-    @Test
-    void usageErrorsEndWithTwoAndASuggestion() {
-        Outcome typo = call("reconstuct", "x");
-        assertThat(typo.exit()).isEqualTo(2);
-        assertThat(typo.err()).contains("reconstruct");
-        assertThat(call().exit()).isEqualTo(2);
-        assertThat(call("reconstruct", "x.h5").exit()).isEqualTo(2);
-        assertThat(call("check", "x", "--threads", "many").exit()).isEqualTo(2);
-        assertThat(call("demo", "--help").exit()).isZero();
     }
 
     @Test

@@ -17,11 +17,14 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.JosephTwin;
+import org.raysheaf.engine.ray.Lattice;
+import org.raysheaf.engine.ray.NoUsableEventsException;
 import org.raysheaf.geometry.event.EventTally.Reason;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.settings.InvalidSettingsException;
 
 /** The estimator on 100,000 lines through a cylinder, seen by an ideal ring. */
 final class ListModeEmTest {
@@ -190,6 +193,33 @@ final class ListModeEmTest {
                 .hasMessageContaining("subsets")
                 .hasMessageContaining("lanes")
                 .hasMessageContaining("post_filter_fwhm_mm");
+    }
+
+    /** An image from nothing would be 0/0 in every voxel. */
+    @Test
+    void refusesAListWithoutUsableEventsAndSaysWhatBecameOfThem() {
+        assertThatThrownBy(() -> EventLoader.load(
+                        LIST,
+                        LIST,
+                        new Image(GRID),
+                        EventSelection.ALL,
+                        3,
+                        EventBackground.NONE,
+                        POOL,
+                        Progress.SILENT))
+                .isInstanceOfSatisfying(NoUsableEventsException.class, e -> {
+                    assertThat(e.tally().used()).isZero();
+                    assertThat(e.tally().setAsideFor(Reason.OUTSIDE_IMAGE)).isEqualTo(EVENTS);
+                });
+    }
+
+    /** What a user's settings can cause must not look like a mistake in the program. */
+    @Test
+    void tooManySubsetsAndTooFineAGridAreMistakesInSettings() {
+        assertThatThrownBy(() -> load(EventSelection.ALL, EVENTS)).isInstanceOf(InvalidSettingsException.class);
+        assertThatThrownBy(() -> new Lattice(Grid.centred(40_000, 1, 1, 1)))
+                .isInstanceOf(InvalidSettingsException.class)
+                .hasMessageContaining("found 40000 x 1 x 1; take larger voxels");
     }
 
     @Test

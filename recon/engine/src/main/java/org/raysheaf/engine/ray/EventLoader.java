@@ -13,6 +13,7 @@ import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.event.EventTally.Reason;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.settings.Problems;
 import org.raysheaf.geometry.sheaf.SheafBundle;
 import org.raysheaf.geometry.sheaf.SheafMaker;
 
@@ -59,10 +60,13 @@ public final class EventLoader {
 
     private int room(long eventsInList) {
         long most = selection == EventSelection.ALL ? eventsInList : (eventsInList + 1) / 2;
-        if (most > RayOrder.MOST_EVENTS || most * raysPerEvent > Integer.MAX_VALUE - 8) {
-            throw new IllegalArgumentException("the list has " + eventsInList + " events of " + raysPerEvent
-                    + " rays; at most 2^30 events and 2^31 rays can be taken at once");
-        }
+        new Problems("list")
+                .rule(
+                        most <= RayOrder.MOST_EVENTS && most * raysPerEvent <= Integer.MAX_VALUE - 8,
+                        "events",
+                        "the list has " + eventsInList + " events of " + raysPerEvent
+                                + " rays; at most 2^30 events and 2^31 rays can be taken at once")
+                .orThrow();
         return (int) most;
     }
 
@@ -77,9 +81,11 @@ public final class EventLoader {
      * @param background the background of each event, or {@link EventBackground#NONE}
      * @param pool prepares the rays
      * @param progress hears of the events read
-     * @return the events, sorted
+     * @return the events, sorted; at least one
+     * @throws NoUsableEventsException if no event was kept; its tally says why
      * @throws IOException if the list cannot be read or lacks a column that the maker needs
-     * @throws IllegalArgumentException if the list has too many events for memory, or fewer usable ones than there are subsets
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if the list has too many events for memory, or usable ones but
+     *     fewer than there are subsets
      */
     public static EventStore load(
             EventSource source,
@@ -165,11 +171,16 @@ public final class EventLoader {
         events++;
     }
 
-    private EventStore sorted(int subsets, ForkJoinPool pool) {
-        if (subsets < 1 || subsets > Math.max(1, events)) {
-            throw new IllegalArgumentException("expected 1 to " + Math.max(1, events) + " subsets, for " + events
-                    + " usable events; found " + subsets);
+    private EventStore sorted(int subsets, ForkJoinPool pool) throws NoUsableEventsException {
+        if (events == 0) {
+            throw new NoUsableEventsException(tally);
         }
+        new Problems("estimation")
+                .rule(
+                        subsets >= 1 && subsets <= events,
+                        "subsets",
+                        "expected 1 to " + events + " subsets, for " + events + " usable events; found " + subsets)
+                .orThrow();
         int[] starts = new int[subsets + 1];
         for (int s = 0; s < subsets; s++) {
             starts[s + 1] = starts[s] + (events - s + subsets - 1) / subsets;

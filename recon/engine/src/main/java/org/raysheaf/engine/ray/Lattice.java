@@ -3,6 +3,7 @@ package org.raysheaf.engine.ray;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
+import org.raysheaf.geometry.settings.Problems;
 
 /**
  * A grid with a border of one voxel on every side, as the projector sees it. Values on a lattice are a {@code float[]} of {@link
@@ -25,7 +26,7 @@ public final class Lattice {
      * The lattice of a grid.
      *
      * @param grid the grid, at most 32,765 voxels along each axis
-     * @throws IllegalArgumentException if the grid is too large for the projector
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if the grid is too large for the projector
      */
     public Lattice(Grid grid) {
         this.grid = grid;
@@ -34,9 +35,14 @@ public final class Lattice {
         spacingMm = new double[] {grid.spacingXMm(), grid.spacingYMm(), grid.spacingZMm()};
         boolean fits = (double) planes[0] * planes[1] * planes[2] < Integer.MAX_VALUE - 8;
         if (!fits || Math.max(planes[0], Math.max(planes[1], planes[2])) > MOST_PLANES) {
-            throw new IllegalArgumentException("the projector takes at most 32765 voxels along an axis and 2^31 in all,"
-                    + " border included: found " + grid.nx() + " x " + grid.ny() + " x " + grid.nz()
-                    + "; take larger voxels");
+            new Problems("grid")
+                    .rule(
+                            false,
+                            "voxel_mm",
+                            "the projector takes at most 32765 voxels along an axis and 2^31 in all, border included:"
+                                    + " found " + grid.nx() + " x " + grid.ny() + " x " + grid.nz()
+                                    + "; take larger voxels")
+                    .orThrow();
         }
         Vector3 zero = grid.indices(Vector3.ZERO);
         setColumn(3, zero.plus(new Vector3(1, 1, 1)));
