@@ -241,7 +241,7 @@ public enum Attribute {
             "1",
             ColumnType.INT64,
             ValueRange.NOT_NEGATIVE,
-            "number of the decay that the photon came from"),
+            "number of the decay that the photon came from; in a pile-up, of the photon that came first"),
     /** 1: both photons came from one decay, 0: random coincidence. */
     SAME_DECAY(
             Scope.TRUTH_OF_PAIRS,

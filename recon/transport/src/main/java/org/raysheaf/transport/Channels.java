@@ -142,7 +142,7 @@ final class Channels {
         open.source[channel] = from.source[row];
     }
 
-    /** Adds the energy; time and random numbers stay those of the beginning, the crystal is that of the larger share. */
+    /** Adds the energy; time, random numbers and truth stay those of the beginning, the crystal is that of the larger share. */
     private void merge(Pulses from, int row, int channel) {
         for (int c = Pulses.ENERGY; c <= Pulses.SUM_W; c++) {
             if (c != Pulses.LARGEST) {
@@ -155,11 +155,6 @@ final class Channels {
         } else if (largest > open.real[Pulses.LARGEST][channel]) {
             open.real[Pulses.LARGEST][channel] = largest;
             open.element[channel] = from.element[row];
-            open.decay[channel] = from.decay[row];
-            copyTruth(from, row, channel);
-            for (int axis = 0; axis < 3; axis++) {
-                open.real[Pulses.EMISSION + axis][channel] = from.real[Pulses.EMISSION + axis][row];
-            }
         }
     }
 

@@ -166,7 +166,7 @@ public final class Backgrounds {
          */
         public double scatterScale() {
             if (!(scatterClear > 0)) {
-                return 1;
+                return PRIOR_SCALE;
             }
             double found = (promptsClear - randomsClear) / scatterClear;
             double sd = Math.hypot(Math.sqrt(promptsClear), RANDOMS_SD * randomsClear) / scatterClear;
