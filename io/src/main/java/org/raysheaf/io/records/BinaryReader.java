@@ -8,8 +8,10 @@ import java.util.ArrayList;
 import java.util.Arrays;
 import java.util.HexFormat;
 import java.util.LinkedHashMap;
+import java.util.LinkedHashSet;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 import org.jspecify.annotations.Nullable;
 
 /**
@@ -357,6 +359,18 @@ final class BinaryReader implements RecordReader {
             }
         }
         return counts;
+    }
+
+    @Override
+    public Set<String> used() {
+        Set<String> names = new LinkedHashSet<>();
+        for (BinaryFormat.RecordType type : format.records()) {
+            if (type.per() != null) {
+                names.add(type.per());
+                names.add(type.name() + "." + type.per());
+            }
+        }
+        return names;
     }
 
     @Override

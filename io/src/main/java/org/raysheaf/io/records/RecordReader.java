@@ -4,6 +4,7 @@ import java.io.IOException;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.Map;
+import java.util.Set;
 
 /** Reads the records of data files, one file after another, into the columns of a block. One thread. */
 interface RecordReader extends AutoCloseable {
@@ -32,6 +33,11 @@ interface RecordReader extends AutoCloseable {
 
     /** Records that are no events, by type. */
     Map<String, Long> marks();
+
+    /** Fields that the reader itself uses. */
+    default Set<String> used() {
+        return Set.of();
+    }
 
     /** Names of what the open file holds and no field reads. */
     List<String> unread();

@@ -115,8 +115,9 @@ final class RecordStream implements AutoCloseable {
         List<String> names = new ArrayList<>();
         if (pipeline != null) {
             for (Column field : reader.block().fields()) {
-                if (!pipeline.neededNames().contains(field.name())
-                        && !field.name().endsWith(".count")) {
+                boolean served = pipeline.neededNames().contains(field.name())
+                        || reader.used().contains(field.name());
+                if (!served && !field.name().endsWith(".count")) {
                     names.add(field.name());
                 }
             }

@@ -77,7 +77,8 @@ final class TableFile {
         }
         for (int c = 1; c < names.size(); c++) {
             int column = c;
-            columns.put(names.get(c), rows.stream().mapToDouble(row -> row[column]).toArray());
+            columns.put(
+                    names.get(c), rows.stream().mapToDouble(row -> row[column]).toArray());
         }
         return new TableFile(path, names.get(0), keys, columns, index(keys));
     }
@@ -109,8 +110,8 @@ final class TableFile {
         }
         Integer before = lineOfKey.put((long) row[0], line);
         if (before != null) {
-            throw new RecordException(
-                    place + ": expected every key once, found " + values.get(0) + " also in line " + before);
+            throw new RecordException(place + ", " + names.get(0) + ": expected every key once, found " + values.get(0)
+                    + " also in line " + before);
         }
         return row;
     }
