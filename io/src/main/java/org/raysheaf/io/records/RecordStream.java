@@ -5,6 +5,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
@@ -28,6 +29,7 @@ final class RecordStream implements AutoCloseable {
     private long records;
     private long bytes;
     private long told;
+    private long blocks;
 
     RecordStream(
             RecordsDescription description,
@@ -95,6 +97,9 @@ final class RecordStream implements AutoCloseable {
     private void tell() {
         long now = reader.position();
         progress.advance(now - told);
+        if (now - told > 0 && (blocks++ & 63) == 0) { // now and then: words cost more than numbers
+            progress.remark(String.format(Locale.ROOT, "%,d records", records));
+        }
         told = now;
     }
 

@@ -15,6 +15,7 @@ import picocli.CommandLine.Spec;
         footer = {"", Common.CAUTION},
         subcommands = {
             CheckVerb.class,
+            ImportVerb.class,
             SimulateVerb.class,
             PairVerb.class,
             SensitivityVerb.class,
@@ -60,7 +61,8 @@ public final class Raysheaf implements Runnable {
     @Override
     public void run() {
         throw new CommandLine.ParameterException(
-                spec.commandLine(), "which verb? check, simulate, pair, sensitivity, reconstruct, lines or demo");
+                spec.commandLine(),
+                "which verb? check, import, simulate, pair, sensitivity, reconstruct, lines or demo");
     }
 
     /** The version of the program, for results. */
