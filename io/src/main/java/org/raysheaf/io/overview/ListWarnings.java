@@ -164,7 +164,7 @@ public final class ListWarnings {
                     100.0 * time.backwards() / events);
         } else if (time.backwards() > 0) {
             warn(
-                    "%,d events are earlier than the one before, by up to %.3g ns: set order_ns in the description of the records"
+                    "%,d events are earlier than the one before, by up to %,.0f ns: set order_ns in the description of the records"
                             + " to that or more, or give pair --disorder-ns",
                     time.backwards(), time.furthestBackPs() * 1e-3);
         }

@@ -105,7 +105,7 @@ public final class PlotPage {
         }
         canvas.frame(x, y, PLOT_WIDTH, PLOT_HEIGHT, Canvas.FRAME);
         double high = plot.low() + plot.step() * n;
-        for (double tick : RoundScale.ticks(plot.low(), high, 6)) {
+        for (double tick : RoundScale.ticks(plot.low(), high, 4)) {
             double at = x + (tick - plot.low()) / (high - plot.low()) * PLOT_WIDTH;
             canvas.line(at, bottom, at, bottom + 6, 1.5, Canvas.FRAME);
             canvas.text(RoundScale.text(tick), at, bottom + 22, Canvas.Anchor.MIDDLE, Canvas.SMALL, Canvas.QUIET);
