@@ -9,13 +9,14 @@ import org.jspecify.annotations.Nullable;
  */
 public final class Spectrum {
     private static final int FIRST = 1 << 15;
+    private static final int FIRST_OF_MANY = 1 << 9;
     private static final double MARGIN = 0.25;
     private static final double TAIL = 0.01;
 
     private final boolean fromZero;
     private final long[] counts;
     private final double @Nullable [] given;
-    private double[] first = new double[FIRST];
+    private double[] first;
     private int held;
     private double low;
     private double step;
@@ -30,9 +31,24 @@ public final class Spectrum {
      * @param fromZero whether it begins at 0; else it is symmetric about 0
      */
     public Spectrum(int bins, boolean fromZero) {
+        this(bins, fromZero, FIRST);
+    }
+
+    private Spectrum(int bins, boolean fromZero, int firstValues) {
         this.counts = new long[bins];
         this.fromZero = fromZero;
         this.given = null;
+        this.first = new double[firstValues];
+    }
+
+    /**
+     * An empty histogram from 0, one of thousands: its range follows from fewer values.
+     *
+     * @param bins number of bins
+     * @return the histogram
+     */
+    public static Spectrum oneOfMany(int bins) {
+        return new Spectrum(bins, true, FIRST_OF_MANY);
     }
 
     /**
@@ -46,6 +62,7 @@ public final class Spectrum {
         this.counts = new long[bins];
         this.fromZero = false;
         this.given = new double[] {low, high};
+        this.first = new double[0];
         settle();
     }
 
@@ -58,7 +75,7 @@ public final class Spectrum {
         total++;
         if (step == 0) {
             first[held++] = value;
-            if (held == FIRST) {
+            if (held == first.length) {
                 settle();
             }
         } else {

@@ -16,6 +16,7 @@ import picocli.CommandLine.Spec;
         subcommands = {
             CheckVerb.class,
             ImportVerb.class,
+            CalibrateVerb.class,
             SimulateVerb.class,
             PairVerb.class,
             SensitivityVerb.class,
@@ -62,7 +63,7 @@ public final class Raysheaf implements Runnable {
     public void run() {
         throw new CommandLine.ParameterException(
                 spec.commandLine(),
-                "which verb? check, import, simulate, pair, sensitivity, reconstruct, lines or demo");
+                "which verb? check, import, calibrate, simulate, pair, sensitivity, reconstruct, lines or demo");
     }
 
     /** The version of the program, for results. */
