@@ -28,7 +28,10 @@ import picocli.CommandLine.Parameters;
 final class CalibrateVerb extends Verb {
     private static final int SHOWN = 10;
 
-    @Parameters(index = "0", paramLabel = "RECORDS.yaml", description = "How to read the records; paths in it start from its folder.")
+    @Parameters(
+            index = "0",
+            paramLabel = "RECORDS.yaml",
+            description = "How to read the records; paths in it start from its folder.")
     private Path input;
 
     @Parameters(index = "1..*", arity = "1..*", paramLabel = "DATA", description = "The data files.")
@@ -51,7 +54,8 @@ final class CalibrateVerb extends Verb {
     @Option(
             names = "--positions",
             paramLabel = "POSITIONS.csv",
-            description = "Where channels are (channel, x_mm, y_mm, z_mm), for --source-mm. Default: where their elements are.")
+            description =
+                    "Where channels are (channel, x_mm, y_mm, z_mm), for --source-mm. Default: where their elements are.")
     private @Nullable Path positions;
 
     CalibrateVerb() {}
@@ -81,9 +85,8 @@ final class CalibrateVerb extends Verb {
     private void print(CalibrationResult result) {
         List<String> lines = new ArrayList<>();
         long gains = result.channels().stream().filter(c -> c.gainKeV() != null).count();
-        long offsets = result.channels().stream()
-                .filter(c -> c.timeOffsetPs() != null)
-                .count();
+        long offsets =
+                result.channels().stream().filter(c -> c.timeOffsetPs() != null).count();
         lines.add(String.format(
                 Locale.ROOT,
                 "%,d records, %,d channels: %,d gains, %,d time offsets",
