@@ -11,7 +11,7 @@ import org.jspecify.annotations.Nullable;
  * @param elements what elements counted
  * @param energy the energies, or null if the list has none
  * @param time the times, or null if the list has none
- * @param timeDifference differences of arrival, or null if the list has none
+ * @param timeDifference differences of arrival, or null if the list has neither these nor times of singles
  * @param delayedShare share of delayed pairs, or null if the list does not tell
  * @param notAdmittedShare share of pairs whose blocks are too close to be paired, or null for singles
  */
@@ -97,7 +97,7 @@ public record ListFigures(
             Histogram course) {}
 
     /**
-     * Differences of arrival (ps).
+     * Differences of arrival in pairs (ps), or of a single from the one before it in another element (ps): there photons that belong together show as a peak at 0.
      *
      * @param median the middle one (ps)
      * @param histogram the distribution (ps)

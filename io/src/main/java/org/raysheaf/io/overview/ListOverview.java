@@ -16,6 +16,9 @@ public final class ListOverview implements EventSink {
     private static final int DIFFERENCE_BINS = 401;
     private static final int MOST_RANGES = 12;
 
+    /** Photons of one decay are well within 20 ns of each other, whatever the electronics. */
+    private static final double LONGEST_TO_NEXT_PS = 20_000;
+
     private final DetectorSystem system;
     private final long[] counts;
     private final @Nullable Attribute elementA;
@@ -25,7 +28,7 @@ public final class ListOverview implements EventSink {
     private final boolean differences;
     private final boolean delayedKnown;
     private final Spectrum spectrum = new Spectrum(ENERGY_BINS, true);
-    private final Spectrum differenceSpectrum = new Spectrum(DIFFERENCE_BINS, false);
+    private final Spectrum differenceSpectrum;
     private final TimeCourse course = new TimeCourse();
     private long events;
     private long delayed;
@@ -34,6 +37,7 @@ public final class ListOverview implements EventSink {
     private long earliest = Long.MAX_VALUE;
     private long latest = Long.MIN_VALUE;
     private long before = Long.MIN_VALUE;
+    private int elementBefore = -1;
     private long backwards;
     private long furthestBack;
     private long longestGap;
@@ -59,6 +63,8 @@ public final class ListOverview implements EventSink {
         this.timed = attributes.contains(Attribute.TIME);
         this.differences = attributes.contains(Attribute.TIME_DIFFERENCE);
         this.delayedKnown = attributes.contains(Attribute.DELAYED);
+        this.differenceSpectrum =
+                singles ? new Spectrum(DIFFERENCE_BINS, 0, LONGEST_TO_NEXT_PS) : new Spectrum(DIFFERENCE_BINS, false);
     }
 
     @Override
@@ -78,6 +84,9 @@ public final class ListOverview implements EventSink {
             lookAtEnergies(block.floats(energy), size);
         }
         if (timed) {
+            if (elementB == null && elementA != null) {
+                lookAtNeighbours(block.longs(Attribute.TIME), block.ints(elementA), size);
+            }
             lookAtTimes(block.longs(Attribute.TIME), size);
         }
         if (differences) {
@@ -120,6 +129,18 @@ public final class ListOverview implements EventSink {
 
     private static boolean isPlausible(float energyKeV) {
         return energyKeV >= 20 && energyKeV <= 2000;
+    }
+
+    /** How soon a single in another element follows. */
+    private void lookAtNeighbours(long[] times, int[] elements, int size) {
+        for (int i = 0; i < size; i++) {
+            long earlier = i == 0 ? before : times[i - 1];
+            int other = i == 0 ? elementBefore : elements[i - 1];
+            if (earlier != Long.MIN_VALUE && other != elements[i]) {
+                differenceSpectrum.add(Math.abs((double) times[i] - earlier));
+            }
+        }
+        elementBefore = size == 0 ? elementBefore : elements[size - 1];
     }
 
     private void lookAtTimes(long[] times, int size) {
@@ -175,7 +196,7 @@ public final class ListOverview implements EventSink {
                 elements(),
                 energy,
                 time,
-                differences
+                differences || (timed && elementB == null)
                         ? new ListFigures.TimeDifference(
                                 differenceSpectrum.median(), ListFigures.Histogram.of(differenceSpectrum))
                         : null,

@@ -38,12 +38,17 @@ public final class OverviewPage {
         }
         ListFigures.TimeDifference difference = figures.timeDifference();
         if (difference != null) {
+            boolean singles = figures.notAdmittedShare() == null;
             plots.add(plot(
-                    "time differences",
-                    "arrival of b minus arrival of a (ps)",
+                    singles ? "from a single to the next" : "time differences",
+                    singles
+                            ? "time to the next single in another element (ps)"
+                            : "arrival of b minus arrival of a (ps)",
                     difference.histogram(),
-                    difference.median(),
-                    String.format(Locale.ROOT, "median %.0f ps", difference.median())));
+                    singles ? null : difference.median(),
+                    singles
+                            ? "photons that belong together stand out near 0"
+                            : String.format(Locale.ROOT, "median %.1f ps", difference.median())));
         }
         List<String> lines = new ArrayList<>();
         Double delayed = figures.delayedShare();

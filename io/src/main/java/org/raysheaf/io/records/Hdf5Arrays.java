@@ -103,13 +103,15 @@ final class Hdf5Arrays implements ArrayReader.OpenArrays {
         if (shape.length < 1 || shape.length > 2) {
             throw problem(name, "expected one or two dimensions, found " + shape.length);
         }
-        long columns = shape.length == 2 ? shape[1] : 1;
+        // A row is a column to those who count the other way round: so MATLAB stores a vector.
+        boolean row = shape.length == 2 && shape[0] == 1;
+        long columns = shape.length == 2 && !row ? shape[1] : 1;
         long bytes = dataset.type().bytes() * columns;
         if (columns < 1 || columns > LARGEST_VALUE || bytes > LARGEST_VALUE) {
             throw problem(name, "expected at most " + LARGEST_VALUE + " bytes per record, found " + bytes);
         }
         int number = arrays.size();
-        long count = shape[0];
+        long count = row ? shape[1] : shape[0];
         ValueBytes values = dataset.bytes();
         arrays.add(new ArrayReader.ValueArray(name, (int) bytes, count) {
             @Override

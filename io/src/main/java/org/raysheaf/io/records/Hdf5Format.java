@@ -8,7 +8,8 @@ import org.raysheaf.geometry.settings.Problems;
 
 /**
  * HDF5 files of other writers: one dataset per field, or a dataset of compound values, or a table of several columns. Chunked and compressed data are
- * read (deflate, shuffle, lzf, fletcher32).
+ * read (deflate, shuffle, lzf, fletcher32). Datasets of one row count as columns, since some writers turn them. Tables of two dimensions in chunks are read into
+ * memory whole and must be smaller than 2 GiB; all else streams.
  *
  * @param dataset path of the dataset that holds all fields that name none, or null
  * @param fields the fields to read; all their datasets are of one length

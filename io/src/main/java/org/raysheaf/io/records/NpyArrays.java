@@ -88,7 +88,8 @@ final class NpyArrays implements ArrayReader.OpenArrays {
         if (shape.isEmpty() || shape.size() > 2) {
             throw new RecordException(file + ": expected one or two dimensions, found " + shape.size());
         }
-        long columns = shape.size() == 2 ? shape.get(1) : 1;
+        boolean row = shape.size() == 2 && shape.get(0) == 1;
+        long columns = shape.size() == 2 && !row ? shape.get(1) : 1;
         if (columns > 1 && header.columnsFirst()) {
             throw new RecordException(
                     file
@@ -99,7 +100,7 @@ final class NpyArrays implements ArrayReader.OpenArrays {
                     + columns + " values of " + header.valueBytes());
         }
         int valueBytes = (int) (columns * header.valueBytes());
-        long declared = shape.get(0);
+        long declared = row ? shape.get(1) : shape.get(0);
         long there = (Files.size(file) - header.bytes()) / valueBytes;
         if (there < declared) {
             damage.unreadable(

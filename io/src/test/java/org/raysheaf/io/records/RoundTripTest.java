@@ -330,4 +330,26 @@ class RoundTripTest {
             }
         }
     }
+
+    /** MATLAB puts a block of its own before the data and stores vectors as one row of doubles. */
+    @Test
+    void rowsOfDoublesBehindAUserBlock() throws IOException, InterruptedException {
+        OutsideReader.assumePython("numpy", "h5py");
+        for (String chunks : new String[] {"None", "(1, 100)"}) {
+            OutsideReader.python("""
+                    import sys, numpy, h5py
+                    with h5py.File(sys.argv[1] + "/vectors.mat", "w", userblock_size=512) as f:
+                        for name, factor in dict(channel=1, t=1000).items():
+                            options = {} if sys.argv[2] == "None" else dict(chunks=eval(sys.argv[2]), compression="gzip")
+                            f.create_dataset(name, data=factor * numpy.arange(500.0).reshape(1, 500), **options)
+                    """, folder, chunks);
+            Lab.Imported got = Lab.run(folder, """
+                    format: {kind: hdf5, fields: [{name: c, dataset: channel}, {name: t, dataset: t}]}
+                    attributes: {element: {from: c}, time_ps: {from: t}}
+                    """, folder.resolve("vectors.mat"));
+            assertThat(got.events().size()).isEqualTo(500);
+            assertThat(Lab.elements(got)[499]).isEqualTo(499);
+            assertThat(Lab.times(got)[499]).isEqualTo(499_000);
+        }
+    }
 }

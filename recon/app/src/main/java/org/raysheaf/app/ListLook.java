@@ -83,7 +83,7 @@ final class ListLook {
                     time.longestGapPs() * 1e-12));
         }
         ListFigures.TimeDifference difference = figures.timeDifference();
-        if (difference != null) {
+        if (difference != null && figures.notAdmittedShare() != null) {
             lines.add(String.format(Locale.ROOT, "difference median %.1f ps", difference.median()));
         }
         Double delayed = figures.delayedShare();
