@@ -25,6 +25,13 @@ public interface Progress {
     default void advance(long amount) {}
 
     /**
+     * Something worth showing beside how far the stage is; it replaces the remark before.
+     *
+     * @param remark a few words
+     */
+    default void remark(String remark) {}
+
+    /**
      * The current stage ended.
      *
      * @param outcome a short remark worth keeping, or an empty text

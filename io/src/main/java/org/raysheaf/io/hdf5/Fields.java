@@ -109,6 +109,11 @@ final class Fields {
         return new Fields(file, place, bytes.duplicate().rewind());
     }
 
+    /** What has not been read yet, to be looked at without reading it. */
+    Fields rest() {
+        return new Fields(file, place, bytes.slice());
+    }
+
     int position() {
         return bytes.position();
     }

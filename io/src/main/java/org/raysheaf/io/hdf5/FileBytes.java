@@ -5,27 +5,55 @@ import java.nio.ByteBuffer;
 import java.nio.channels.FileChannel;
 import java.nio.file.Path;
 import java.nio.file.StandardOpenOption;
+import java.util.Arrays;
 
 /** The bytes of a file, read by position and never beyond its end or beyond reason. Not safe for use by several threads. */
 final class FileBytes implements AutoCloseable {
     /** No structure other than data is larger than this, so a damaged size cannot ask for more memory (bytes). */
     private static final int LARGEST_STRUCTURE = 1 << 26;
 
+    private static final long SMALLEST_USER_BLOCK = 512;
+
     private final Path path;
     private final FileChannel channel;
+    private final long start;
     private final long size;
 
     FileBytes(Path path) throws IOException {
         this.path = path;
         channel = FileChannel.open(path, StandardOpenOption.READ);
-        size = channel.size();
+        try {
+            start = start(channel);
+            size = channel.size() - start;
+        } catch (IOException | RuntimeException e) {
+            channel.close();
+            throw e;
+        }
+    }
+
+    /** Where the HDF5 data begin: at 0, or behind a block of the user's own of 512 bytes or twice, four times … as many (MATLAB writes one). */
+    private static long start(FileChannel channel) throws IOException {
+        byte[] signature = Superblock.signature();
+        ByteBuffer found = ByteBuffer.allocate(signature.length);
+        for (long at = 0; at + signature.length <= channel.size(); at = at == 0 ? SMALLEST_USER_BLOCK : 2 * at) {
+            found.clear();
+            if (channel.read(found, at) == signature.length && Arrays.equals(found.array(), signature)) {
+                return at;
+            }
+        }
+        return 0;
+    }
+
+    /** Bytes before the HDF5 data; addresses do not count them. */
+    long start() {
+        return start;
     }
 
     Path path() {
         return path;
     }
 
-    /** Length of the file (bytes). */
+    /** Length of the HDF5 data (bytes). */
     long size() {
         return size;
     }
@@ -64,7 +92,7 @@ final class FileBytes implements AutoCloseable {
         requireInside(address, target.remaining(), place);
         long next = address;
         while (target.hasRemaining()) {
-            int n = channel.read(target, next);
+            int n = channel.read(target, start + next);
             if (n < 0) {
                 throw new Hdf5Exception(
                         Hdf5Exception.Kind.TRUNCATED, path, place, "the file became shorter while it was read");

@@ -13,6 +13,9 @@ final class Filters {
     /** No filter at all. */
     static final Filters NONE = new Filters(List.of());
 
+    /** The number under which h5py registered LZF. */
+    private static final int LZF = 32000;
+
     /** Deflate never packs more than this into one byte. */
     private static final int LARGEST_RATIO = 1032;
 
@@ -40,9 +43,9 @@ final class Filters {
             int settings = fields.u16();
             fields.skip(nameBytes);
             fields.skip(4L * settings + (version == 1 && settings % 2 != 0 ? 4 : 0));
-            if (id != Messages.DEFLATE && id != Messages.SHUFFLE && id != Messages.FLETCHER32) {
+            if (id != Messages.DEFLATE && id != Messages.SHUFFLE && id != Messages.FLETCHER32 && id != LZF) {
                 throw fields.unsupported("is stored with filter " + id
-                        + ", expected none, gzip (deflate), shuffle or fletcher32; write it with one of these");
+                        + ", expected none, gzip (deflate), shuffle, lzf or fletcher32; write it with one of these");
             }
             filters.add(new Filter(id, type.bytes()));
         }
@@ -71,6 +74,7 @@ final class Filters {
             if ((leftOut >> i & 1) == 0) {
                 bytes = switch (filter.id) {
                     case Messages.DEFLATE -> inflate(bytes, expected + checksumsBefore(i, leftOut), file, place);
+                    case LZF -> unpack(bytes, expected + checksumsBefore(i, leftOut), file, place);
                     case Messages.SHUFFLE -> unshuffle(bytes, filter.elementBytes);
                     default -> withoutChecksum(bytes, file, place);
                 };
@@ -86,6 +90,14 @@ final class Filters {
         int bytes = 0;
         for (int i = 0; i < end; i++) {
             bytes += filters.get(i).id == Messages.FLETCHER32 && (leftOut >> i & 1) == 0 ? 4 : 0;
+        }
+        return bytes;
+    }
+
+    private static byte[] unpack(byte[] stored, int expected, FileBytes file, String place) throws Hdf5Exception {
+        byte[] bytes = Lzf.decode(stored, expected);
+        if (bytes.length != expected) {
+            throw file.damaged(place, "expected " + expected + " bytes when uncompressed, found unsound lzf data");
         }
         return bytes;
     }

@@ -2,6 +2,7 @@ package org.raysheaf.io.hdf5;
 
 import java.io.IOException;
 import java.nio.ByteBuffer;
+import java.util.List;
 import java.util.OptionalLong;
 import java.util.zip.CRC32C;
 import org.jspecify.annotations.Nullable;
@@ -21,12 +22,14 @@ public final class StoredDataset {
     private final Layout layout;
     private final Filters filters;
     private final StoredAttributes attributes;
+    private final Fields typeFields;
 
     StoredDataset(FileBytes file, String place, ObjectHeader header) throws IOException {
         this.file = file;
         this.place = place;
         space = Dataspace.read(header.required(Messages.DATASPACE, "shape"));
-        type = StoredType.read(header.required(Messages.DATATYPE, "type"));
+        typeFields = header.required(Messages.DATATYPE, "type").fromStart();
+        type = StoredType.read(typeFields.fromStart());
         layout = Layout.read(header.required(Messages.LAYOUT, "layout"), space.shape().length, type);
         Fields pipeline = header.message(Messages.FILTERS).orElse(null);
         filters = pipeline == null ? Filters.NONE : Filters.read(pipeline, type);
@@ -138,6 +141,27 @@ public final class StoredDataset {
             throw file.unsupported(place, "expected numbers, found " + type);
         }
         return new ValueReader(file, this, segments(), checksums);
+    }
+
+    /**
+     * The members of the values.
+     *
+     * @return the members in their order; empty if the values are not compound
+     * @throws Hdf5Exception if a member is of a type that is not read here
+     */
+    public List<Member> members() throws Hdf5Exception {
+        return Member.read(typeFields.fromStart());
+    }
+
+    /**
+     * Starts reading the values as bytes, as they are stored.
+     *
+     * @return a reader at the first byte; it can be used until the file is closed
+     * @throws Hdf5Exception if the values lie in chunks of several dimensions and exceed an array
+     * @throws IOException if the file cannot be read
+     */
+    public ValueBytes bytes() throws IOException {
+        return new ValueBytes(file, place, segments());
     }
 
     private Segments segments() throws IOException {

@@ -79,13 +79,13 @@ record Superblock(long rootAddress) {
 
     private static Superblock checked(Fields fields, long base, long end, long root) throws Hdf5Exception {
         FileBytes file = fields.file();
-        if (base != 0) {
-            throw fields.unsupported("expected the base address 0, found " + base);
+        if (base != file.start()) {
+            throw fields.unsupported("expected the base address " + file.start() + ", found " + base);
         }
-        if (end < fields.position()) {
+        if (end - base < fields.position()) {
             throw fields.damaged("expected an end of the file behind the superblock, found " + end);
         }
-        if (end > file.size()) {
+        if (end - base > file.size()) {
             throw truncated(file, Long.toString(end));
         }
         file.requireInside(root, 1, "root group");

@@ -217,7 +217,6 @@ final class CheckVerb extends Verb {
                 list.header().nuclide() == null
                         ? "not given"
                         : list.header().nuclide().name());
-        figures.put("warnings", list.warnings());
-        figures.put("verdict", list.warnings().isEmpty() ? "sound" : "usable, see the warnings");
+        ListLook.add(list, systems.system(), figures, common().progress());
     }
 }

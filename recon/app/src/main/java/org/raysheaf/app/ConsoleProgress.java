@@ -16,6 +16,7 @@ final class ConsoleProgress implements Progress {
     private final AtomicLong shown = new AtomicLong();
     private volatile String stage = "";
     private volatile String unit = "";
+    private volatile String remark = "";
     private volatile long total;
     private volatile long begun;
 
@@ -30,6 +31,7 @@ final class ConsoleProgress implements Progress {
         stage = stageName;
         total = Math.max(1, howMuch);
         unit = what;
+        remark = "";
         begun = System.nanoTime();
         shown.set(begun);
         done.set(0);
@@ -45,12 +47,18 @@ final class ConsoleProgress implements Progress {
         }
     }
 
+    @Override
+    public void remark(String words) {
+        remark = words;
+    }
+
     private synchronized void show(long have, long now) {
         double share = Math.min(1, have / (double) total);
         double seconds = (now - begun) * 1e-9;
         double left = share > 0 ? seconds * (1 - share) / share : 0;
-        String text = String.format(
-                Locale.ROOT, "%s: %3.0f %% of %,d %s, %.0f s left", stage, 100 * share, total, unit, left);
+        String text = String.format(Locale.ROOT, "%s: %3.0f %% of %s", stage, 100 * share, amount(have, seconds))
+                + (remark.isEmpty() ? "" : ", " + remark)
+                + String.format(Locale.ROOT, ", %.0f s left", left);
         if (terminal) {
             int full = (int) Math.round(BAR * share);
             out.print("\r\033[K" + "▪".repeat(full) + "·".repeat(BAR - full) + "  " + text);
@@ -58,6 +66,14 @@ final class ConsoleProgress implements Progress {
         } else {
             out.println(text);
         }
+    }
+
+    /** The total, and for bytes how fast they go. */
+    private String amount(long have, double seconds) {
+        if (!unit.equals("bytes")) {
+            return String.format(Locale.ROOT, "%,d %s", total, unit);
+        }
+        return String.format(Locale.ROOT, "%,.1f MB, %.0f MB/s", total * 1e-6, have * 1e-6 / Math.max(seconds, 1e-3));
     }
 
     @Override

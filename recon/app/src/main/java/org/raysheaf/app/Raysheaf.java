@@ -15,6 +15,8 @@ import picocli.CommandLine.Spec;
         footer = {"", Common.CAUTION},
         subcommands = {
             CheckVerb.class,
+            ImportVerb.class,
+            CalibrateVerb.class,
             SimulateVerb.class,
             PairVerb.class,
             NormalizeVerb.class,
@@ -62,7 +64,7 @@ public final class Raysheaf implements Runnable {
     public void run() {
         throw new CommandLine.ParameterException(
                 spec.commandLine(),
-                "which verb? check, simulate, pair, normalize, sensitivity, reconstruct, lines or demo");
+                "which verb? check, import, calibrate, simulate, pair, normalize, sensitivity, reconstruct, lines or demo");
     }
 
     /** The version of the program, for results. */
