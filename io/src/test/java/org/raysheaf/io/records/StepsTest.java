@@ -194,6 +194,23 @@ class StepsTest {
     }
 
     @Test
+    void aDescriptionIsCheckedWithoutData() throws IOException {
+        for (String format : new String[] {
+            "{kind: hdf5, dataset: d, fields: [{name: c}, {name: t}]}",
+            "{kind: npy, fields: [{name: c}, {name: t}]}",
+            "{kind: text, fields: [{name: c, column: 1}, {name: t, column: 2}]}"
+        }) {
+            String good = "format: " + format + "\nattributes: {element: {from: c}, time_ps: {from: t}}\n";
+            new RecordImport(folder.resolve("RECORDS.yaml"), Lab.describe(good), Lab.system()).verify();
+            RecordImport bad = new RecordImport(
+                    folder.resolve("RECORDS.yaml"), Lab.describe(good.replace("from: c", "from: c + d")), Lab.system());
+            assertThatThrownBy(bad::verify)
+                    .hasMessageContaining(
+                            "RECORDS.yaml, attributes.element: formula \"c + d\", character 5: expected one of the values");
+        }
+    }
+
+    @Test
     void descriptionsThatCannotBeAreRefused() {
         assertThatThrownBy(() -> Lab.describe(FIELDS + """
                         attributes: {element: {from: c}, energie_keV: {from: c}, energy_a_keV: {from: c}, time_ps: {from: t, unit: keV}}
