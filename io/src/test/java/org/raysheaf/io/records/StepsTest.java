@@ -194,6 +194,20 @@ class StepsTest {
     }
 
     @Test
+    void pointsFindTheElementThatTheyLieIn() throws IOException {
+        var centre = Lab.system().centre(77);
+        Path file = Lab.text(
+                folder, "run.txt", "0,1," + (centre.x() + 0.3) + "\n0,2," + (centre.x() + 500) + "\n0,3,nan\n");
+        Lab.Imported got = Lab.run(
+                folder,
+                FIELDS + "compute: {e: {kind: element_at, x_mm: x, y_mm: \"" + centre.y() + "\", z_mm: \"0 + "
+                        + centre.z() + " - 0.2\"}}\n" + "attributes: {element: {from: e}, time_ps: {from: t}}\n",
+                file);
+        assertThat(Lab.elements(got)).containsExactly(77);
+        assertThat(got.result().setAside()).isEqualTo(Map.of("compute.e: point in no element", 2L));
+    }
+
+    @Test
     void aDescriptionIsCheckedWithoutData() throws IOException {
         for (String format : new String[] {
             "{kind: hdf5, dataset: d, fields: [{name: c}, {name: t}]}",
