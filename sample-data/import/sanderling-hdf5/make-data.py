@@ -1,4 +1,4 @@
-"""Makes run.h5 and positions.csv: a table of pairs as a lab might keep it with h5py, from the first 25,000 pairs of heron-rods.h5.
+"""Makes run.hdf5 and positions.csv: a table of pairs as a lab might keep it with h5py, from the first 25,000 pairs of heron-rods.h5.
 
 Run it in this folder with a Python that has numpy and h5py. The table is a dataset of compound values, chunked and compressed. Crystals have the
 lab's own numbers; a file tells where each of them is.
@@ -43,7 +43,7 @@ table["late"] = pairs["delayed"] == 1
 table["quality"] = 200
 table["quality"][::500] = 3
 
-with h5py.File("run.h5", "w", track_order=False) as f:
+with h5py.File("run.hdf5", "w", track_order=False) as f:
     run = f.create_group("run_12")
     run.create_dataset("pairs", data=table, chunks=(4096,), compression="gzip", compression_opts=9, shuffle=True)
     run.create_dataset("temperature_C", data=numpy.full(60, 21.5, "f4"))

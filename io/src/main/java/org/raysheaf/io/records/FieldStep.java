@@ -107,6 +107,15 @@ public sealed interface FieldStep {
         }
     }
 
+    /**
+     * The element of the system in which a point lies, for detectors that measure points. A point in none sets the record aside.
+     *
+     * @param xMm the point (mm), in the frame of the system
+     * @param yMm likewise
+     * @param zMm likewise
+     */
+    record ElementAtStep(String xMm, String yMm, String zMm) implements FieldStep {}
+
     /** The settings of this step that are formulas, for messages and to find what it depends on. */
     default List<String> inputs() {
         if (this instanceof FormulaStep s) {
@@ -123,6 +132,9 @@ public sealed interface FieldStep {
         }
         if (this instanceof ClockStep s) {
             return s.per() == null ? List.of(s.of()) : List.of(s.of(), s.per());
+        }
+        if (this instanceof ElementAtStep s) {
+            return List.of(s.xMm(), s.yMm(), s.zMm());
         }
         return List.of(((NearestElementStep) this).key());
     }

@@ -195,6 +195,8 @@ final class Pipeline implements Formula.Program {
             result = map(place, s);
         } else if (step instanceof FieldStep.ClockStep s) {
             result = clock(place, name, s);
+        } else if (step instanceof FieldStep.ElementAtStep s) {
+            result = elementAt(place, s);
         } else {
             FieldStep.NearestElementStep s = (FieldStep.NearestElementStep) step;
             TableFile table = table(place, s.file());
@@ -299,6 +301,26 @@ final class Pipeline implements Formula.Program {
                 reason(place + ": per outside 0 to 65535"));
         add(clock);
         clocks.put(name, clock);
+        return result;
+    }
+
+    private Column elementAt(String place, FieldStep.ElementAtStep step) throws RecordException {
+        double[] x = Loops.real(this, formula(place, step.xMm())).doubles();
+        double[] y = Loops.real(this, formula(place, step.yMm())).doubles();
+        double[] z = Loops.real(this, formula(place, step.zMm())).doubles();
+        DetectorSystem system = surroundings.system();
+        Column result = temporary(true);
+        long[] to = result.longs();
+        int outside = reason(place + ": point in no element");
+        add((size, fates) -> {
+            for (int i = 0; i < size; i++) {
+                if (fates[i] == 0) {
+                    boolean finite = Double.isFinite(x[i]) && Double.isFinite(y[i]) && Double.isFinite(z[i]);
+                    to[i] = finite ? system.elementAt(new Vector3(x[i], y[i], z[i])) : -1;
+                    fates[i] = to[i] < 0 ? outside : 0;
+                }
+            }
+        });
         return result;
     }
 

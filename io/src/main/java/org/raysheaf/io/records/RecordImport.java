@@ -11,7 +11,6 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import java.util.stream.Stream;
-import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
@@ -192,6 +191,32 @@ public final class RecordImport {
         return bytes;
     }
 
+    /**
+     * Checks all of the description that can be checked without data: formulas, tables, maps, positions.
+     *
+     * @throws RecordException if something in it cannot be
+     * @throws IOException if a table or map cannot be read
+     */
+    public void verify() throws IOException {
+        Reasons reasons = new Reasons();
+        RecordReader reader = readerFor(description.format(), new DamageLog(description.damage()), reasons);
+        FieldBlock block = reader.block();
+        // What kind of numbers arrays hold only the file knows; whole ones serve in every place.
+        if (description.format() instanceof Hdf5Format hdf5) {
+            hdf5.fields().forEach(field -> block.add(field.name(), true));
+        } else if (description.format() instanceof NpyFormat npy) {
+            npy.fields().forEach(field -> block.add(field.name(), true));
+        }
+        List<String> wanted = new ArrayList<>();
+        description.attributes().values().forEach(mapping -> wanted.add(mapping.from()));
+        Pipeline pipeline =
+                new Pipeline(description, block.fields(), wanted, new Surroundings(path, system), reasons, false);
+        EventFiller filler = new EventFiller(description.attributes(), pipeline, system.elements(), true, reasons);
+        if (filler.attributes().isEmpty()) {
+            throw new RecordException(path + ", attributes: expected at least one, found none");
+        }
+    }
+
     /** A reader for a format. */
     static RecordReader readerFor(RecordFormat format, DamageLog damage, Reasons reasons) {
         if (format instanceof TextFormat text) {
@@ -205,23 +230,5 @@ public final class RecordImport {
         }
         NpyFormat npy = (NpyFormat) format;
         return new ArrayReader(file -> NpyArrays.open(file, npy, damage));
-    }
-
-    /** For code that takes values, not events, from the records; only in this package. */
-    @Nullable
-    CalibrationInputs calibration() {
-        return description.calibration();
-    }
-
-    Path path() {
-        return path;
-    }
-
-    RecordsDescription description() {
-        return description;
-    }
-
-    DetectorSystem system() {
-        return system;
     }
 }

@@ -74,6 +74,7 @@ final class TextReader implements RecordReader {
         consumed = 0;
         line = 0;
         records = 0;
+        passOverByteOrderMark();
         String header = "";
         for (int i = 0; i < format.headerLines(); ) {
             if (!nextLine()) {
@@ -86,6 +87,17 @@ final class TextReader implements RecordReader {
             }
         }
         findColumns(header);
+    }
+
+    /** Spreadsheets like to begin a file with one. */
+    private void passOverByteOrderMark() throws IOException {
+        while (end < 3 && !ended) {
+            fill();
+        }
+        if (end >= 3 && buffer[0] == (byte) 0xef && buffer[1] == (byte) 0xbb && buffer[2] == (byte) 0xbf) {
+            at = 3;
+            consumed = 3;
+        }
     }
 
     private void findColumns(String header) throws RecordException {

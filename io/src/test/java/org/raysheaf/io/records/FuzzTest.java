@@ -123,6 +123,16 @@ class FuzzTest {
                 return Files.readAllBytes(file);
             }
         },
+        COMPOUND("format: {kind: hdf5, dataset: g/hits, fields: [{name: c}, {name: t}, {name: e}]}\n") {
+            @Override
+            byte[] sound(Path folder) throws IOException {
+                // Made by compound.py beside it: 60 compound values with an enumeration among them, compressed in
+                // chunks.
+                try (java.io.InputStream stored = FuzzTest.class.getResourceAsStream("compound.h5")) {
+                    return java.util.Objects.requireNonNull(stored).readAllBytes();
+                }
+            }
+        },
         NPY("format: {kind: npy, fields: [{name: c}, {name: t}, {name: e}]}\n") {
             @Override
             byte[] sound(Path folder) throws IOException {

@@ -265,15 +265,15 @@ class RoundTripTest {
             if kind == "npy":
                 numpy.save(f"{folder}/table.npy", table)
             else:
-                with h5py.File(f"{folder}/table.h5", "w") as f:
+                with h5py.File(f"{folder}/table.h5", "w", libver="latest" if kind == "latest" else None) as f:
                     group = f.create_group("run7/bank")
                     options = dict(none={}, gzip=dict(compression="gzip", chunks=(5003,), shuffle=True, fletcher32=True),
-                                   lzf=dict(compression="lzf", chunks=(4096,)))[kind]
+                                   lzf=dict(compression="lzf", chunks=(4096,)), latest={})[kind]
                     group.create_dataset("hits", data=table, **options)
             """;
 
     @ParameterizedTest
-    @ValueSource(strings = {"none", "gzip", "lzf"})
+    @ValueSource(strings = {"none", "gzip", "lzf", "latest"})
     void compoundValuesThatH5pyWrote(String kind) throws IOException, InterruptedException {
         OutsideReader.assumePython("numpy", "h5py");
         writeArrays();

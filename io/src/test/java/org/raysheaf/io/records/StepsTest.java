@@ -194,6 +194,37 @@ class StepsTest {
     }
 
     @Test
+    void pointsFindTheElementThatTheyLieIn() throws IOException {
+        var centre = Lab.system().centre(77);
+        Path file = Lab.text(
+                folder, "run.txt", "0,1," + (centre.x() + 0.3) + "\n0,2," + (centre.x() + 500) + "\n0,3,nan\n");
+        Lab.Imported got = Lab.run(
+                folder,
+                FIELDS + "compute: {e: {kind: element_at, x_mm: x, y_mm: \"" + centre.y() + "\", z_mm: \"0 + "
+                        + centre.z() + " - 0.2\"}}\n" + "attributes: {element: {from: e}, time_ps: {from: t}}\n",
+                file);
+        assertThat(Lab.elements(got)).containsExactly(77);
+        assertThat(got.result().setAside()).isEqualTo(Map.of("compute.e: point in no element", 2L));
+    }
+
+    @Test
+    void aDescriptionIsCheckedWithoutData() throws IOException {
+        for (String format : new String[] {
+            "{kind: hdf5, dataset: d, fields: [{name: c}, {name: t}]}",
+            "{kind: npy, fields: [{name: c}, {name: t}]}",
+            "{kind: text, fields: [{name: c, column: 1}, {name: t, column: 2}]}"
+        }) {
+            String good = "format: " + format + "\nattributes: {element: {from: c}, time_ps: {from: t}}\n";
+            new RecordImport(folder.resolve("RECORDS.yaml"), Lab.describe(good), Lab.system()).verify();
+            RecordImport bad = new RecordImport(
+                    folder.resolve("RECORDS.yaml"), Lab.describe(good.replace("from: c", "from: c + d")), Lab.system());
+            assertThatThrownBy(bad::verify)
+                    .hasMessageContaining(
+                            "RECORDS.yaml, attributes.element: formula \"c + d\", character 5: expected one of the values");
+        }
+    }
+
+    @Test
     void descriptionsThatCannotBeAreRefused() {
         assertThatThrownBy(() -> Lab.describe(FIELDS + """
                         attributes: {element: {from: c}, energie_keV: {from: c}, energy_a_keV: {from: c}, time_ps: {from: t, unit: keV}}

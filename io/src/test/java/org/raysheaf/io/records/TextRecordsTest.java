@@ -38,7 +38,7 @@ class TextRecordsTest {
         Path file = Lab.text(
                 folder,
                 "run.txt",
-                "# a comment\r\nrun 17\r\nKanal;T;E / keV;other\r\n\r\n5; 0x0A ;511,5;x\r\n# in between\r\n'6';b;'4,5e2';\r\n7;c;n.a.;1\r\n8;d;;1");
+                "\uFEFF# a comment\r\nrun 17\r\nKanal;T;E / keV;other\r\n\r\n5; 0x0A ;511,5;x\r\n# in between\r\n'6';b;'4,5e2';\r\n7;c;n.a.;1\r\n8;d;;1");
         Lab.Imported got = Lab.run(folder, NAMED, file);
         assertThat(Lab.elements(got)).containsExactly(5, 6);
         assertThat(Lab.times(got)).containsExactly(10_000_000, 11_000_000);

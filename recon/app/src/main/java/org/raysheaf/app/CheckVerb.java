@@ -20,6 +20,8 @@ import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.picture.BoxOutline;
 import org.raysheaf.io.picture.DetectorPicture;
+import org.raysheaf.io.records.RecordImport;
+import org.raysheaf.io.records.RecordsDescription;
 import org.raysheaf.io.volume.Volume;
 import org.raysheaf.io.volume.VolumeFile;
 import org.raysheaf.transport.Acquisition;
@@ -91,6 +93,7 @@ final class CheckVerb extends Verb {
                 figures.put("duration_s", acquisition.durationS());
                 figures.put("output", acquisition.output().phrase());
             }
+            case RecordsDescription.KIND -> records(file, figures);
             case "reconstruction" -> {
                 ReconstructionPlan plan = DescriptionReader.read(file, kind, ReconstructionPlan.class);
                 figures.put("list", plan.list() == null ? "none" : sound(file, plan.list()));
@@ -100,6 +103,20 @@ final class CheckVerb extends Verb {
             default -> throw new IOException(file + ": a " + kind + " description is not known to this version");
         }
         figures.put("verdict", "sound");
+    }
+
+    private void records(Path file, Map<String, Object> figures) throws IOException {
+        RecordsDescription records = DescriptionReader.read(file, RecordsDescription.KIND, RecordsDescription.class);
+        Path system = file.resolveSibling(sound(file, records.system()));
+        new RecordImport(
+                        file,
+                        records,
+                        Systems.read(system, common(), common().pool(), common().progress())
+                                .system())
+                .verify();
+        figures.put("records", records.name());
+        figures.put("system", records.system());
+        figures.put("columns", records.attributes().keySet());
     }
 
     private static String sound(Path file, String named) throws IOException {

@@ -123,7 +123,7 @@ class ImportTest {
 
     @Test
     void theHdf5ExampleGivesThePairsThatItWasMadeOf() throws IOException {
-        EventBlock made = read(imported("sanderling-hdf5", "run.h5"), PAIRS);
+        EventBlock made = read(imported("sanderling-hdf5", "run.hdf5"), PAIRS);
         EventBlock source = read(SAMPLES.resolve("heron-rods.h5"), PAIRS);
         assertThat(made.size()).isEqualTo(PAIRS - PAIRS / 500); // those of poor quality
         int m = 0;
