@@ -3,7 +3,6 @@ package org.raysheaf.io.records;
 import java.io.IOException;
 import java.io.InputStream;
 import java.nio.charset.StandardCharsets;
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Arrays;
@@ -67,7 +66,7 @@ final class TextReader implements RecordReader {
     public void open(Path next) throws IOException {
         close();
         file = next;
-        stream = Files.newInputStream(next);
+        stream = DataFile.open(next);
         at = 0;
         end = 0;
         ended = false;

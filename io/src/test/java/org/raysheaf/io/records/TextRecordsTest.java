@@ -113,6 +113,29 @@ class TextRecordsTest {
             """;
 
     @Test
+    void compressedFilesAreReadAsTheyAre() throws IOException {
+        StringBuilder text = new StringBuilder();
+        for (int i = 0; i < 50_000; i++) {
+            text.append(i % 512).append(',').append(i * 7919L % 100_003).append('\n');
+        }
+        java.io.ByteArrayOutputStream bytes = new java.io.ByteArrayOutputStream();
+        try (var out = new java.util.zip.GZIPOutputStream(bytes)) {
+            out.write(text.toString().getBytes(StandardCharsets.US_ASCII));
+        }
+        Path file = java.nio.file.Files.write(folder.resolve("run.txt.gz"), bytes.toByteArray());
+        Lab.Imported got = Lab.run(folder, PLAIN, file);
+        assertThat(got.events().size()).isEqualTo(50_000);
+        assertThat(got.result().bytes()).isEqualTo(text.length());
+        java.nio.file.Files.write(file, java.util.Arrays.copyOf(bytes.toByteArray(), bytes.size() / 2));
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .isInstanceOf(RecordException.class)
+                .hasMessageContaining("run.txt.gz: expected sound compressed data, found damage or the end after");
+        java.nio.file.Files.writeString(file, "1,2\n");
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .hasMessageContaining("run.txt.gz: expected data compressed with gzip");
+    }
+
+    @Test
     void impossibleValuesAreSetAsideByColumn() throws IOException {
         Path file = Lab.text(folder, "run.txt", "1,10\n512,10\n-1,10\n1.5,10\nnan,10\ninf,10\n2,-1\n3,30\n");
         Lab.Imported got = Lab.run(folder, PLAIN, file);
