@@ -76,6 +76,14 @@ class TextRecordsTest {
     }
 
     @Test
+    void whatIsNoTextIsShownInHexadecimal() throws IOException {
+        Path file = java.nio.file.Files.write(folder.resolve("run.bin"), new byte[] {1, 2, (byte) 0xff, 0, '\n'});
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .hasMessageContaining("line 1")
+                .hasMessageContaining("the record: 01 02 ff 00;");
+    }
+
+    @Test
     void aMissingColumnNamesThoseThatAreThere() throws IOException {
         Path file = Lab.text(folder, "run.txt", "x\nKanal;T;E\n");
         assertThatThrownBy(() -> Lab.run(folder, NAMED, file))
