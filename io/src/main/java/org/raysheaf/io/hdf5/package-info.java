@@ -9,8 +9,9 @@
  * <p>Why not a library: the one kept pure-Java library cannot write beyond memory, and while reading it ignores Fletcher checksums,
  * returns garbage for truncated contiguous data and meets damaged headers with arbitrary runtime exceptions or huge allocations. A guard
  * around it would have to walk the same structures as a reader does, so the walk is the reader; tests let that library, h5py and h5dump
- * read what is written here. What is read: superblocks 0 to 3, both kinds of object header, groups as symbol tables or compact links,
- * compact, contiguous and chunked (B-tree version 1) layouts, the filters shuffle, deflate and fletcher32. That is what h5py, MATLAB
+ * read what is written here. What is read: superblocks 0 to 3, also behind a user block, both kinds of object header, groups as symbol tables or compact links,
+ * compact, contiguous and chunked (B-tree version 1) layouts, the filters shuffle, deflate, lzf and fletcher32,
+ * numbers, texts and members of compound values. That is what h5py, MATLAB
  * and the HDF5 library write unless asked for the newest structures ({@code libver="latest"}), which are refused by name.
  *
  * <p>Byte layouts follow the "HDF5 File Format Specification", version 3.0 (The HDF Group). Public.

@@ -19,12 +19,14 @@ public final class OverviewPage {
      *
      * @param title title of the page
      * @param figures what was seen
+     * @param notes further lines of text, such as what became of records
      * @param warnings what will hurt, drawn as lines of text
      * @param file the PNG file to make
      * @param replace whether an existing file may be overwritten
      * @throws IOException if the file cannot be written, or Java finds no font
      */
-    public static void write(String title, ListFigures figures, List<String> warnings, Path file, boolean replace)
+    public static void write(
+            String title, ListFigures figures, List<String> notes, List<String> warnings, Path file, boolean replace)
             throws IOException {
         List<PlotPage.Plot> plots = new ArrayList<>();
         plots.add(elements(figures.elements()));
@@ -54,6 +56,7 @@ public final class OverviewPage {
         Double delayed = figures.delayedShare();
         lines.add(String.format(Locale.ROOT, "%,d events", figures.events())
                 + (delayed == null ? "" : String.format(Locale.ROOT, ", %.2f %% of them delayed", 100 * delayed)));
+        lines.addAll(notes);
         warnings.forEach(warning -> lines.add("! " + warning));
         PlotPage.write(title, lines, plots, file, replace);
     }

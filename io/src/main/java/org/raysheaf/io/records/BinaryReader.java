@@ -2,7 +2,6 @@ package org.raysheaf.io.records;
 
 import java.io.IOException;
 import java.io.InputStream;
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Arrays;
@@ -181,22 +180,21 @@ final class BinaryReader implements RecordReader {
     public void open(Path next) throws IOException {
         close();
         file = next;
-        stream = Files.newInputStream(next);
         at = BitPlace.MARGIN;
         end = BitPlace.MARGIN;
         ended = false;
         searching = false;
         records = 0;
         consumed = 0;
-        long header = format.skipBytes();
-        while (header > 0) {
-            long skipped = stream.skip(Math.min(header, Files.size(next) - consumed));
-            if (skipped <= 0) {
+        InputStream opened = DataFile.open(next);
+        stream = opened;
+        for (long left = format.skipBytes(); left > 0; left = format.skipBytes() - consumed) {
+            int got = opened.read(buffer, 0, (int) Math.min(left, buffer.length));
+            if (got < 0) {
                 throw new RecordException(file + ": expected a header of " + format.skipBytes()
                         + " bytes, found a file of only " + consumed + "; correct format.skip_bytes");
             }
-            consumed += skipped;
-            header -= skipped;
+            consumed += got;
         }
     }
 

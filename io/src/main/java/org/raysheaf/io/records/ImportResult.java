@@ -18,7 +18,7 @@ import java.util.Map;
  * @param unread columns, members and datasets of the files that no field reads
  * @param clocks for every clock, how often it wrapped around and how often it went back
  * @param lastTimePs time of the last event (ps), 0 without times
- * @param bytes bytes of data
+ * @param bytes bytes of data, uncompressed
  */
 public record ImportResult(
         long records,

@@ -16,7 +16,6 @@ import org.raysheaf.geometry.frame.Vector3;
  * the order of the description, as far as something wanted depends on them. One thread.
  */
 final class Pipeline implements Formula.Program {
-    private final RecordsDescription description;
     private final Surroundings surroundings;
     private final Reasons reasons;
     private final Map<String, Column> values = new LinkedHashMap<>();
@@ -46,7 +45,6 @@ final class Pipeline implements Formula.Program {
             Reasons reasons,
             boolean lenient)
             throws IOException {
-        this.description = description;
         this.surroundings = surroundings;
         this.reasons = reasons;
         this.needed = needed(description, wanted, lenient);
@@ -386,9 +384,7 @@ final class Pipeline implements Formula.Program {
 
     @Override
     public Set<String> names() {
-        Set<String> names = new LinkedHashSet<>(values.keySet());
-        names.addAll(description.compute().keySet());
-        return names;
+        return values.keySet();
     }
 
     @Override

@@ -22,7 +22,7 @@ import org.raysheaf.io.overview.Spectrum;
  * <p>Gains: {@link Photopeak} of the channel's amplitudes, {@code gain = peak_keV / position}. Offsets: {@link OffsetSolver} over all pairs within a window;
  * the data are read {@value #PASSES} times, each time with the window drawn closer around the solution before, so that random coincidences weigh little.
  * With a point source at a known place, the difference of the flight paths is taken off first; without, the source is taken to be as near to one as to the other on
- * average. Immutable.
+ * average. Singles of several boards are paired within each board only. Immutable.
  */
 public final class RecordCalibration {
     /** Speed of light in vacuum: 0.299792458 mm/ps (exact, SI definition). */

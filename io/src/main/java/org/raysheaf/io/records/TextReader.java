@@ -3,10 +3,10 @@ package org.raysheaf.io.records;
 import java.io.IOException;
 import java.io.InputStream;
 import java.nio.charset.StandardCharsets;
-import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.Arrays;
+import java.util.HexFormat;
 import java.util.List;
 import java.util.Map;
 import org.jspecify.annotations.Nullable;
@@ -15,6 +15,7 @@ import org.jspecify.annotations.Nullable;
 final class TextReader implements RecordReader {
     private static final int LONGEST_LINE = 1 << 20;
     private static final int FIRST_BUFFER = 1 << 18;
+    private static final int LONGEST_EXCERPT = 32;
 
     private final TextFormat format;
     private final DamageLog damage;
@@ -67,7 +68,7 @@ final class TextReader implements RecordReader {
     public void open(Path next) throws IOException {
         close();
         file = next;
-        stream = Files.newInputStream(next);
+        stream = DataFile.open(next);
         at = 0;
         end = 0;
         ended = false;
@@ -176,7 +177,16 @@ final class TextReader implements RecordReader {
     private void report(String trouble) throws RecordException {
         int colon = trouble.indexOf(": ");
         String kind = colon < 0 ? trouble : trouble.substring(0, colon);
-        damage.unreadable(file, "line " + line, kind, trouble, "\"" + printable(lineText()) + "\"");
+        damage.unreadable(file, "line " + line, kind, trouble, excerpt());
+    }
+
+    /** The line, as text or, if it is none, in hexadecimal. */
+    private String excerpt() {
+        String text = printable(lineText());
+        int shown = Math.min(lineEnd - lineStart, LONGEST_EXCERPT);
+        return text.indexOf('\uFFFD') < 0
+                ? "\"" + text + "\""
+                : HexFormat.ofDelimiter(" ").formatHex(buffer, lineStart, lineStart + shown);
     }
 
     private static String printable(String text) {
@@ -381,7 +391,7 @@ final class TextReader implements RecordReader {
                 "line " + line,
                 "line too long",
                 "expected a line of at most " + LONGEST_LINE + " bytes, found a longer one; is this a binary file?",
-                "\"" + printable(lineText()) + "\"");
+                excerpt());
         while (true) {
             int scan = at;
             while (scan < end && buffer[scan] != '\n') {

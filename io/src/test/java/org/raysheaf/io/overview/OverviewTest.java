@@ -227,9 +227,9 @@ class OverviewTest {
     @Test
     void thePageIsDrawnWhateverTheFigures() throws IOException {
         Path page = folder.resolve("page.png");
-        OverviewPage.write("good", new Good().figures(), List.of("a warning"), page, false);
+        OverviewPage.write("good", new Good().figures(), List.of("a note"), List.of("a warning"), page, false);
         assertThat(ImageIO.read(page.toFile()).getWidth()).isGreaterThan(1000);
-        OverviewPage.write("empty", new ListOverview(SYSTEM, COLUMNS).figures(), List.of(), page, true);
+        OverviewPage.write("empty", new ListOverview(SYSTEM, COLUMNS).figures(), List.of(), List.of(), page, true);
         assertThat(Files.size(page)).isPositive();
     }
 

@@ -89,6 +89,41 @@ class BinaryRecordsTest {
         assertThat(got.result().unmapped()).isEmpty();
     }
 
+    /** Marks carry the coarse time, events only the fine one. */
+    @Test
+    void timeMarksGiveTheCoarseTime() throws IOException {
+        String yaml = """
+                format:
+                  kind: binary
+                  records:
+                    - name: time
+                      bytes: 8
+                      role: mark
+                      when: [{bit: 63, bits: 1, equals: "1"}]
+                      fields: [{name: coarse, bit: 0, bits: 40}]
+                    - name: event
+                      bytes: 8
+                      fields: [{name: channel, bit: 0, bits: 9}, {name: fine, bit: 16, bits: 24}]
+                set_aside: [{reason: before the first mark, when: time.count == 0}]
+                attributes:
+                  element: {from: channel}
+                  time_ps: {from: time.coarse * 1000000 + fine}
+                """;
+        ByteBuffer bytes = ByteBuffer.allocate(100)
+                .order(ByteOrder.LITTLE_ENDIAN)
+                .putLong(7L << 16 | 1)
+                .putLong(1L << 63 | 5)
+                .putLong(8L << 16 | 2)
+                .putLong(1L << 63 | 6)
+                .putLong(9L << 16 | 3)
+                .putLong(10L << 16 | 4);
+        Lab.Imported got = Lab.run(folder, yaml, write(bytes));
+        assertThat(Lab.elements(got)).containsExactly(2, 3, 4);
+        assertThat(Lab.times(got)).containsExactly(5_000_008, 6_000_009, 6_000_010);
+        assertThat(got.result().setAside()).isEqualTo(Map.of("before the first mark", 1L));
+        assertThat(got.result().marks()).isEqualTo(Map.of("time", 2L));
+    }
+
     @Test
     void thousandsOfMarksBetweenTwoEventsAreNoTrouble() throws IOException {
         ByteBuffer bytes = ByteBuffer.allocate(8 * 50_003);

@@ -76,6 +76,14 @@ class TextRecordsTest {
     }
 
     @Test
+    void whatIsNoTextIsShownInHexadecimal() throws IOException {
+        Path file = java.nio.file.Files.write(folder.resolve("run.bin"), new byte[] {1, 2, (byte) 0xff, 0, '\n'});
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .hasMessageContaining("line 1")
+                .hasMessageContaining("the record: 01 02 ff 00;");
+    }
+
+    @Test
     void aMissingColumnNamesThoseThatAreThere() throws IOException {
         Path file = Lab.text(folder, "run.txt", "x\nKanal;T;E\n");
         assertThatThrownBy(() -> Lab.run(folder, NAMED, file))
@@ -111,6 +119,29 @@ class TextRecordsTest {
             format: {kind: text, fields: [{name: c, column: 1}, {name: t, column: 2, type: integer}]}
             attributes: {element: {from: c}, time_ps: {from: t}}
             """;
+
+    @Test
+    void compressedFilesAreReadAsTheyAre() throws IOException {
+        StringBuilder text = new StringBuilder();
+        for (int i = 0; i < 50_000; i++) {
+            text.append(i % 512).append(',').append(i * 7919L % 100_003).append('\n');
+        }
+        java.io.ByteArrayOutputStream bytes = new java.io.ByteArrayOutputStream();
+        try (var out = new java.util.zip.GZIPOutputStream(bytes)) {
+            out.write(text.toString().getBytes(StandardCharsets.US_ASCII));
+        }
+        Path file = java.nio.file.Files.write(folder.resolve("run.txt.gz"), bytes.toByteArray());
+        Lab.Imported got = Lab.run(folder, PLAIN, file);
+        assertThat(got.events().size()).isEqualTo(50_000);
+        assertThat(got.result().bytes()).isEqualTo(text.length());
+        java.nio.file.Files.write(file, java.util.Arrays.copyOf(bytes.toByteArray(), bytes.size() / 2));
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .isInstanceOf(RecordException.class)
+                .hasMessageContaining("run.txt.gz: expected sound compressed data, found damage or the end after");
+        java.nio.file.Files.writeString(file, "1,2\n");
+        assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
+                .hasMessageContaining("run.txt.gz: expected data compressed with gzip");
+    }
 
     @Test
     void impossibleValuesAreSetAsideByColumn() throws IOException {

@@ -182,6 +182,30 @@ final class ImportVerb extends Verb {
         return lines;
     }
 
+    /** What became of the records, in a few lines of a picture. */
+    private static List<String> notes(ImportResult result) {
+        List<String> notes = new ArrayList<>();
+        notes.add(String.format(Locale.ROOT, "%,d records read, %,d written", result.records(), result.written()));
+        notes.add(counts("set aside", result.setAside()));
+        notes.add(counts("beside them", result.marks()));
+        notes.add(counts("unreadable", result.unreadable()));
+        result.clocks()
+                .forEach((name, clock) -> notes.add(String.format(
+                        Locale.ROOT,
+                        "clock %s: wrapped around %,d times, went back %,d times",
+                        name,
+                        clock.wraps(),
+                        clock.stepsBack())));
+        notes.removeIf(String::isEmpty);
+        return notes;
+    }
+
+    private static String counts(String what, Map<String, Long> counts) {
+        List<String> parts = new ArrayList<>();
+        counts.forEach((name, count) -> parts.add(String.format(Locale.ROOT, "%s %,d", name, count)));
+        return parts.isEmpty() ? "" : what + ": " + String.join(", ", parts);
+    }
+
     private void writeReport(String name, ImportResult result, ListFigures figures, List<String> warnings)
             throws IOException {
         Map<String, Object> all = new LinkedHashMap<>();
@@ -191,6 +215,6 @@ final class ImportVerb extends Verb {
         all.put("overview", figures);
         all.put("warnings", warnings);
         ResultFile.write(all, reportFiles().get(0), common().replace());
-        OverviewPage.write(name, figures, warnings, reportFiles().get(1), common().replace());
+        OverviewPage.write(name, figures, notes(result), warnings, reportFiles().get(1), common().replace());
     }
 }
