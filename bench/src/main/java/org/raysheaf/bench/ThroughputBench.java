@@ -14,8 +14,8 @@ import java.util.stream.Stream;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
 import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.FieldOfView;
-import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.PassReport;
 import org.raysheaf.engine.ray.EventBackground;
@@ -144,7 +144,7 @@ public final class ThroughputBench implements Callable<Integer> {
         double loadingS = 1e-9 * (System.nanoTime() - start);
         double bytesPerEvent =
                 (Memory.retained() - before - Float.BYTES * (double) store.support().length) / store.events();
-        ListModeEm em = new ListModeEm(store, ones, new EstimationSettings(PASSES_PER_ROUND, 1, lanes, 0), pool);
+        Estimator em = new Estimator(store, ones, new EstimationSettings(PASSES_PER_ROUND, 1, lanes, 0), pool);
         Estimate warm = em.run(PassListener.SILENT, Progress.SILENT);
         print(
                 "%,d events, %d x %d x %d voxels of %s mm, %d threads, %d lanes, %.1f planes per event, read and sorted in %.1f s",
@@ -196,7 +196,7 @@ public final class ThroughputBench implements Callable<Integer> {
         Image sensitivity = FieldOfView.support(Image.filled(grid, 1), FieldOfView.cylinder(radiusMm));
         EventStore store = load(list, sensitivity, pool);
         EstimationSettings settings = new EstimationSettings(CHECKED_PASSES, 1, lanes, 0);
-        float[] ours = new ListModeEm(store, sensitivity, settings, pool)
+        float[] ours = new Estimator(store, sensitivity, settings, pool)
                 .run(PassListener.SILENT, Progress.SILENT)
                 .image()
                 .values();

@@ -71,7 +71,7 @@ public class VisitBenchmark {
         LineFile list = LineFile.open(file);
         Files.delete(file);
         ForkJoinPool pool = new ForkJoinPool(1);
-        sorted = EventLoader.load(
+        EventLoader.load(
                         list,
                         list,
                         Image.filled(grid, 1),
@@ -80,7 +80,7 @@ public class VisitBenchmark {
                         EventBackground.NONE,
                         pool,
                         Progress.SILENT)
-                .walks();
+                .each(0, events, page -> sorted = page.walks());
         pool.shutdown();
         listed = listed(list, lattice);
     }

@@ -10,8 +10,8 @@ import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.FieldOfView;
-import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.correct.Attenuation;
 import org.raysheaf.engine.correct.Backgrounds;
@@ -173,7 +173,7 @@ record CorrectedModel(
                         backgrounds.of(list),
                         pool,
                         Progress.SILENT);
-                Image image = new ListModeEm(store, counts, ROUGH, pool)
+                Image image = new Estimator(store, counts, ROUGH, pool)
                         .run(PassListener.SILENT, Progress.SILENT)
                         .image();
                 progress.begin("estimating scatter", 1, "rounds");

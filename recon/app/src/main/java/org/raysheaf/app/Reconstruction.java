@@ -5,7 +5,7 @@ import java.nio.file.Path;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
-import org.raysheaf.engine.ListModeEm;
+import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
@@ -91,7 +91,7 @@ record Reconstruction(
                     model.background(),
                     pool,
                     progress);
-            return new ListModeEm(store, model.counts(), plan.estimation(), pool).run(PassListener.SILENT, progress);
+            return new Estimator(store, model.counts(), plan.estimation(), pool).run(PassListener.SILENT, progress);
         }
     }
 }

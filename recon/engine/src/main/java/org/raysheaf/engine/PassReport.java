@@ -1,5 +1,9 @@
 package org.raysheaf.engine;
 
+import java.util.ArrayList;
+import java.util.List;
+import org.raysheaf.geometry.port.Snapshot;
+
 /**
  * What one pass over the events did.
  *
@@ -10,4 +14,28 @@ package org.raysheaf.engine;
  * @param expectedEvents Σ_j s_j x_j after the pass; without background equal to the events used, up to rounding
  * @param seconds how long the pass took by the clock
  */
-public record PassReport(int number, double logLikelihood, double expectedEvents, double seconds) {}
+public record PassReport(int number, double logLikelihood, double expectedEvents, double seconds) {
+    private static final String KEY = "passes";
+    private static final int FIELDS = 3;
+
+    /** Writes reports down, in order. */
+    static void save(List<PassReport> passes, Snapshot snapshot) {
+        double[] numbers = new double[FIELDS * passes.size()];
+        for (int i = 0; i < passes.size(); i++) {
+            numbers[FIELDS * i] = passes.get(i).logLikelihood;
+            numbers[FIELDS * i + 1] = passes.get(i).expectedEvents;
+            numbers[FIELDS * i + 2] = passes.get(i).seconds;
+        }
+        snapshot.put(KEY, numbers);
+    }
+
+    /** Reads them back. */
+    static List<PassReport> restore(Snapshot snapshot) {
+        double[] numbers = snapshot.numbers(KEY);
+        List<PassReport> passes = new ArrayList<>();
+        for (int i = 0; i < numbers.length / FIELDS; i++) {
+            passes.add(new PassReport(i + 1, numbers[FIELDS * i], numbers[FIELDS * i + 1], numbers[FIELDS * i + 2]));
+        }
+        return passes;
+    }
+}

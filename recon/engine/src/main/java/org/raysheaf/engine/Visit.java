@@ -1,5 +1,6 @@
 package org.raysheaf.engine;
 
+import org.raysheaf.engine.ray.EventPage;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.Joseph;
 import org.raysheaf.engine.ray.Walks;
@@ -14,7 +15,20 @@ final class Visit {
 
     private static final double SMALL = 1e-200;
 
-    private Visit() {}
+    private final Joseph joseph;
+    private final int rays;
+    private final float[] image;
+    private final float[] accumulator;
+    // Σ ln q is kept as a sum and a product, over all pages of the run, so that pages leave no trace in the last bits.
+    private double sum;
+    private double product = 1;
+
+    private Visit(EventStore store, float[] image, float[] accumulator) {
+        this.joseph = new Joseph(store.lattice());
+        this.rays = store.raysPerEvent();
+        this.image = image;
+        this.accumulator = accumulator;
+    }
 
     /**
      * Adds Σ_e a_ej / q_e to the accumulator, with q_e = Σ_j a_ej x_j + b_e/c_e.
@@ -27,35 +41,40 @@ final class Visit {
      * @return Σ_e ln q_e
      */
     static double events(EventStore store, int from, int to, float[] image, float[] accumulator) {
-        return store.raysPerEvent() == 1 && store.background() == null
-                ? lines(store.walks(), from, to, image, accumulator)
-                : sheaves(store, from, to, image, accumulator);
+        Visit visit = new Visit(store, image, accumulator);
+        store.each(from, to, visit::page);
+        return visit.sum + Math.log(visit.product);
     }
 
-    private static double lines(Walks walks, int from, int to, float[] image, float[] accumulator) {
-        Joseph joseph = new Joseph(walks.lattice());
-        double sum = 0;
-        double product = 1;
-        for (int k = from; k < to; k++) {
+    private void page(EventPage page) {
+        if (rays == 1 && page.background() == null) {
+            lines(page.walks(), page.first() - page.offset(), page.end() - page.offset());
+        } else {
+            sheaves(page);
+        }
+    }
+
+    private void lines(Walks walks, int first, int end) {
+        double logs = sum;
+        double means = product;
+        for (int k = first; k < end; k++) {
             joseph.aim(walks, k);
             float mean = joseph.forward(image);
             joseph.back(1 / mean, accumulator);
-            product *= mean;
-            if (!(product > SMALL && product < LARGE)) {
-                sum += Math.log(product);
-                product = 1;
+            means *= mean;
+            if (!(means > SMALL && means < LARGE)) {
+                logs += Math.log(means);
+                means = 1;
             }
         }
-        return sum + Math.log(product);
+        sum = logs;
+        product = means;
     }
 
-    private static double sheaves(EventStore store, int from, int to, float[] image, float[] accumulator) {
-        Walks walks = store.walks();
-        Joseph joseph = new Joseph(walks.lattice());
-        int rays = store.raysPerEvent();
-        float[] background = store.background();
-        double sum = 0;
-        for (int event = from; event < to; event++) {
+    private void sheaves(EventPage page) {
+        Walks walks = page.walks();
+        float[] background = page.background();
+        for (int event = page.first() - page.offset(); event < page.end() - page.offset(); event++) {
             float mean = background == null ? 0 : background[event];
             for (int k = event * rays; k < (event + 1) * rays; k++) {
                 joseph.aim(walks, k);
@@ -66,8 +85,11 @@ final class Visit {
                 joseph.aim(walks, k);
                 joseph.back(ratio, accumulator);
             }
-            sum += Math.log(mean);
+            product *= mean;
+            if (!(product > SMALL && product < LARGE)) {
+                sum += Math.log(product);
+                product = 1;
+            }
         }
-        return sum;
     }
 }

@@ -98,14 +98,14 @@ final class GoldenEmTest {
         }
     }
 
-    private static ListModeEm estimator(EventBackground background, int passes) throws Exception {
+    private static Estimator estimator(EventBackground background, int passes) throws Exception {
         MemoryList list = new MemoryList(3, oneVoxelRays(), eventsInMixedOrder());
         Grid grid = new Grid(1, 1, 3, 1, 1, 1, Pose.IDENTITY);
         Image sensitivity = Sensitivity.of(list, grid, POOL, Progress.SILENT);
         Image support = FieldOfView.support(sensitivity, point -> true);
         EventStore store =
                 EventLoader.load(list, list, support, EventSelection.ALL, 1, background, POOL, Progress.SILENT);
-        return new ListModeEm(store, sensitivity, EstimationSettings.mlem(passes), POOL);
+        return new Estimator(store, sensitivity, EstimationSettings.mlem(passes), POOL);
     }
 
     /** Each row is a sheaf of three rays, each of which crosses one voxel of 1 mm through its middle. */

@@ -5,8 +5,8 @@ import java.time.Instant;
 import java.util.List;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.FieldOfView;
-import org.raysheaf.engine.ListModeEm;
 import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.Sensitivity;
 import org.raysheaf.engine.ray.EventBackground;
@@ -114,7 +114,7 @@ final class UniformCylinder {
         Image support = FieldOfView.support(counts, FieldOfView.cylinder(29));
         EventStore store = EventLoader.load(
                 list, sheaves, support, EventSelection.ALL, 1, EventBackground.NONE, pool, Progress.SILENT);
-        Image image = new ListModeEm(store, counts, EstimationSettings.mlem(passes), pool)
+        Image image = new Estimator(store, counts, EstimationSettings.mlem(passes), pool)
                 .run(PassListener.SILENT, Progress.SILENT)
                 .image();
         for (int j = 0; j < image.values().length; j++) {

@@ -193,7 +193,7 @@ public final class EventLoader {
         });
         Tasks.forEach(pool, subsets, s -> RayOrder.sort(order, starts[s], starts[s + 1]));
         kept.arrange(order, raysPerEvent);
-        return new EventStore(kept, raysPerEvent, starts, arrangedBackground(order), support, tally);
+        return EventStore.inMemory(kept, raysPerEvent, starts, arrangedBackground(order), support, tally);
     }
 
     private float @Nullable [] arrangedBackground(long[] order) {

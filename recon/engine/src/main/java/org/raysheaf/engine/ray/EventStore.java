@@ -1,11 +1,13 @@
 package org.raysheaf.engine.ray;
 
+import java.util.Arrays;
+import java.util.function.Consumer;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.EventTally;
 
 /**
  * The events of a list, ready to be visited: each is a run of {@link Walks}, as many as its sheaf has rays, and events are sorted by
- * {@link RayOrder} within their subset. Subset s holds every S-th event, in the order of the list, from the s-th on, so subsets are
+ * {@link RayOrder} within their subset. They come page by page, wherever they lie. Subset s holds every S-th event, in the order of the list, from the s-th on, so subsets are
  * alike.
  *
  * <p>Memory: {@value Walks#BYTES} bytes per ray, and 4 per event if there is a background; while loading up to 16 more per event of the
@@ -15,35 +17,61 @@ public final class EventStore {
     /** What an event costs beyond the planes it visits, in planes: set-up and a mispredicted branch or two. */
     private static final int FIXED_COST = 8;
 
-    private final Walks walks;
+    private final Pages pages;
+    private final Lattice lattice;
     private final int raysPerEvent;
     private final int[] subsetStarts;
-    private final float @Nullable [] background;
     private final float[] support;
     private final EventTally tally;
 
-    EventStore(
+    /** Where the events lie. */
+    @FunctionalInterface
+    interface Pages {
+        /** Brings the events from … to − 1 before a visitor, in order, in as many pages as it takes. Any thread may call. */
+        void each(int from, int to, Consumer<EventPage> visitor);
+    }
+
+    EventStore(Pages pages, Lattice lattice, int raysPerEvent, int[] subsetStarts, float[] support, EventTally tally) {
+        this.pages = pages;
+        this.lattice = lattice;
+        this.raysPerEvent = raysPerEvent;
+        this.subsetStarts = subsetStarts;
+        this.support = support;
+        this.tally = tally;
+    }
+
+    /** A store whose events all lie in memory. */
+    static EventStore inMemory(
             Walks walks,
             int raysPerEvent,
             int[] subsetStarts,
             float @Nullable [] background,
             float[] support,
             EventTally tally) {
-        this.walks = walks;
-        this.raysPerEvent = raysPerEvent;
-        this.subsetStarts = subsetStarts;
-        this.background = background;
-        this.support = support;
-        this.tally = tally;
+        Pages pages = (from, to, visitor) -> visitor.accept(new EventPage(walks, background, 0, from, to));
+        return new EventStore(pages, walks.lattice(), raysPerEvent, subsetStarts, support, tally);
     }
 
     /**
-     * The rays of all events: event e has the walks e · raysPerEvent to (e + 1) · raysPerEvent − 1.
+     * Brings a run of events before a visitor, in order, in as many pages as it takes. Safe for use by several threads at once.
      *
-     * @return the shared walks
+     * @param from first event
+     * @param to after the last event
+     * @param visitor may use a page only until it returns
      */
-    public Walks walks() {
-        return walks;
+    public void each(int from, int to, Consumer<EventPage> visitor) {
+        if (from < to) {
+            pages.each(from, to, visitor);
+        }
+    }
+
+    /**
+     * What the rays walk through.
+     *
+     * @return the lattice
+     */
+    public Lattice lattice() {
+        return lattice;
     }
 
     /**
@@ -84,15 +112,6 @@ public final class EventStore {
     }
 
     /**
-     * The background b/c of every event.
-     *
-     * @return the shared array (unit of the image times mm), or null if there is none
-     */
-    public float @Nullable [] background() {
-        return background;
-    }
-
-    /**
      * Where there may be activity; the line of every event in the store meets at least one such voxel.
      *
      * @return the shared array on the lattice: 1 where there may be activity, else 0
@@ -129,28 +148,39 @@ public final class EventStore {
     public int[] cut(int subset, int runs) {
         int from = start(subset);
         int to = start(subset + 1);
-        long total = 0;
-        for (int event = from; event < to; event++) {
-            total += cost(event);
-        }
+        long total = cost(from, to);
         int[] starts = new int[runs + 1];
-        long sum = 0;
-        int event = from;
-        for (int run = 0; run < runs; run++) {
-            starts[run] = event;
-            long goal = total * (run + 1) / runs;
-            while (event < to && sum < goal) {
-                sum += cost(event++);
+        Arrays.fill(starts, 1, runs + 1, to);
+        starts[0] = from;
+        long[] sum = {0};
+        int[] run = {1};
+        each(from, to, page -> {
+            for (int event = page.first(); event < page.end() && run[0] < runs; event++) {
+                // A run ends before the event at which its share of the cost is reached.
+                while (run[0] < runs && sum[0] >= total * run[0] / runs) {
+                    starts[run[0]++] = event;
+                }
+                sum[0] += cost(page, event);
             }
-        }
-        starts[runs] = to;
+        });
         return starts;
     }
 
-    private int cost(int event) {
+    private long cost(int from, int to) {
+        long[] sum = {0};
+        each(from, to, page -> {
+            for (int event = page.first(); event < page.end(); event++) {
+                sum[0] += cost(page, event);
+            }
+        });
+        return sum[0];
+    }
+
+    private int cost(EventPage page, int event) {
         int cost = FIXED_COST;
-        for (int k = event * raysPerEvent; k < (event + 1) * raysPerEvent; k++) {
-            cost += walks.planes(k);
+        int from = (event - page.offset()) * raysPerEvent;
+        for (int k = from; k < from + raysPerEvent; k++) {
+            cost += page.walks().planes(k);
         }
         return cost;
     }
@@ -161,10 +191,6 @@ public final class EventStore {
      * @return the count
      */
     public long planes() {
-        long sum = 0;
-        for (int k = 0; k < events() * raysPerEvent; k++) {
-            sum += walks.planes(k);
-        }
-        return sum;
+        return cost(0, events()) - (long) FIXED_COST * events();
     }
 }

@@ -27,7 +27,7 @@ import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.settings.InvalidSettingsException;
 
 /** The estimator on 100,000 lines through a cylinder, seen by an ideal ring. */
-final class ListModeEmTest {
+final class EstimatorTest {
     private static final int EVENTS = 100_000;
     private static final Grid GRID = Grid.centred(32, 32, 24, 1.25);
     private static final MemoryList LIST = cylinder(EVENTS, 41);
@@ -117,7 +117,7 @@ final class ListModeEmTest {
     }
 
     private static Image run(EventStore store, Image sensitivity, EstimationSettings settings) {
-        return new ListModeEm(store, sensitivity, settings, POOL)
+        return new Estimator(store, sensitivity, settings, POOL)
                 .run(PassListener.SILENT, Progress.SILENT)
                 .image();
     }
@@ -182,9 +182,9 @@ final class ListModeEmTest {
         EventStore store = load(EventSelection.ALL, 2);
         assertThatThrownBy(() -> run(store, EstimationSettings.mlem(1), POOL))
                 .hasMessage("the events were dealt into 2 subsets, the settings ask for 1");
-        assertThatThrownBy(() -> new ListModeEm(store, new Image(GRID), new EstimationSettings(1, 2, 0, 0), POOL))
+        assertThatThrownBy(() -> new Estimator(store, new Image(GRID), new EstimationSettings(1, 2, 0, 0), POOL))
                 .hasMessageContaining("voxels that may hold activity need a finite sensitivity > 0: found 0.0");
-        assertThatThrownBy(() -> new ListModeEm(
+        assertThatThrownBy(() -> new Estimator(
                         store, Image.filled(Grid.centred(3, 4, 5, 1), 1), new EstimationSettings(1, 2, 0, 0), POOL))
                 .hasMessage("expected an image of 32 x 32 x 24 voxels, found 3 x 4 x 5");
         assertThatThrownBy(() -> load(EventSelection.ALL, EVENTS)).hasMessageContaining("subsets, for");
@@ -238,7 +238,7 @@ final class ListModeEmTest {
     }
 
     private static Estimate run(EventStore store, EstimationSettings settings, ForkJoinPool pool) {
-        return new ListModeEm(store, SENSITIVITY, settings, pool).run(PassListener.SILENT, Progress.SILENT);
+        return new Estimator(store, SENSITIVITY, settings, pool).run(PassListener.SILENT, Progress.SILENT);
     }
 
     private static double weightedSum(Image image) {
