@@ -13,13 +13,13 @@ import org.raysheaf.geometry.sheaf.SheafCatalogue;
 import org.raysheaf.geometry.sheaf.SheafMaker;
 
 /** A tiny system in memory: every sheaf that it knows has a number, and an event is the number of its sheaf. */
-final class MemoryList implements EventSource, SheafMaker, SheafCatalogue {
+public final class MemoryList implements EventSource, SheafMaker, SheafCatalogue {
     private final int raysPerSheaf;
     private final double[][] rays;
     private final int[] events;
 
     /** Rays of seven numbers each: start, end, weight; sheaf i has the rays i · raysPerSheaf and following. */
-    MemoryList(int raysPerSheaf, double[][] rays, int[] events) {
+    public MemoryList(int raysPerSheaf, double[][] rays, int[] events) {
         this.raysPerSheaf = raysPerSheaf;
         this.rays = rays;
         this.events = events;

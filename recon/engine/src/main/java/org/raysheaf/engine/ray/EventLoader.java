@@ -1,7 +1,9 @@
 package org.raysheaf.engine.ray;
 
 import java.io.IOException;
+import java.util.ArrayList;
 import java.util.EnumSet;
+import java.util.List;
 import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.Collectors;
@@ -13,61 +15,108 @@ import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.event.EventTally.Reason;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.port.Scratch;
 import org.raysheaf.geometry.settings.Problems;
 import org.raysheaf.geometry.sheaf.SheafBundle;
 import org.raysheaf.geometry.sheaf.SheafMaker;
 
 /**
  * Reads a list once, block by block, and keeps of each event only its walks, shortened to the planes on which it can meet activity.
- * Events that meet none are set aside as {@link Reason#OUTSIDE_IMAGE}. Used once, by one thread, which lets the pool prepare the rays of a block.
+ * Events that meet none are set aside as {@link Reason#OUTSIDE_IMAGE}. What is kept is sorted and put away shard by shard, so that
+ * loading takes little more memory than the store, or than one shard if the store lies on disk. Used once, by one thread, which lets the pool
+ * prepare the rays of a block.
  */
 public final class EventLoader {
     private static final int BLOCK = 1 << 16;
     private static final int PIECE = 1 << 11;
 
+    /**
+     * Rays that are sorted together. Large enough that neighbours in the order are close in space, small enough to sort in memory: 200 MB.
+     * Part of what makes the last bits of a result.
+     */
+    static final int SHARD_RAYS = 1 << 23;
+
     private final SheafMaker maker;
     private final int raysPerEvent;
+    private final int subsets;
     private final float[] support;
     private final EventSelection selection;
     private final EventBackground background;
+    private final ForkJoinPool pool;
+    private final Shelf shelf;
     private final EventTally tally = new EventTally();
     private final SheafBundle bundle;
     private final Walks draft;
     private final boolean[] meets = new boolean[BLOCK];
-    private final Walks kept;
-    private final float[] keptBackground;
+    private final int shardEvents;
+    private final Walks shard;
+    private final float @Nullable [] shardBackground;
+    private final List<List<EventStore.Segment>> segments = new ArrayList<>();
+    private final long most;
     private long made;
     private long used;
+    /** Events kept, and how many of them were put away. */
     private int events;
 
+    private int away;
+    private long planes;
+
     private EventLoader(
-            EventSource source, SheafMaker maker, Image support, EventSelection selection, EventBackground background) {
+            EventSource source,
+            SheafMaker maker,
+            Image support,
+            EventSelection selection,
+            int subsets,
+            EventBackground background,
+            Storage storage,
+            int shardRays,
+            ForkJoinPool pool)
+            throws IOException {
         this.maker = maker;
         this.raysPerEvent = maker.raysPerSheaf();
         this.selection = selection;
+        this.subsets = subsets;
         this.background = background;
+        this.pool = pool;
         Lattice lattice = new Lattice(support.grid());
         this.support = lattice.fromImage(support);
         for (int i = 0; i < this.support.length; i++) {
             this.support[i] = this.support[i] > 0 ? 1 : 0;
         }
+        most = selection == EventSelection.ALL ? source.events() : (source.events() + 1) / 2;
+        requireCountable();
         bundle = new SheafBundle(raysPerEvent, BLOCK);
         draft = new Walks(lattice, BLOCK * raysPerEvent);
-        int most = room(source.events());
-        kept = new Walks(lattice, most * raysPerEvent);
-        keptBackground = new float[background == EventBackground.NONE ? 0 : most];
+        shardEvents = (int) Math.max(1, Math.min(most, shardRays / raysPerEvent));
+        shard = new Walks(lattice, shardEvents * raysPerEvent);
+        shardBackground = background == EventBackground.NONE ? null : new float[shardEvents];
+        for (int s = 0; s < subsets; s++) {
+            segments.add(new ArrayList<>());
+        }
+        shelf = shelf(storage);
     }
 
-    private int room(long eventsInList) {
-        long most = selection == EventSelection.ALL ? eventsInList : (eventsInList + 1) / 2;
+    private void requireCountable() {
         new Problems("list")
                 .rule(
-                        most <= RayOrder.MOST_EVENTS && most * raysPerEvent <= Integer.MAX_VALUE - 8,
+                        most <= Integer.MAX_VALUE - 8,
                         "events",
-                        "the list has " + eventsInList + " events of " + raysPerEvent
-                                + " rays; at most 2^30 events and 2^31 rays can be taken at once")
+                        "the list gives " + most + " events; at most 2^31 can be taken at once")
                 .orThrow();
-        return (int) most;
+        new Problems("estimation")
+                .rule(
+                        subsets >= 1 && subsets <= Math.max(1, most),
+                        "subsets",
+                        "expected 1 to " + most + " subsets, for " + most + " events; found " + subsets)
+                .orThrow();
+    }
+
+    private Shelf shelf(Storage storage) throws IOException {
+        long bytes = most * (Walks.BYTES * (long) raysPerEvent + (shardBackground == null ? 0 : Float.BYTES));
+        Scratch scratch = storage.scratch();
+        return bytes <= storage.memoryBytes() || scratch == null
+                ? new MemoryShelf()
+                : new ScratchShelf(scratch.open(), shard.lattice(), raysPerEvent);
     }
 
     /**
@@ -97,18 +146,78 @@ public final class EventLoader {
             ForkJoinPool pool,
             Progress progress)
             throws IOException {
-        EventLoader loader = new EventLoader(source, maker, support, selection, background);
-        progress.begin("reading events", source.events(), "events");
+        return load(source, maker, support, selection, subsets, background, Storage.MEMORY, pool, progress);
+    }
+
+    /**
+     * Loads a list that may be larger than memory.
+     *
+     * @param source the list
+     * @param maker turns its events into sheaves
+     * @param support an image of values above 0 where there may be activity
+     * @param selection which of the used events to keep
+     * @param subsets into how many subsets to deal them, at least 1
+     * @param background the background of each event, or {@link EventBackground#NONE}
+     * @param storage where the events may lie; the store is the same wherever they do
+     * @param pool prepares the rays
+     * @param progress hears of the events read
+     * @return the events, sorted; at least one; the caller closes it
+     * @throws NoUsableEventsException if no event was kept; its tally says why
+     * @throws IOException if the list cannot be read or lacks a column that the maker needs, or if there is no room on disk
+     * @throws org.raysheaf.geometry.settings.InvalidSettingsException if the list has too many events to be numbered, or usable ones but
+     *     fewer than there are subsets
+     */
+    public static EventStore load(
+            EventSource source,
+            SheafMaker maker,
+            Image support,
+            EventSelection selection,
+            int subsets,
+            EventBackground background,
+            Storage storage,
+            ForkJoinPool pool,
+            Progress progress)
+            throws IOException {
+        return load(source, maker, support, selection, subsets, background, storage, SHARD_RAYS, pool, progress);
+    }
+
+    /** The same with shards of another size, for tests. */
+    static EventStore load(
+            EventSource source,
+            SheafMaker maker,
+            Image support,
+            EventSelection selection,
+            int subsets,
+            EventBackground background,
+            Storage storage,
+            int shardRays,
+            ForkJoinPool pool,
+            Progress progress)
+            throws IOException {
+        EventLoader loader =
+                new EventLoader(source, maker, support, selection, subsets, background, storage, shardRays, pool);
+        EventStore store = null;
+        try {
+            progress.begin("reading events", source.events(), "events");
+            loader.read(source, progress);
+            store = loader.finish();
+            progress.end(store.events() + " events kept");
+            return store;
+        } finally {
+            if (store == null) {
+                loader.shelf.close();
+            }
+        }
+    }
+
+    private void read(EventSource source, Progress progress) throws IOException {
         EventBlock block = new EventBlock(columns(source, maker), BLOCK);
         try (EventSource.Cursor cursor = source.open()) {
             while (cursor.next(block)) {
-                loader.add(block, pool);
+                add(block);
                 progress.advance(block.size());
             }
         }
-        EventStore store = loader.sorted(subsets, pool);
-        progress.end(store.events() + " events kept");
-        return store;
     }
 
     /** What the maker needs, and of what it also reads as much as the list has. */
@@ -131,7 +240,7 @@ public final class EventLoader {
         return attributes.stream().sorted().map(Attribute::columnName).collect(Collectors.joining(" "));
     }
 
-    private void add(EventBlock block, ForkJoinPool pool) throws IOException {
+    private void add(EventBlock block) throws IOException {
         bundle.clear();
         maker.make(block, bundle, tally);
         int pieces = (bundle.size() + PIECE - 1) / PIECE;
@@ -159,51 +268,75 @@ public final class EventLoader {
     }
 
     private void keep(int sheaf) throws IOException {
-        if ((events + 1) * raysPerEvent > kept.capacity()) {
+        if (events == most) {
             throw new IOException("the list gave more events than it announced");
         }
-        for (int ray = 0; ray < raysPerEvent; ray++) {
-            kept.copy(events * raysPerEvent + ray, draft, sheaf * raysPerEvent + ray);
+        if (events - away == shardEvents) {
+            putAway(false);
         }
-        if (keptBackground.length > 0) {
-            keptBackground[events] = background.of(made + sheaf);
+        int place = events - away;
+        for (int ray = 0; ray < raysPerEvent; ray++) {
+            planes += draft.planes(sheaf * raysPerEvent + ray);
+            shard.copy(place * raysPerEvent + ray, draft, sheaf * raysPerEvent + ray);
+        }
+        if (shardBackground != null) {
+            shardBackground[place] = background.of(made + sheaf);
         }
         events++;
     }
 
-    private EventStore sorted(int subsets, ForkJoinPool pool) throws NoUsableEventsException {
+    /** Sorts the shard, subset by subset, and puts it on the shelf. */
+    private void putAway(boolean last) throws IOException {
+        int size = events - away;
+        // The i-th event of the shard belongs to subset (away + i) mod S; so the first one of subset s is at firsts[s].
+        int[] firsts = new int[subsets];
+        int[] starts = new int[subsets + 1];
+        for (int s = 0; s < subsets; s++) {
+            firsts[s] = Math.floorMod(s - away % subsets, subsets);
+            starts[s + 1] = starts[s] + Math.max(0, (size - firsts[s] + subsets - 1) / subsets);
+        }
+        long[] order = new long[size];
+        Tasks.forEach(pool, (size + BLOCK - 1) / BLOCK, block -> {
+            for (int e = block * BLOCK; e < Math.min(size, (block + 1) * BLOCK); e++) {
+                int subset = (away + e) % subsets;
+                order[starts[subset] + (e - firsts[subset]) / subsets] = RayOrder.entry(shard, e, raysPerEvent);
+            }
+        });
+        Tasks.forEach(pool, subsets, s -> RayOrder.sort(order, starts[s], starts[s + 1]));
+        Walks sorted = shard.arranged(order, raysPerEvent, last);
+        float[] sortedBackground = arranged(shardBackground, order);
+        for (int s = 0; s < subsets; s++) {
+            int count = starts[s + 1] - starts[s];
+            if (count > 0) {
+                int number = shelf.put(sorted, sortedBackground, starts[s], count);
+                segments.get(s).add(new EventStore.Segment(number, count));
+            }
+        }
+        away = events;
+    }
+
+    private static float @Nullable [] arranged(float @Nullable [] values, long[] order) {
+        if (values == null) {
+            return null;
+        }
+        float[] arranged = new float[order.length];
+        for (int e = 0; e < order.length; e++) {
+            arranged[e] = values[RayOrder.number(order[e])];
+        }
+        return arranged;
+    }
+
+    private EventStore finish() throws IOException {
         if (events == 0) {
             throw new NoUsableEventsException(tally);
         }
         new Problems("estimation")
                 .rule(
-                        subsets >= 1 && subsets <= events,
+                        subsets <= events,
                         "subsets",
                         "expected 1 to " + events + " subsets, for " + events + " usable events; found " + subsets)
                 .orThrow();
-        int[] starts = new int[subsets + 1];
-        for (int s = 0; s < subsets; s++) {
-            starts[s + 1] = starts[s] + (events - s + subsets - 1) / subsets;
-        }
-        long[] order = new long[events];
-        Tasks.forEach(pool, (events + BLOCK - 1) / BLOCK, block -> {
-            for (int e = block * BLOCK; e < Math.min(events, (block + 1) * BLOCK); e++) {
-                order[starts[e % subsets] + e / subsets] = RayOrder.entry(kept, e, raysPerEvent);
-            }
-        });
-        Tasks.forEach(pool, subsets, s -> RayOrder.sort(order, starts[s], starts[s + 1]));
-        kept.arrange(order, raysPerEvent);
-        return EventStore.inMemory(kept, raysPerEvent, starts, arrangedBackground(order), support, tally);
-    }
-
-    private float @Nullable [] arrangedBackground(long[] order) {
-        if (keptBackground.length == 0) {
-            return null;
-        }
-        float[] arranged = new float[order.length];
-        for (int e = 0; e < order.length; e++) {
-            arranged[e] = keptBackground[RayOrder.number(order[e])];
-        }
-        return arranged;
+        putAway(true);
+        return new EventStore(shelf, segments, shard.lattice(), raysPerEvent, planes, support, tally);
     }
 }

@@ -1,8 +1,9 @@
 package org.raysheaf.engine.ray;
 
+import java.io.IOException;
 import java.util.Arrays;
+import java.util.List;
 import java.util.function.Consumer;
-import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.EventTally;
 
 /**
@@ -13,43 +14,54 @@ import org.raysheaf.geometry.event.EventTally;
  * <p>Memory: {@value Walks#BYTES} bytes per ray, and 4 per event if there is a background; while loading up to 16 more per event of the
  * list. Immutable once loaded; made by {@link EventLoader}.
  */
-public final class EventStore {
+public final class EventStore implements AutoCloseable {
     /** What an event costs beyond the planes it visits, in planes: set-up and a mispredicted branch or two. */
     private static final int FIXED_COST = 8;
 
-    private final Pages pages;
+    /** Events whose cost is added up as one when a subset is cut. */
+    private static final int COUNTED = 1 << 12;
+
+    private final Shelf shelf;
+    private final int[] segmentNumbers;
+    private final int[] segmentStarts;
     private final Lattice lattice;
     private final int raysPerEvent;
     private final int[] subsetStarts;
+    private final long planes;
     private final float[] support;
     private final EventTally tally;
 
-    /** Where the events lie. */
-    @FunctionalInterface
-    interface Pages {
-        /** Brings the events from … to − 1 before a visitor, in order, in as many pages as it takes. Any thread may call. */
-        void each(int from, int to, Consumer<EventPage> visitor);
-    }
+    /** A segment on the shelf: its number there, and how many events it has. */
+    record Segment(int number, int events) {}
 
-    EventStore(Pages pages, Lattice lattice, int raysPerEvent, int[] subsetStarts, float[] support, EventTally tally) {
-        this.pages = pages;
-        this.lattice = lattice;
-        this.raysPerEvent = raysPerEvent;
-        this.subsetStarts = subsetStarts;
-        this.support = support;
-        this.tally = tally;
-    }
-
-    /** A store whose events all lie in memory. */
-    static EventStore inMemory(
-            Walks walks,
+    /** The events of the subsets' segments, in order. */
+    EventStore(
+            Shelf shelf,
+            List<List<Segment>> subsets,
+            Lattice lattice,
             int raysPerEvent,
-            int[] subsetStarts,
-            float @Nullable [] background,
+            long planes,
             float[] support,
             EventTally tally) {
-        Pages pages = (from, to, visitor) -> visitor.accept(new EventPage(walks, background, 0, from, to));
-        return new EventStore(pages, walks.lattice(), raysPerEvent, subsetStarts, support, tally);
+        this.shelf = shelf;
+        this.lattice = lattice;
+        this.raysPerEvent = raysPerEvent;
+        this.planes = planes;
+        this.support = support;
+        this.tally = tally;
+        int count = subsets.stream().mapToInt(List::size).sum();
+        segmentNumbers = new int[count];
+        segmentStarts = new int[count + 1];
+        subsetStarts = new int[subsets.size() + 1];
+        int i = 0;
+        for (int s = 0; s < subsets.size(); s++) {
+            for (Segment segment : subsets.get(s)) {
+                segmentNumbers[i] = segment.number;
+                segmentStarts[i + 1] = segmentStarts[i] + segment.events;
+                i++;
+            }
+            subsetStarts[s + 1] = segmentStarts[i];
+        }
     }
 
     /**
@@ -60,8 +72,16 @@ public final class EventStore {
      * @param visitor may use a page only until it returns
      */
     public void each(int from, int to, Consumer<EventPage> visitor) {
-        if (from < to) {
-            pages.each(from, to, visitor);
+        if (from >= to) {
+            return;
+        }
+        int found = Arrays.binarySearch(segmentStarts, from);
+        int i = found >= 0 ? found : -found - 2;
+        for (int at = from; at < to; i++) {
+            int start = segmentStarts[i];
+            int end = Math.min(to, segmentStarts[i + 1]);
+            shelf.each(segmentNumbers[i], at - start, end - start, start, visitor);
+            at = end;
         }
     }
 
@@ -148,32 +168,47 @@ public final class EventStore {
     public int[] cut(int subset, int runs) {
         int from = start(subset);
         int to = start(subset + 1);
-        long total = cost(from, to);
+        long[] costs = costs(from, to);
+        long total = costs[costs.length - 1];
         int[] starts = new int[runs + 1];
-        Arrays.fill(starts, 1, runs + 1, to);
         starts[0] = from;
-        long[] sum = {0};
-        int[] run = {1};
-        each(from, to, page -> {
-            for (int event = page.first(); event < page.end() && run[0] < runs; event++) {
-                // A run ends before the event at which its share of the cost is reached.
-                while (run[0] < runs && sum[0] >= total * run[0] / runs) {
-                    starts[run[0]++] = event;
-                }
-                sum[0] += cost(page, event);
+        starts[runs] = to;
+        int block = 0;
+        for (int run = 1; run < runs; run++) {
+            long goal = total * run / runs;
+            while (block + 1 < costs.length && costs[block + 1] < goal) {
+                block++;
             }
-        });
+            starts[run] = reach(goal - costs[block], from + block * COUNTED, to);
+        }
         return starts;
     }
 
-    private long cost(int from, int to) {
-        long[] sum = {0};
+    /** What the events before each block of {@value #COUNTED} cost, and at the end what all of them do. */
+    private long[] costs(int from, int to) {
+        long[] costs = new long[(to - from + COUNTED - 1) / COUNTED + 1];
         each(from, to, page -> {
             for (int event = page.first(); event < page.end(); event++) {
-                sum[0] += cost(page, event);
+                costs[(event - from) / COUNTED + 1] += cost(page, event);
             }
         });
-        return sum[0];
+        for (int i = 1; i < costs.length; i++) {
+            costs[i] += costs[i - 1];
+        }
+        return costs;
+    }
+
+    /** The first event at which those from a start on have cost at least so much. */
+    private int reach(long goal, int from, int to) {
+        long[] sum = {0};
+        int[] found = {Math.min(to, from + COUNTED)};
+        each(from, found[0], page -> {
+            for (int event = page.first(); event < page.end() && sum[0] < goal; event++) {
+                sum[0] += cost(page, event);
+                found[0] = event + 1;
+            }
+        });
+        return goal <= 0 ? from : found[0];
     }
 
     private int cost(EventPage page, int event) {
@@ -191,6 +226,12 @@ public final class EventStore {
      * @return the count
      */
     public long planes() {
-        return cost(0, events()) - (long) FIXED_COST * events();
+        return planes;
+    }
+
+    /** Gives up the events, and the disk space that they take if they lie there. */
+    @Override
+    public void close() throws IOException {
+        shelf.close();
     }
 }

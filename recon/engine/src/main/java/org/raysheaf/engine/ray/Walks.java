@@ -247,19 +247,34 @@ public final class Walks {
         steps[k] = source.steps[from];
     }
 
+    /** The columns of single precision; shared. */
+    float[][] floats() {
+        return new float[][] {u, du, v, dv, steps};
+    }
+
     /**
-     * Puts runs of walks into a new order and forgets all others. One column is replaced after another, so that only one exists twice.
+     * Runs of walks in another order.
      *
      * @param order entries of {@link RayOrder}: the number of the run that comes to each place
      * @param run walks in a run, at least 1
+     * @param last whether these walks are no longer needed; their columns are then given up one by one, so that only one exists twice
+     * @return new walks
      */
-    void arrange(long[] order, int run) {
-        spans = arranged(spans, order, run);
-        u = arranged(u, order, run);
-        du = arranged(du, order, run);
-        v = arranged(v, order, run);
-        dv = arranged(dv, order, run);
-        steps = arranged(steps, order, run);
+    Walks arranged(long[] order, int run, boolean last) {
+        Walks result = new Walks(lattice, 0);
+        result.spans = arranged(spans, order, run);
+        spans = last ? result.spans : spans;
+        result.u = arranged(u, order, run);
+        u = last ? result.u : u;
+        result.du = arranged(du, order, run);
+        du = last ? result.du : du;
+        result.v = arranged(v, order, run);
+        v = last ? result.v : v;
+        result.dv = arranged(dv, order, run);
+        dv = last ? result.dv : dv;
+        result.steps = arranged(steps, order, run);
+        steps = last ? result.steps : steps;
+        return result;
     }
 
     private static int[] arranged(int[] column, long[] order, int run) {
