@@ -200,6 +200,21 @@ public final class StoredDataset {
     }
 
     /**
+     * Reads all values as double-precision numbers. Verifies attribute {@code crc32c} if there is one.
+     *
+     * @return the values, the last index of the shape running fastest
+     * @throws Hdf5Exception if they are no numbers, more than an array can hold, or damaged
+     * @throws IOException if the file cannot be read
+     */
+    public double[] doubles() throws IOException {
+        ValueReader reader = values(null);
+        double[] values = new double[arrayLength()];
+        requireChecksum();
+        reader.read(values, 0, values.length);
+        return values;
+    }
+
+    /**
      * Reads all values as 32-bit integers. Verifies attribute {@code crc32c} if there is one.
      *
      * @return the values; unsigned ones above 2³¹ − 1 come out negative

@@ -143,7 +143,7 @@ public final class ValueReader {
                 segment.position(segment.position() + 4 * run);
             } else {
                 for (int i = 0; i < run; i++) {
-                    target[next + i] = real(i);
+                    target[next + i] = (float) real(i);
                 }
             }
             position += run;
@@ -151,10 +151,31 @@ public final class ValueReader {
         }
     }
 
-    private float real(int ahead) throws Hdf5Exception {
-        return type.kind() == StoredType.Kind.REAL
-                ? (float) segment.getDouble()
-                : whole(Long.MIN_VALUE, Long.MAX_VALUE, ahead);
+    /**
+     * Reads the next values as double-precision numbers.
+     *
+     * @param target receives them
+     * @param from where the first goes
+     * @param n how many, at most as many as are left
+     * @throws Hdf5Exception if they are damaged
+     * @throws IOException if the file cannot be read
+     */
+    public void read(double[] target, int from, int n) throws IOException {
+        int next = from;
+        while (next < from + n) {
+            int run = run(from + n - next);
+            boolean single = type.bytes() == 4 && type.kind() == StoredType.Kind.REAL;
+            for (int i = 0; i < run; i++) {
+                target[next + i] = single ? segment.getFloat() : real(i);
+            }
+            position += run;
+            next += run;
+        }
+    }
+
+    /** The next value, whole or of double precision. */
+    private double real(int ahead) throws Hdf5Exception {
+        return type.kind() == StoredType.Kind.REAL ? segment.getDouble() : whole(Long.MIN_VALUE, Long.MAX_VALUE, ahead);
     }
 
     private long whole(long low, long high, int ahead) throws Hdf5Exception {
