@@ -29,6 +29,7 @@ final class DemoVerb extends Verb {
         common().note(
                         "A list of about 400,000 coincidences, simulated for the invented scanner heron-12, becomes an image.");
         common().note("The detector's response is worked out first; that takes longest and is kept for the next time.");
-        ReconstructVerb.reconstruct(common(), plan, null, out, true, null);
+        ReconstructVerb.reconstruct(
+                common(), RunRequest.of(plan, null, null, true, common().lanes()), out, null, false);
     }
 }

@@ -2,6 +2,7 @@ package org.raysheaf.app;
 
 import java.io.IOException;
 import java.nio.file.Path;
+import java.util.Locale;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
@@ -15,6 +16,8 @@ import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.io.cache.Cache;
+import org.raysheaf.io.description.DescriptionWriter;
 import org.raysheaf.io.list.ListFile;
 
 /**
@@ -39,7 +42,12 @@ record Reconstruction(
         @Nullable Estimate odd,
         @Nullable Estimate even) {
     static Reconstruction of(
-            Path listPath, ReconstructionPlan plan, @Nullable Path base, Common common, ForkJoinPool pool)
+            Path listPath,
+            ReconstructionPlan plan,
+            @Nullable Path base,
+            WorkFolder work,
+            Common common,
+            ForkJoinPool pool)
             throws IOException {
         Progress progress = common.progress();
         ListFile opened = ListFile.open(listPath);
@@ -50,7 +58,7 @@ record Reconstruction(
         ListFile list = opened.withElements(systems.system().elements());
         Grid grid = plan.grid().gridFor(systems.system());
         CorrectedModel model = CorrectedModel.of(list, systems, plan.corrections(), base, grid, common, pool);
-        Estimation estimation = new Estimation(list, model, plan, pool, progress);
+        Estimation estimation = new Estimation(list, model, plan, work, common, pool);
         return new Reconstruction(
                 list,
                 systems,
@@ -79,19 +87,39 @@ record Reconstruction(
         return counts;
     }
 
+    /** Digest of all that an image depends on beside its name: what a checkpoint must have in common with the work that goes on. */
+    private static String key(ListFile list, CorrectedModel model, ReconstructionPlan plan, EventStore store) {
+        return Cache.digest(
+                Raysheaf.version(),
+                list.digest().orElse("no checksums, " + list.events() + " events"),
+                DescriptionWriter.render("reconstruction", plan),
+                Cache.digest(model.counts().values()),
+                store.events() + " events, " + store.planes() + " planes, " + store.subsets() + " subsets");
+    }
+
     private record Estimation(
-            ListFile list, CorrectedModel model, ReconstructionPlan plan, ForkJoinPool pool, Progress progress) {
+            ListFile list,
+            CorrectedModel model,
+            ReconstructionPlan plan,
+            WorkFolder work,
+            Common common,
+            ForkJoinPool pool) {
         Estimate of(EventSelection selection) throws IOException {
-            EventStore store = EventLoader.load(
+            Progress progress = common.progress();
+            try (EventStore store = EventLoader.load(
                     list,
                     model.sheaves(),
                     model.support(),
                     selection,
                     plan.estimation().subsets(),
                     model.background(),
+                    work.storage(),
                     pool,
-                    progress);
-            return new Estimator(store, model.counts(), plan.estimation(), pool).run(PassListener.SILENT, progress);
+                    progress)) {
+                String name = selection.name().toLowerCase(Locale.ROOT);
+                return new Estimator(store, model.counts(), plan.estimation(), pool)
+                        .run(PassListener.SILENT, progress, work.checkpoints(name, key(list, model, plan, store)));
+            }
         }
     }
 }

@@ -103,12 +103,6 @@ public final class EventLoader {
                         "events",
                         "the list gives " + most + " events; at most 2^31 can be taken at once")
                 .orThrow();
-        new Problems("estimation")
-                .rule(
-                        subsets >= 1 && subsets <= Math.max(1, most),
-                        "subsets",
-                        "expected 1 to " + most + " subsets, for " + most + " events; found " + subsets)
-                .orThrow();
     }
 
     private Shelf shelf(Storage storage) throws IOException {
