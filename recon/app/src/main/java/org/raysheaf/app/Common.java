@@ -95,7 +95,12 @@ final class Common {
     }
 
     Progress progress() {
-        return quiet ? Progress.SILENT : new ConsoleProgress(System.err, Boolean.getBoolean("raysheaf.terminal"));
+        return quiet ? Progress.SILENT : new ConsoleProgress(System.err, onTerminal());
+    }
+
+    /** Whether progress goes to a terminal, where a bar can redraw itself. */
+    boolean onTerminal() {
+        return Boolean.getBoolean("raysheaf.terminal");
     }
 
     /** Something worth knowing that is no result. */

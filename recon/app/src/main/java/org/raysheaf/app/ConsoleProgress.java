@@ -68,8 +68,12 @@ final class ConsoleProgress implements Progress {
         }
     }
 
-    /** The total, and for bytes how fast they go. */
+    /** The total, and for events and bytes how fast they go. */
     private String amount(long have, double seconds) {
+        if (unit.equals("events")) {
+            return String.format(
+                    Locale.ROOT, "%,d events, %.3g M events/s", total, have * 1e-6 / Math.max(seconds, 1e-3));
+        }
         if (!unit.equals("bytes")) {
             return String.format(Locale.ROOT, "%,d %s", total, unit);
         }

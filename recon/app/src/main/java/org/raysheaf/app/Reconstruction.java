@@ -7,7 +7,6 @@ import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
 import org.raysheaf.engine.Estimator;
-import org.raysheaf.engine.PassListener;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
@@ -118,7 +117,10 @@ record Reconstruction(
                     progress)) {
                 String name = selection.name().toLowerCase(Locale.ROOT);
                 return new Estimator(store, model.counts(), plan.estimation(), pool)
-                        .run(PassListener.SILENT, progress, work.checkpoints(name, key(list, model, plan, store)));
+                        .run(
+                                new PassLines(plan.estimation().passes(), common),
+                                progress,
+                                work.checkpoints(name, key(list, model, plan, store)));
             }
         }
     }

@@ -3,6 +3,7 @@ package org.raysheaf.engine;
 import java.io.IOException;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Locale;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.geometry.frame.Image;
@@ -71,8 +72,8 @@ public final class Estimator {
         long start = System.nanoTime();
         List<PassReport> passes = resumed(checkpoints);
         progress.begin("estimating", (long) (settings.passes() - passes.size()) * store.events(), "events");
-        likelihood.report(progress);
         while (passes.size() < settings.passes()) {
+            likelihood.report(progress, stage(passes));
             PassReport pass = pass(passes.size() + 1);
             passes.add(pass);
             checkpoints.save(snapshot(passes));
@@ -92,6 +93,17 @@ public final class Estimator {
                 likelihood.laneCount(),
                 settings.postFilterFwhmMm(),
                 secondsSince(start));
+    }
+
+    private String stage(List<PassReport> passes) {
+        String stage = "pass " + (passes.size() + 1) + " of " + settings.passes();
+        return passes.isEmpty()
+                ? stage
+                : String.format(
+                        Locale.ROOT,
+                        "%s, log-likelihood %.7g",
+                        stage,
+                        passes.get(passes.size() - 1).logLikelihood());
     }
 
     private PassReport pass(int number) {

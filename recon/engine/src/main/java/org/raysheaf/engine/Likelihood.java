@@ -26,6 +26,7 @@ final class Likelihood {
     private final Lanes lanes;
     private final int[][] runs;
     private Progress progress = Progress.SILENT;
+    private String stage = "";
 
     /**
      * Prepares the sums.
@@ -63,9 +64,10 @@ final class Likelihood {
         }
     }
 
-    /** Whom to tell of the events visited. */
-    void report(Progress to) {
+    /** Whom to tell of the events visited, and in which stage of the work they are. */
+    void report(Progress to, String inStage) {
         progress = to;
+        stage = inStage;
     }
 
     Lattice lattice() {
@@ -113,6 +115,7 @@ final class Likelihood {
      */
     double visit(int subset, float[] image) {
         int[] run = runs[subset];
+        progress.remark(subsets() == 1 ? stage : stage + ", subset " + (subset + 1) + " of " + subsets());
         double[] logSums = new double[lanes.count()];
         lanes.each(lane -> {
             logSums[lane] = Visit.events(store, run[lane], run[lane + 1], image, lanes.accumulator(lane));
