@@ -68,6 +68,18 @@ public final class EventTally {
     }
 
     /**
+     * Adds all counts to those of another tally, and starts again from nothing.
+     *
+     * @param other receives them
+     */
+    public void moveTo(EventTally other) {
+        other.used += used;
+        setAside.forEach((reason, events) -> other.setAside.merge(reason, events, Long::sum));
+        used = 0;
+        setAside.clear();
+    }
+
+    /**
      * Events used.
      *
      * @return the count

@@ -24,7 +24,7 @@ import org.raysheaf.geometry.sheaf.SheafMaker;
  * Reads a list once, block by block, and keeps of each event only its walks, shortened to the planes on which it can meet activity.
  * Events that meet none are set aside as {@link Reason#OUTSIDE_IMAGE}. What is kept is sorted and put away shard by shard, so that
  * loading takes little more memory than the store, or than one shard if the store lies on disk. Used once, by one thread, which lets the pool
- * prepare the rays of a block.
+ * make the rays of a block and sort.
  */
 public final class EventLoader {
     private static final int BLOCK = 1 << 16;
@@ -45,9 +45,7 @@ public final class EventLoader {
     private final ForkJoinPool pool;
     private final Shelf shelf;
     private final EventTally tally = new EventTally();
-    private final SheafBundle bundle;
-    private final Walks draft;
-    private final boolean[] meets = new boolean[BLOCK];
+    private final Piece[] pieces = new Piece[BLOCK / PIECE];
     private final int shardEvents;
     private final Walks shard;
     private final float @Nullable [] shardBackground;
@@ -85,8 +83,10 @@ public final class EventLoader {
         }
         most = selection == EventSelection.ALL ? source.events() : (source.events() + 1) / 2;
         requireCountable();
-        bundle = new SheafBundle(raysPerEvent, BLOCK);
-        draft = new Walks(lattice, BLOCK * raysPerEvent);
+        Set<Attribute> columns = columns(source, maker);
+        for (int i = 0; i < pieces.length; i++) {
+            pieces[i] = new Piece(columns, lattice);
+        }
         shardEvents = (int) Math.max(1, Math.min(most, shardRays / raysPerEvent));
         shard = new Walks(lattice, shardEvents * raysPerEvent);
         shardBackground = background == EventBackground.NONE ? null : new float[shardEvents];
@@ -235,33 +235,51 @@ public final class EventLoader {
     }
 
     private void add(EventBlock block) throws IOException {
-        bundle.clear();
-        maker.make(block, bundle, tally);
-        int pieces = (bundle.size() + PIECE - 1) / PIECE;
-        Tasks.forEach(pool, pieces, piece -> prepare(piece * PIECE, Math.min(bundle.size(), (piece + 1) * PIECE)));
-        for (int i = 0; i < bundle.size(); i++) {
-            if (meets[i]) {
-                if (selection.takes(used++)) {
-                    keep(i);
+        int count = (block.size() + PIECE - 1) / PIECE;
+        Tasks.forEach(pool, count, i -> pieces[i].make(block, i * PIECE, Math.min(block.size(), (i + 1) * PIECE)));
+        for (int i = 0; i < count; i++) {
+            Piece piece = pieces[i];
+            piece.tally.moveTo(tally);
+            for (int sheaf = 0; sheaf < piece.bundle.size(); sheaf++) {
+                if (!piece.meets[sheaf]) {
+                    tally.withdraw(Reason.OUTSIDE_IMAGE, 1);
+                } else if (selection.takes(used++)) {
+                    keep(piece.walks, sheaf, made + sheaf);
                 }
-            } else {
-                tally.withdraw(Reason.OUTSIDE_IMAGE, 1);
             }
-        }
-        made += bundle.size();
-    }
-
-    private void prepare(int from, int to) {
-        for (int i = from; i < to; i++) {
-            meets[i] = false;
-            for (int k = i * raysPerEvent; k < (i + 1) * raysPerEvent; k++) {
-                draft.set(k, bundle.rays(), k, bundle.weights()[k]);
-                meets[i] |= draft.trim(k, support);
-            }
+            made += piece.bundle.size();
         }
     }
 
-    private void keep(int sheaf) throws IOException {
+    /** Some events of a block on their way to walks; what one thread works on. */
+    private final class Piece {
+        final EventBlock events;
+        final SheafBundle bundle = new SheafBundle(raysPerEvent, PIECE);
+        final Walks walks;
+        final boolean[] meets = new boolean[PIECE];
+        final EventTally tally = new EventTally();
+
+        Piece(Set<Attribute> columns, Lattice lattice) {
+            events = new EventBlock(columns, PIECE);
+            walks = new Walks(lattice, PIECE * raysPerEvent);
+        }
+
+        void make(EventBlock block, int from, int to) {
+            events.resize(0);
+            events.append(block, from, to - from);
+            bundle.clear();
+            maker.make(events, bundle, tally);
+            for (int i = 0; i < bundle.size(); i++) {
+                meets[i] = false;
+                for (int k = i * raysPerEvent; k < (i + 1) * raysPerEvent; k++) {
+                    walks.set(k, bundle.rays(), k, bundle.weights()[k]);
+                    meets[i] |= walks.trim(k, support);
+                }
+            }
+        }
+    }
+
+    private void keep(Walks walks, int sheaf, long number) throws IOException {
         if (events == most) {
             throw new IOException("the list gave more events than it announced");
         }
@@ -270,11 +288,11 @@ public final class EventLoader {
         }
         int place = events - away;
         for (int ray = 0; ray < raysPerEvent; ray++) {
-            planes += draft.planes(sheaf * raysPerEvent + ray);
-            shard.copy(place * raysPerEvent + ray, draft, sheaf * raysPerEvent + ray);
+            planes += walks.planes(sheaf * raysPerEvent + ray);
+            shard.copy(place * raysPerEvent + ray, walks, sheaf * raysPerEvent + ray);
         }
         if (shardBackground != null) {
-            shardBackground[place] = background.of(made + sheaf);
+            shardBackground[place] = background.of(number);
         }
         events++;
     }
@@ -297,7 +315,7 @@ public final class EventLoader {
             }
         });
         Tasks.forEach(pool, subsets, s -> RayOrder.sort(order, starts[s], starts[s + 1]));
-        Walks sorted = shard.arranged(order, raysPerEvent, last);
+        Walks sorted = shard.arranged(order, raysPerEvent, last, pool);
         float[] sortedBackground = arranged(shardBackground, order);
         for (int s = 0; s < subsets; s++) {
             int count = starts[s + 1] - starts[s];

@@ -74,36 +74,61 @@ final class RayOrder {
         return Math.max(0, Math.min(CELLS - 1, cell));
     }
 
+    /** The bits of a coordinate, each moved to four times its place, so that four coordinates can be interleaved. */
+    private static final int[] SPREAD = spread();
+
+    private static int[] spread() {
+        int[] spread = new int[CELLS];
+        for (int x = 0; x < CELLS; x++) {
+            for (int bit = 0; bit < BITS; bit++) {
+                spread[x] |= ((x >> bit) & 1) << (4 * bit);
+            }
+        }
+        return spread;
+    }
+
     /**
-     * Skilling's transform.
+     * Skilling's transform of four coordinates, without branches: as many are computed as a list has events.
      *
-     * @param x coordinates, 0 to 255 each; overwritten
-     * @return the index on the curve
+     * @param x0 coordinate, 0 to 255
+     * @param x1 coordinate, 0 to 255
+     * @param x2 coordinate, 0 to 255
+     * @param x3 coordinate, 0 to 255
+     * @return the index on the curve, 32 bits
      */
-    static long hilbert(int... x) {
-        for (int bit = CELLS >> 1; bit > 1; bit >>= 1) {
-            int below = bit - 1;
-            for (int i = 0; i < x.length; i++) {
-                int flip = (x[i] & bit) != 0 ? below : 0;
-                int swap = flip != 0 ? 0 : (x[0] ^ x[i]) & below;
-                x[0] ^= flip | swap;
-                x[i] ^= swap;
-            }
+    static long hilbert(int x0, int x1, int x2, int x3) {
+        int a = x0;
+        int b = x1;
+        int c = x2;
+        int d = x3;
+        for (int place = BITS - 1; place > 0; place--) {
+            int below = (1 << place) - 1;
+            // Where the bit is set the lower bits of a are inverted, else they change places with those of the
+            // coordinate.
+            a ^= below & -((a >> place) & 1);
+            int set = -((b >> place) & 1);
+            int swap = (a ^ b) & below & ~set;
+            a ^= (below & set) | swap;
+            b ^= swap;
+            set = -((c >> place) & 1);
+            swap = (a ^ c) & below & ~set;
+            a ^= (below & set) | swap;
+            c ^= swap;
+            set = -((d >> place) & 1);
+            swap = (a ^ d) & below & ~set;
+            a ^= (below & set) | swap;
+            d ^= swap;
         }
-        int gray = 0;
-        for (int i = 1; i < x.length; i++) {
-            x[i] ^= x[i - 1];
-        }
-        for (int bit = CELLS >> 1; bit > 1; bit >>= 1) {
-            gray ^= (x[x.length - 1] & bit) != 0 ? bit - 1 : 0;
-        }
-        long index = 0;
-        for (int bit = BITS - 1; bit >= 0; bit--) {
-            for (int coordinate : x) {
-                index = (index << 1) | (((coordinate ^ gray) >> bit) & 1);
-            }
-        }
-        return index;
+        b ^= a;
+        c ^= b;
+        d ^= c;
+        // Bit j is inverted if an odd number of higher bits of d are set.
+        int gray = d >> 1;
+        gray ^= gray >> 1;
+        gray ^= gray >> 2;
+        gray ^= gray >> 4;
+        int index = SPREAD[a ^ gray] << 3 | SPREAD[b ^ gray] << 2 | SPREAD[c ^ gray] << 1 | SPREAD[d ^ gray];
+        return Integer.toUnsignedLong(index);
     }
 
     /**

@@ -1,6 +1,7 @@
 package org.raysheaf.engine.ray;
 
 import java.util.Arrays;
+import java.util.concurrent.ForkJoinPool;
 
 /**
  * Rays prepared for walking through a lattice, in flat arrays: 24 bytes each. A ray visits one voxel plane after another along its
@@ -25,6 +26,9 @@ public final class Walks {
 
     /** A sample of the support that is smaller than this (the support being 0 or 1) may be rounding, and does not count as activity. */
     private static final float TOUCH = 1e-4f;
+
+    /** Runs that one thread copies at a time. */
+    private static final int PIECE = 1 << 16;
 
     private static final int EMPTY = 1 << 15;
     private static final int PLANE = (1 << 15) - 1;
@@ -258,38 +262,60 @@ public final class Walks {
      * @param order entries of {@link RayOrder}: the number of the run that comes to each place
      * @param run walks in a run, at least 1
      * @param last whether these walks are no longer needed; their columns are then given up one by one, so that only one exists twice
+     * @param pool does the work
      * @return new walks
      */
-    Walks arranged(long[] order, int run, boolean last) {
+    Walks arranged(long[] order, int run, boolean last, ForkJoinPool pool) {
         Walks result = new Walks(lattice, 0);
-        result.spans = arranged(spans, order, run);
+        result.spans = arranged(spans, order, run, pool);
         spans = last ? result.spans : spans;
-        result.u = arranged(u, order, run);
+        result.u = arranged(u, order, run, pool);
         u = last ? result.u : u;
-        result.du = arranged(du, order, run);
+        result.du = arranged(du, order, run, pool);
         du = last ? result.du : du;
-        result.v = arranged(v, order, run);
+        result.v = arranged(v, order, run, pool);
         v = last ? result.v : v;
-        result.dv = arranged(dv, order, run);
+        result.dv = arranged(dv, order, run, pool);
         dv = last ? result.dv : dv;
-        result.steps = arranged(steps, order, run);
+        result.steps = arranged(steps, order, run, pool);
         steps = last ? result.steps : steps;
         return result;
     }
 
-    private static int[] arranged(int[] column, long[] order, int run) {
+    private static int[] arranged(int[] column, long[] order, int run, ForkJoinPool pool) {
         int[] result = new int[order.length * run];
-        for (int i = 0; i < order.length; i++) {
-            System.arraycopy(column, RayOrder.number(order[i]) * run, result, i * run, run);
-        }
+        inPieces(pool, order.length, (from, to) -> {
+            for (int i = from; i < to; i++) {
+                int source = RayOrder.number(order[i]) * run;
+                for (int j = 0; j < run; j++) {
+                    result[i * run + j] = column[source + j];
+                }
+            }
+        });
         return result;
     }
 
-    private static float[] arranged(float[] column, long[] order, int run) {
+    private static float[] arranged(float[] column, long[] order, int run, ForkJoinPool pool) {
         float[] result = new float[order.length * run];
-        for (int i = 0; i < order.length; i++) {
-            System.arraycopy(column, RayOrder.number(order[i]) * run, result, i * run, run);
-        }
+        inPieces(pool, order.length, (from, to) -> {
+            for (int i = from; i < to; i++) {
+                int source = RayOrder.number(order[i]) * run;
+                for (int j = 0; j < run; j++) {
+                    result[i * run + j] = column[source + j];
+                }
+            }
+        });
         return result;
+    }
+
+    private interface Copy {
+        void runs(int from, int to);
+    }
+
+    private static void inPieces(ForkJoinPool pool, int runs, Copy copy) {
+        Tasks.forEach(
+                pool,
+                (runs + PIECE - 1) / PIECE,
+                piece -> copy.runs(piece * PIECE, Math.min(runs, (piece + 1) * PIECE)));
     }
 }

@@ -69,6 +69,46 @@ final class RayOrderTest {
         return sum / order.length;
     }
 
+    /** The published loops, for any number of coordinates. */
+    private static long twin(int... x) {
+        for (int bit = 128; bit > 1; bit >>= 1) {
+            for (int i = 0; i < x.length; i++) {
+                if ((x[i] & bit) != 0) {
+                    x[0] ^= bit - 1;
+                } else {
+                    int swap = (x[0] ^ x[i]) & (bit - 1);
+                    x[0] ^= swap;
+                    x[i] ^= swap;
+                }
+            }
+        }
+        for (int i = 1; i < x.length; i++) {
+            x[i] ^= x[i - 1];
+        }
+        int gray = 0;
+        for (int bit = 128; bit > 1; bit >>= 1) {
+            if ((x[x.length - 1] & bit) != 0) {
+                gray ^= bit - 1;
+            }
+        }
+        long index = 0;
+        for (int bit = 7; bit >= 0; bit--) {
+            for (int coordinate : x) {
+                index = (index << 1) | (((coordinate ^ gray) >> bit) & 1);
+            }
+        }
+        return index;
+    }
+
+    @Test
+    void indexIsThatOfThePublishedLoops() {
+        Random random = new Random(33);
+        for (int i = 0; i < 10_000; i++) {
+            int[] x = random.ints(4, 0, 256).toArray();
+            assertThat(RayOrder.hilbert(x[0], x[1], x[2], x[3])).isEqualTo(twin(x));
+        }
+    }
+
     /** What makes a Hilbert curve: it fills each aligned cube in one go, and each step goes to a neighbour. */
     @Test
     void curveNeverJumps() {
@@ -77,7 +117,7 @@ final class RayOrderTest {
             Map<Long, int[]> cells = new HashMap<>();
             for (int i = 0; i < 256; i++) {
                 int[] x = {corner + (i >> 6), 252 - corner + ((i >> 4) & 3), corner + ((i >> 2) & 3), 16 + (i & 3)};
-                indices[i] = RayOrder.hilbert(x.clone());
+                indices[i] = RayOrder.hilbert(x[0], x[1], x[2], x[3]);
                 cells.put(indices[i], x);
             }
             Arrays.sort(indices);
