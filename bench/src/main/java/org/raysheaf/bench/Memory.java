@@ -31,11 +31,24 @@ final class Memory {
 
     /** The most physical memory that the process has held so far, mapped files included (bytes); known on Linux only. */
     static OptionalLong peakResident() throws IOException {
+        return status("VmHWM:");
+    }
+
+    /** Physical memory that holds no file, heap and all (bytes); 0 where it is not known. */
+    static long anonymous() {
+        try {
+            return status("RssAnon:").orElse(0);
+        } catch (IOException e) {
+            return 0;
+        }
+    }
+
+    private static OptionalLong status(String key) throws IOException {
         if (!Files.isReadable(STATUS)) {
             return OptionalLong.empty();
         }
         return Files.readAllLines(STATUS).stream()
-                .filter(line -> line.startsWith("VmHWM:"))
+                .filter(line -> line.startsWith(key))
                 .mapToLong(line -> 1024 * Long.parseLong(line.replaceAll("[^0-9]", "")))
                 .findFirst();
     }

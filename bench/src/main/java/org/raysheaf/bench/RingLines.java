@@ -33,11 +33,16 @@ final class RingLines {
         try (DataOutputStream out = new DataOutputStream(new BufferedOutputStream(Files.newOutputStream(file)))) {
             float[] line = new float[6];
             for (int made = 0; made < lines; made++) {
-                while (!draw(random, line)) {
-                    // This one escapes at an open end of the ring.
-                }
+                line(random, line);
                 put(line, out);
             }
+        }
+    }
+
+    /** Draws a line: two end points, six numbers (mm). */
+    void line(SplittableRandom random, float[] line) {
+        while (!draw(random, line)) {
+            // This one escapes at an open end of the ring.
         }
     }
 

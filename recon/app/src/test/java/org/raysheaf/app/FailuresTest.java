@@ -73,7 +73,7 @@ class FailuresTest {
             --hepl                  | raysheaf: unknown option --hepl; the nearest is --help        | see: raysheaf --help
             reconstruct x --ou=y    | raysheaf: unknown option --ou; the nearest is --out           | see: raysheaf reconstruct --help
             check x --threads many  | raysheaf: Invalid value for option '--threads': 'many' is not an int | see: raysheaf check --help
-            reconstruct x.h5        | raysheaf: Missing required option: '--out=DIR'                | see: raysheaf reconstruct --help
+            reconstruct x.h5        | raysheaf: expected --out DIR, a folder for the results            | see: raysheaf reconstruct --help
             demo x                  | raysheaf: expected no further argument, found x               | see: raysheaf demo --help
             check                   | raysheaf: Missing required parameter: 'FILE'                  | see: raysheaf check --help
             """)
