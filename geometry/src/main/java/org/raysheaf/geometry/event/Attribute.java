@@ -234,6 +234,14 @@ public enum Attribute {
             ColumnType.UINT8,
             ValueRange.FLAG,
             "0: prompt pair, 1: pair from the delayed window"),
+    /** Gate in which the event falls: the phase of a heartbeat or breath, or any other state of the subject, by number. */
+    GATE(
+            Scope.BOTH,
+            "gate",
+            "1",
+            ColumnType.UINT8,
+            ValueRange.COUNT,
+            "gate in which the event falls: the phase of a heartbeat or breath, by number"),
     /** Number of the decay that the photon came from. */
     DECAY(
             Scope.TRUTH_OF_SINGLES,
