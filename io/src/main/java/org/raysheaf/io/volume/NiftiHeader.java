@@ -13,7 +13,7 @@ import org.raysheaf.geometry.frame.Grid;
  *   <tr><th>offset</th><th>type</th><th>field</th><th>written</th></tr>
  *   <tr><td>0</td><td>int32</td><td>sizeof_hdr</td><td>348; tells the byte order</td></tr>
  *   <tr><td>39</td><td>uint8</td><td>dim_info</td><td>0</td></tr>
- *   <tr><td>40</td><td>int16 × 8</td><td>dim</td><td>3, nx, ny, nz, 1, 1, 1, 1</td></tr>
+ *   <tr><td>40</td><td>int16 × 8</td><td>dim</td><td>3, nx, ny, nz, 1, 1, 1, 1; for a series of n volumes 4, nx, ny, nz, n, 1, 1, 1</td></tr>
  *   <tr><td>68</td><td>int16</td><td>intent_code</td><td>0: plain values</td></tr>
  *   <tr><td>70</td><td>int16</td><td>datatype</td><td>16: float32 ({@link NiftiType})</td></tr>
  *   <tr><td>72</td><td>int16</td><td>bitpix</td><td>32</td></tr>
@@ -72,11 +72,12 @@ final class NiftiHeader {
 
     private NiftiHeader() {}
 
-    /** The header, with the empty extension, for a volume of float32. */
-    static ByteBuffer of(Grid grid, String unit) {
+    /** The header, with the empty extension, for so many volumes of float32 on one grid. */
+    static ByteBuffer of(Grid grid, String unit, int volumes) {
         ByteBuffer out = ByteBuffer.allocate(VOXELS_AT).order(ByteOrder.LITTLE_ENDIAN);
         out.putInt(0, SIZE);
-        short[] dim = {3, (short) grid.nx(), (short) grid.ny(), (short) grid.nz(), 1, 1, 1, 1};
+        short axes = (short) (volumes == 1 ? 3 : 4);
+        short[] dim = {axes, (short) grid.nx(), (short) grid.ny(), (short) grid.nz(), (short) volumes, 1, 1, 1};
         for (int i = 0; i < dim.length; i++) {
             out.putShort(DIM + 2 * i, dim[i]);
         }

@@ -7,6 +7,7 @@ import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.List;
 import java.util.zip.GZIPOutputStream;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
@@ -26,9 +27,10 @@ final class NiftiWriter {
         this.named = named;
     }
 
-    void write(Image image, String unit, Path file, boolean gzip) throws IOException {
-        Grid grid = image.grid();
-        int most = Math.max(grid.nx(), Math.max(grid.ny(), grid.nz()));
+    /** Writes one volume, or several on the same grid as a series. */
+    void write(List<Image> images, String unit, Path file, boolean gzip) throws IOException {
+        Grid grid = images.get(0).grid();
+        int most = Math.max(images.size(), Math.max(grid.nx(), Math.max(grid.ny(), grid.nz())));
         if (most > NiftiHeader.MOST) {
             throw new VolumeException(
                     named,
@@ -36,15 +38,22 @@ final class NiftiWriter {
                             + "; write .h5 instead");
         }
         try (OutputStream out = open(file, gzip)) {
-            out.write(NiftiHeader.of(grid, unit).array());
-            ByteBuffer row = ByteBuffer.allocate(4 * grid.nx()).order(ByteOrder.LITTLE_ENDIAN);
-            for (int z = 0; z < grid.nz(); z++) {
-                for (int y = 0; y < grid.ny(); y++) {
-                    for (int x = 0; x < grid.nx(); x++) {
-                        row.putFloat(4 * x, image.at(x, y, z));
-                    }
-                    out.write(row.array());
+            out.write(NiftiHeader.of(grid, unit, images.size()).array());
+            for (Image image : images) {
+                values(image, out);
+            }
+        }
+    }
+
+    private static void values(Image image, OutputStream out) throws IOException {
+        Grid grid = image.grid();
+        ByteBuffer row = ByteBuffer.allocate(4 * grid.nx()).order(ByteOrder.LITTLE_ENDIAN);
+        for (int z = 0; z < grid.nz(); z++) {
+            for (int y = 0; y < grid.ny(); y++) {
+                for (int x = 0; x < grid.nx(); x++) {
+                    row.putFloat(4 * x, image.at(x, y, z));
                 }
+                out.write(row.array());
             }
         }
     }

@@ -3,6 +3,7 @@ package org.raysheaf.io.volume;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.List;
 import java.util.Locale;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.io.file.AtomicFile;
@@ -60,11 +61,41 @@ public final class VolumeFile {
         requireFinite(image);
         AtomicFile.write(file, replace, temporary -> {
             switch (format) {
-                case NIFTI -> new NiftiWriter(file).write(image, unit, temporary, false);
-                case NIFTI_GZ -> new NiftiWriter(file).write(image, unit, temporary, true);
+                case NIFTI -> new NiftiWriter(file).write(List.of(image), unit, temporary, false);
+                case NIFTI_GZ -> new NiftiWriter(file).write(List.of(image), unit, temporary, true);
                 case HDF5 -> new Hdf5VolumeWriter(file).write(image, unit, temporary);
             }
         });
+    }
+
+    /**
+     * Writes several volumes on one grid as a series: a NIfTI-1 file of four dimensions, the last of which counts the volumes. Completely or
+     * not at all.
+     *
+     * @param images the volumes, at least one, at most 32,767, on the same grid
+     * @param unit the unit of the values, 1 to 15 printable ASCII characters
+     * @param file the file to make, ending in {@code .nii} or {@code .nii.gz}
+     * @param replace whether an existing file may be overwritten
+     * @throws IllegalArgumentException if a value is not finite, the unit has another form, or grids differ
+     * @throws VolumeException if the format cannot hold the series
+     * @throws IOException if the file exists and may not be overwritten, or writing fails
+     */
+    public static void writeSeries(List<Image> images, String unit, Path file, boolean replace) throws IOException {
+        Format format = Format.of(file);
+        if (format == Format.HDF5) {
+            throw new VolumeException(file, "expected a name ending in .nii or .nii.gz for a series");
+        }
+        requireUnit(unit);
+        for (Image image : images) {
+            requireFinite(image);
+            if (!image.grid().equals(images.get(0).grid())) {
+                throw new IllegalArgumentException("the volumes of a series need one grid");
+            }
+        }
+        AtomicFile.write(
+                file,
+                replace,
+                temporary -> new NiftiWriter(file).write(images, unit, temporary, format == Format.NIFTI_GZ));
     }
 
     private enum Format {

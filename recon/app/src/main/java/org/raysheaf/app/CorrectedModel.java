@@ -24,6 +24,7 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.frame.Grid;
@@ -36,7 +37,6 @@ import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.efficiency.EfficiencyFile;
-import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.volume.VolumeFile;
 
 /**
@@ -66,7 +66,7 @@ record CorrectedModel(
 
     /** Builds the model of a list. */
     static CorrectedModel of(
-            ListFile list,
+            EventSource list,
             Systems systems,
             Corrections corrections,
             @Nullable Path base,
@@ -78,7 +78,7 @@ record CorrectedModel(
     }
 
     private static final class Builder {
-        private final ListFile list;
+        private final EventSource list;
         private final ListHeader header;
         private final Systems systems;
         private final Corrections corrections;
@@ -90,7 +90,7 @@ record CorrectedModel(
         private final List<String> left = new ArrayList<>();
 
         Builder(
-                ListFile list,
+                EventSource list,
                 Systems systems,
                 Corrections corrections,
                 @Nullable Path base,

@@ -2,7 +2,8 @@ package org.raysheaf.app;
 
 import java.io.IOException;
 import java.nio.file.Path;
-import java.util.Locale;
+import java.util.ArrayList;
+import java.util.List;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.Estimate;
@@ -10,6 +11,8 @@ import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
+import org.raysheaf.engine.ray.NoUsableEventsException;
+import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
@@ -30,6 +33,7 @@ import org.raysheaf.io.list.ListFile;
  * @param whole the image of all events (Bq/mL)
  * @param odd the image of the odd events, if halves were asked for
  * @param even the image of the even events, if halves were asked for
+ * @param frames the images of parts of the list
  */
 record Reconstruction(
         ListFile list,
@@ -39,7 +43,8 @@ record Reconstruction(
         CorrectedModel model,
         Estimate whole,
         @Nullable Estimate odd,
-        @Nullable Estimate even) {
+        @Nullable Estimate even,
+        List<FrameImage> frames) {
     static Reconstruction of(
             Path listPath,
             ReconstructionPlan plan,
@@ -56,17 +61,17 @@ record Reconstruction(
         Systems systems = SystemOfList.of(header, listPath, plan.systemBeside(base), common, pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
         Grid grid = plan.grid().gridFor(systems.system());
-        CorrectedModel model = CorrectedModel.of(list, systems, plan.corrections(), base, grid, common, pool);
-        Estimation estimation = new Estimation(list, model, plan, work, common, pool);
-        return new Reconstruction(
-                list,
-                systems,
-                plan,
-                grid,
-                model,
-                estimation.of(EventSelection.ALL),
-                plan.halves() ? estimation.of(EventSelection.ODD) : null,
-                plan.halves() ? estimation.of(EventSelection.EVEN) : null);
+        List<Frame> frames = Frame.of(plan.frames(), list, listPath);
+        Maker maker = new Maker(list, systems, plan, base, grid, work, common, pool);
+        CorrectedModel model = maker.model(list);
+        Estimate whole = maker.estimate(list, model, EventSelection.ALL, "all");
+        Estimate odd = plan.halves() ? maker.estimate(list, model, EventSelection.ODD, "odd") : null;
+        Estimate even = plan.halves() ? maker.estimate(list, model, EventSelection.EVEN, "even") : null;
+        List<FrameImage> images = new ArrayList<>();
+        for (Frame frame : frames) {
+            images.add(maker.image(frame));
+        }
+        return new Reconstruction(list, systems, plan, grid, model, whole, odd, even, images);
     }
 
     /** Singles have no lines. */
@@ -86,27 +91,25 @@ record Reconstruction(
         return counts;
     }
 
-    /** Digest of all that an image depends on beside its name: what a checkpoint must have in common with the work that goes on. */
-    private static String key(ListFile list, CorrectedModel model, ReconstructionPlan plan, EventStore store) {
-        return Cache.digest(
-                Raysheaf.version(),
-                list.digest().orElse("no checksums, " + list.events() + " events"),
-                DescriptionWriter.render("reconstruction", plan),
-                Cache.digest(model.counts().values()),
-                store.events() + " events, " + store.planes() + " planes, " + store.subsets() + " subsets");
-    }
-
-    private record Estimation(
+    /** Makes one image after another. */
+    private record Maker(
             ListFile list,
-            CorrectedModel model,
+            Systems systems,
             ReconstructionPlan plan,
+            @Nullable Path base,
+            Grid grid,
             WorkFolder work,
             Common common,
             ForkJoinPool pool) {
-        Estimate of(EventSelection selection) throws IOException {
+        CorrectedModel model(EventSource part) throws IOException {
+            return CorrectedModel.of(part, systems, plan.corrections(), base, grid, common, pool);
+        }
+
+        Estimate estimate(EventSource part, CorrectedModel model, EventSelection selection, String name)
+                throws IOException {
             Progress progress = common.progress();
             try (EventStore store = EventLoader.load(
-                    list,
+                    part,
                     model.sheaves(),
                     model.support(),
                     selection,
@@ -115,13 +118,37 @@ record Reconstruction(
                     work.storage(),
                     pool,
                     progress)) {
-                String name = selection.name().toLowerCase(Locale.ROOT);
                 return new Estimator(store, model.counts(), plan.estimation(), pool)
                         .run(
                                 new PassLines(plan.estimation().passes(), common),
                                 progress,
-                                work.checkpoints(name, key(list, model, plan, store)));
+                                work.checkpoints(name, key(model, store)));
             }
+        }
+
+        /** The image of a part at the start of the list; zeros if nothing was recorded in it. */
+        FrameImage image(Frame frame) throws IOException {
+            common.note(frame.name() + " " + frame.where());
+            try {
+                Estimate estimate = estimate(frame.part(), model(frame.part()), EventSelection.ALL, frame.name());
+                Image image = estimate.image().copy();
+                for (int j = 0; j < image.values().length; j++) {
+                    image.values()[j] *= (float) frame.part().toListStart();
+                }
+                return new FrameImage(frame, image, estimate.events());
+            } catch (NoUsableEventsException e) {
+                return new FrameImage(frame, new Image(grid), 0);
+            }
+        }
+
+        /** Digest of all that an image depends on beside its name: what a checkpoint must have in common with the work that goes on. */
+        private String key(CorrectedModel model, EventStore store) {
+            return Cache.digest(
+                    Raysheaf.version(),
+                    list.digest().orElse("no checksums, " + list.events() + " events"),
+                    DescriptionWriter.render("reconstruction", plan),
+                    Cache.digest(model.counts().values()),
+                    store.events() + " events, " + store.planes() + " planes, " + store.subsets() + " subsets");
         }
     }
 }

@@ -15,6 +15,7 @@ import org.raysheaf.geometry.settings.Default;
  * @param estimation passes, subsets, lanes, filter
  * @param halves whether to make the images of the odd and of the even events as well
  * @param corrections which corrections to make
+ * @param frames parts of the list that get images of their own, or null for none
  */
 record ReconstructionPlan(
         @Nullable String list,
@@ -22,7 +23,8 @@ record ReconstructionPlan(
         @Default("{}") GridSettings grid,
         @Default("{}") EstimationSettings estimation,
         @Default("false") boolean halves,
-        @Default("{}") Corrections corrections) {
+        @Default("{}") Corrections corrections,
+        @Nullable FrameSettings frames) {
     /** What is done with a bare list. */
     static ReconstructionPlan bare() {
         return new ReconstructionPlan(
@@ -31,7 +33,8 @@ record ReconstructionPlan(
                 new GridSettings(null, null, null),
                 EstimationSettings.mlem(20),
                 false,
-                Corrections.OF_A_BARE_LIST);
+                Corrections.OF_A_BARE_LIST,
+                null);
     }
 
     /** The file of the system, or null; paths start from the folder of the file that the plan came from. */
@@ -52,6 +55,7 @@ record ReconstructionPlan(
                 grid,
                 new EstimationSettings(e.passes(), e.subsets(), lanes > 0 ? lanes : e.lanes(), e.postFilterFwhmMm()),
                 halves || wantHalves,
-                corrections);
+                corrections,
+                frames);
     }
 }

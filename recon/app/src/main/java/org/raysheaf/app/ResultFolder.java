@@ -32,6 +32,7 @@ final class ResultFolder {
             "activity.h5",
             "activity-odd.nii.gz",
             "activity-even.nii.gz",
+            "activity-frames.nii.gz",
             "sensitivity.nii.gz",
             "planes.png",
             "calibration.yaml",
@@ -77,6 +78,11 @@ final class ResultFolder {
         if (odd != null && even != null) {
             volume(kilo(odd.image()), UNIT, "activity-odd.nii.gz");
             volume(kilo(even.image()), UNIT, "activity-even.nii.gz");
+        }
+        if (!done.frames().isEmpty()) {
+            List<Image> frames =
+                    done.frames().stream().map(frame -> kilo(frame.image())).toList();
+            VolumeFile.writeSeries(frames, UNIT, folder.resolve("activity-frames.nii.gz"), replace);
         }
         SlicePicture.write(
                 activity, UNIT, centre(activity), "activity concentration", folder.resolve("planes.png"), replace);
@@ -158,6 +164,9 @@ final class ResultFolder {
                         done.model().applied(),
                         "not_applied",
                         done.model().left()));
+        if (!done.frames().isEmpty()) {
+            results.put("frames", done.frames().stream().map(FrameImage::named).toList());
+        }
         results.put("passes", passes(done.whole()));
         results.put("lanes", done.whole().lanes());
         results.put("threads", threads);
@@ -206,6 +215,15 @@ final class ResultFolder {
                 UNIT));
         lines.addAll(new Accounting(done.whole().tally()).lines());
         lines.addAll(figures.lines());
+        for (FrameImage frame : done.frames()) {
+            lines.add(String.format(
+                    Locale.ROOT,
+                    "%-10s %.1f kBq at the start of the list, from %,d events, %s",
+                    frame.frame().name(),
+                    frame.totalKBq(),
+                    frame.events(),
+                    frame.frame().where()));
+        }
         if (!done.model().left().isEmpty()) {
             lines.add("           not corrected for "
                     + String.join(", ", done.model().left()));
