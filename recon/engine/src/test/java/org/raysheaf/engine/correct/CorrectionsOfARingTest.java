@@ -205,7 +205,7 @@ class CorrectionsOfARingTest {
         Scatter scatter =
                 Scatter.of(Ring.FACES, Ring.window(), PhantomMaps.activity(water, 1), attenuation.muPerMm(), 100, POOL);
         double perUnit = 2e-3;
-        EventBackground background = new Backgrounds(sheaves, randoms, scatter, attenuation, perUnit).of(list);
+        EventBackground background = new Backgrounds(sheaves, randoms, scatter, attenuation, perUnit).of(list, POOL);
         LineOfResponse line = line(HERE, THERE);
         double through = attenuation.make().of(HERE, THERE, line);
         double c = line.etendueMm2Sr() / (2 * Math.PI) * through * perUnit;
@@ -220,7 +220,8 @@ class CorrectionsOfARingTest {
         // all pairs that may pair hold 100 randoms; those whose lines cross the field of view hold fewer
         assertThat(balance.randoms()).isBetween(30.0, 100.0);
         assertThat(balance.attenuationLow()).isBetween(0.7, 0.9);
-        assertThat(new Backgrounds(sheaves, null, null, null, perUnit).of(list)).isSameAs(EventBackground.NONE);
+        assertThat(new Backgrounds(sheaves, null, null, null, perUnit).of(list, POOL))
+                .isSameAs(EventBackground.NONE);
     }
 
     @Test
@@ -258,7 +259,7 @@ class CorrectionsOfARingTest {
         }
         Efficiencies found = Efficiencies.of(list, sheaves, activity, null, null, null, perUnit, POOL, Progress.SILENT);
         assertThat(found.silent()).containsExactly(7, 133);
-        assertThat(found.reducedChiSquare()).isBetween(0.4, 1.8); // 20 pairs of blocks
+        assertThat(found.goodness().get(0).withGeometry()).isBetween(0.3, 1.8); // 20 pairs of blocks
         double chi = 0;
         for (int e = 0; e < n; e++) {
             if (truth[e] > 0) {
