@@ -9,10 +9,12 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.engine.correct.Backgrounds;
 import org.raysheaf.engine.correct.Efficiencies;
 import org.raysheaf.engine.correct.GeometryFactors;
 import org.raysheaf.engine.correct.Goodness;
 import org.raysheaf.engine.correct.PhantomMaps;
+import org.raysheaf.engine.correct.Scatter;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
@@ -68,12 +70,20 @@ final class NormalizeVerb extends Verb {
         Image activity = PhantomMaps.activity(phantom, MuMap.VOXEL_MM);
         PairModel pairs = PairModel.of(
                 list, systems, Corrections.OF_A_BARE_LIST, MuMap.of(phantom).attenuation(), new Applied());
+        Scatter scatter = pairs.scatter(activity, pool);
+        if (scatter != null) {
+            // As in a reconstruction: what is clear of the source tells how much scattered twice and more.
+            Backgrounds.Balance balance = new Backgrounds(
+                            pairs.sheaves(), pairs.randoms(), scatter, pairs.attenuation(), pairs.pairsPerUnit())
+                    .balance(list, pool);
+            scatter = scatter.scaled(balance.scatterScale());
+        }
         Efficiencies found = Efficiencies.of(
                 list,
                 pairs.sheaves(),
                 activity,
                 pairs.randoms(),
-                pairs.scatter(activity, pool),
+                scatter,
                 pairs.attenuation(),
                 pairs.pairsPerUnit(),
                 pool,

@@ -125,7 +125,7 @@ public final class Backgrounds {
             prompts[0] += block.all;
             prompts[1] += block.clear;
         });
-        return expected(prompts[0], prompts[1], pool);
+        return expected((double) prompts[0], (double) prompts[1], pool);
     }
 
     /**

@@ -10,7 +10,7 @@ import org.raysheaf.geometry.response.BlockPairKinds;
  * of pairs wanted and expected, one that stands in both ends its root, which never overshoots. Mutable; one thread.
  */
 final class EfficiencyFit {
-    private static final int MOST_ROUNDS = 60;
+    private static final int MOST_ROUNDS = 150;
     private static final double SETTLED = 1e-5;
 
     /** A geometry factor of fewer pairs, known to no better than 2 %, stays at 1. */
