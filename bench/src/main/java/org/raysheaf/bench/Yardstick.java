@@ -3,6 +3,7 @@ package org.raysheaf.bench;
 import java.io.IOException;
 import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
+import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.ArrayList;
@@ -99,7 +100,7 @@ final class Yardstick {
     private static String run(List<String> command) throws IOException {
         Process process = new ProcessBuilder(command).redirectErrorStream(true).start();
         try (var output = process.getInputStream()) {
-            String text = new String(output.readAllBytes(), java.nio.charset.StandardCharsets.UTF_8);
+            String text = new String(output.readAllBytes(), StandardCharsets.UTF_8);
             if (process.waitFor() != 0) {
                 throw new IOException(String.join(" ", command) + " failed: " + text);
             }

@@ -1,6 +1,7 @@
 package org.raysheaf.geometry.detector;
 
 import java.util.List;
+import java.util.Locale;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.settings.Problems;
 
@@ -94,7 +95,7 @@ final class LayoutCheck {
                             false,
                             "placements[" + blocks.get(i).placement() + "]",
                             String.format(
-                                    java.util.Locale.ROOT,
+                                    Locale.ROOT,
                                     "block %d overlaps block %d by %.3g mm; move them apart",
                                     i,
                                     j,

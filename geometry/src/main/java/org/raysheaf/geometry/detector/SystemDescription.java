@@ -1,5 +1,6 @@
 package org.raysheaf.geometry.detector;
 
+import java.util.ArrayList;
 import java.util.HashMap;
 import java.util.List;
 import java.util.Map;
@@ -133,7 +134,7 @@ public record SystemDescription(
 
     private static List<PlacedBlock> place(
             List<Material> materials, List<BlockKind> blocks, List<Placement> placements) {
-        List<PlacedBlock> placed = new java.util.ArrayList<>();
+        List<PlacedBlock> placed = new ArrayList<>();
         int element = 0;
         for (int p = 0; p < placements.size(); p++) {
             BlockKind kind = find(blocks, placements.get(p).block());

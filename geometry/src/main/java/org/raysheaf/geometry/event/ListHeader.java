@@ -22,6 +22,8 @@ public record ListHeader(
         Instant start,
         @Nullable Nuclide nuclide,
         @Nullable PairingRecord pairing) {
+    private static final double BQ_PER_BQ_PER_ML_AND_MM3 = 1e-3;
+
     public ListHeader {
         new Problems("list")
                 .above("duration_s", durationS, 0)
@@ -59,5 +61,14 @@ public record ListHeader(
             return liveTimeS;
         }
         return nuclide.positronBranching() * nuclide.effectiveTimeS(durationS) * liveFraction;
+    }
+
+    /**
+     * The same in the unit of images: pairs emitted, while events could be recorded, by 1 Bq/mL in 1 mm³, which is 10⁻³ Bq.
+     *
+     * @return the number (mL / (Bq mm³))
+     */
+    public double pairsPerBqPerMlAndMm3() {
+        return BQ_PER_BQ_PER_ML_AND_MM3 * pairsPerBecquerel();
     }
 }

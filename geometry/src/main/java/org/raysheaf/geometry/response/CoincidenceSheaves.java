@@ -245,12 +245,24 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @param visitor hears of every pair
      */
     public void visit(int part, PairVisitor visitor) {
+        visit(part, 1, visitor);
+    }
+
+    /**
+     * Finds the line of one of so many pairs of a part of the catalogue, spread evenly over it, those of silent elements left out.
+     *
+     * @param part the part
+     * @param every one of so many pairs is taken, at least 1
+     * @param visitor hears of every pair that is taken
+     */
+    public void visit(int part, int every, PairVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         PlacedBlock a = blockPairs.get(part)[0];
         PlacedBlock b = blockPairs.get(part)[1];
         for (int i = 0; i < a.kind().elements(); i++) {
-            for (int j = 0; j < b.kind().elements(); j++) {
+            // Along the diagonals, so that all elements of both blocks come in turn.
+            for (int j = (every - i % every) % every; j < b.kind().elements(); j += every) {
                 int first = a.firstElement() + i;
                 int second = b.firstElement() + j;
                 if (!silent[first] && !silent[second] && maker.line(first, second, line)) {
@@ -258,6 +270,16 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 }
             }
         }
+    }
+
+    /**
+     * The blocks whose pairs a part of the catalogue holds.
+     *
+     * @param part the part
+     * @return the indices of two blocks: the first elements' and the second elements'
+     */
+    public int[] blocksOf(int part) {
+        return new int[] {blockPairs.get(part)[0].index(), blockPairs.get(part)[1].index()};
     }
 
     private static void append(SheafBundle out, LineOfResponse line, double weight) {

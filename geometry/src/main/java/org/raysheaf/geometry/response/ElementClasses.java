@@ -31,10 +31,7 @@ final class ElementClasses {
         flips = new byte[system.elements()];
         Map<String, BlockClass> blockClasses = new HashMap<>();
         for (PlacedBlock block : system.blocks()) {
-            String[] views = new String[4];
-            for (int flip = 0; flip < 4; flip++) {
-                views[flip] = view(system, block, flip);
-            }
+            String[] views = views(system, block);
             int best = 0;
             for (int flip = 1; flip < 4; flip++) {
                 best = views[flip].compareTo(views[best]) < 0 ? flip : best;
@@ -88,17 +85,31 @@ final class ElementClasses {
                 kind.layer(crystal));
     }
 
+    /** What a block sees, by how its frame is mirrored, see {@link #view}. */
+    static String[] views(DetectorSystem system, PlacedBlock block) {
+        String[] views = new String[4];
+        for (int flip = 0; flip < 4; flip++) {
+            views[flip] = view(system, block, flip);
+        }
+        return views;
+    }
+
+    /** How one block sees another, from its own frame with u (bit 0) or v (bit 1) mirrored. */
+    static String token(PlacedBlock from, PlacedBlock other, int flip) {
+        Pose toLocal = from.pose().inverse();
+        return other.kind()
+                + place(toLocal.apply(other.pose().origin()), flip)
+                + axis(toLocal.turn(other.pose().u()), flip)
+                + axis(toLocal.turn(other.pose().v()), flip)
+                + place(toLocal.turn(other.pose().w()), flip);
+    }
+
     /** Everything that a block sees, from its own frame with u (bit 0) or v (bit 1) mirrored, in an order that does not depend on numbering. */
     private static String view(DetectorSystem system, PlacedBlock block, int flip) {
         Pose toLocal = block.pose().inverse();
         List<String> seen = new ArrayList<>();
         for (PlacedBlock other : system.blocks()) {
-            String token = other.kind()
-                    + place(toLocal.apply(other.pose().origin()), flip)
-                    + axis(toLocal.turn(other.pose().u()), flip)
-                    + axis(toLocal.turn(other.pose().v()), flip)
-                    + place(toLocal.turn(other.pose().w()), flip);
-            seen.add(other.index() == block.index() ? "self " + block.kind() : token);
+            seen.add(other.index() == block.index() ? "self " + block.kind() : token(block, other, flip));
         }
         String[] tokens = seen.toArray(new String[0]);
         Arrays.sort(tokens);

@@ -5,6 +5,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.Optional;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.io.file.Sha256;
 import org.raysheaf.io.hdf5.Hdf5File;
 import org.raysheaf.io.hdf5.Hdf5Writer;
@@ -13,7 +14,8 @@ import org.raysheaf.io.hdf5.StoredDataset;
 /**
  * Efficiency of every element of a system, relative to the model: an HDF5 file with the root attributes {@code raysheaf} ("efficiency/1") and
  * {@code system_sha256}, and the datasets {@code efficiency} and {@code relative_error}, one number for each element; an element of efficiency 0
- * is silent and takes no part. Immutable.
+ * is silent and takes no part. Optional datasets {@code geometry_pair}, {@code geometry_column} and {@code geometry_row} hold the factors of block
+ * geometry that go with the efficiencies. Immutable.
  */
 public final class EfficiencyFile {
     private static final String MARK = "raysheaf";
@@ -21,17 +23,76 @@ public final class EfficiencyFile {
     private static final String SYSTEM = "system_sha256";
     private static final String EFFICIENCY = "efficiency";
     private static final String ERROR = "relative_error";
+    private static final String PAIR = "geometry_pair";
+    private static final String COLUMN = "geometry_column";
+    private static final String ROW = "geometry_row";
+    private static final String UNIT = "unit";
+    private static final String ONE = "1";
 
     private final String place;
     private final String systemSha256;
     private final double[] efficiencies;
     private final double[] relativeErrors;
+    private final Optional<Geometry> geometry;
 
-    private EfficiencyFile(String place, String systemSha256, double[] efficiencies, double[] relativeErrors) {
+    /** Factors of block geometry: of pairs of blocks, of columns and of rows, in the order of the system's kinds of pairs. Immutable. */
+    public static final class Geometry {
+        private final double[] pair;
+        private final double[] column;
+        private final double[] row;
+
+        /**
+         * Takes the factors.
+         *
+         * @param pair of pairs of blocks; copied, like the others
+         * @param column of columns
+         * @param row of rows
+         */
+        public Geometry(double[] pair, double[] column, double[] row) {
+            this.pair = pair.clone();
+            this.column = column.clone();
+            this.row = row.clone();
+        }
+
+        /**
+         * Factors of pairs of blocks.
+         *
+         * @return a copy
+         */
+        public double[] pair() {
+            return pair.clone();
+        }
+
+        /**
+         * Factors of columns.
+         *
+         * @return a copy
+         */
+        public double[] column() {
+            return column.clone();
+        }
+
+        /**
+         * Factors of rows.
+         *
+         * @return a copy
+         */
+        public double[] row() {
+            return row.clone();
+        }
+    }
+
+    private EfficiencyFile(
+            String place,
+            String systemSha256,
+            double[] efficiencies,
+            double[] relativeErrors,
+            Optional<Geometry> geometry) {
         this.place = place;
         this.systemSha256 = systemSha256;
         this.efficiencies = efficiencies;
         this.relativeErrors = relativeErrors;
+        this.geometry = geometry;
     }
 
     /**
@@ -41,23 +102,34 @@ public final class EfficiencyFile {
      * @param systemText text of the system description
      * @param efficiencies one for each element, at least 0; 0 for a silent one
      * @param relativeErrors relative standard error of each
+     * @param geometry factors of block geometry, or null
      * @param replace whether a file that is already there may be replaced
      * @throws IOException if it cannot be written
      */
     public static void write(
-            Path path, String systemText, double[] efficiencies, double[] relativeErrors, boolean replace)
+            Path path,
+            String systemText,
+            double[] efficiencies,
+            double[] relativeErrors,
+            @Nullable Geometry geometry,
+            boolean replace)
             throws IOException {
         try (Hdf5Writer file = Hdf5Writer.create(path, replace)) {
             file.root().attribute(MARK, VERSION);
             file.root().attribute(SYSTEM, Sha256.ofText(systemText));
-            file.root()
-                    .array(EFFICIENCY, floats(efficiencies), efficiencies.length)
-                    .attribute("unit", "1");
-            file.root()
-                    .array(ERROR, floats(relativeErrors), relativeErrors.length)
-                    .attribute("unit", "1");
+            put(file, EFFICIENCY, efficiencies);
+            put(file, ERROR, relativeErrors);
+            if (geometry != null) {
+                put(file, PAIR, geometry.pair);
+                put(file, COLUMN, geometry.column);
+                put(file, ROW, geometry.row);
+            }
             file.commit();
         }
+    }
+
+    private static void put(Hdf5Writer file, String name, double[] values) throws IOException {
+        file.root().array(name, floats(values), values.length).attribute(UNIT, ONE);
     }
 
     private static float[] floats(double[] values) {
@@ -95,8 +167,19 @@ public final class EfficiencyFile {
                 }
             }
             return new EfficiencyFile(
-                    path.toString(), file.root().attributes().text(SYSTEM).orElse(""), efficiencies, errors);
+                    path.toString(),
+                    file.root().attributes().text(SYSTEM).orElse(""),
+                    efficiencies,
+                    errors,
+                    geometry(file, path));
         }
+    }
+
+    private static Optional<Geometry> geometry(Hdf5File file, Path path) throws IOException {
+        if (file.root().dataset(PAIR).isEmpty()) {
+            return Optional.empty();
+        }
+        return Optional.of(new Geometry(column(file, path, PAIR), column(file, path, COLUMN), column(file, path, ROW)));
     }
 
     private static double[] column(Hdf5File file, Path path, String name) throws IOException {
@@ -161,5 +244,14 @@ public final class EfficiencyFile {
             }
         }
         return silent;
+    }
+
+    /**
+     * Factors of block geometry.
+     *
+     * @return what the file holds of them, nothing if it was made without
+     */
+    public Optional<Geometry> geometry() {
+        return geometry;
     }
 }

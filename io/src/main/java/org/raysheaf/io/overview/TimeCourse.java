@@ -1,5 +1,7 @@
 package org.raysheaf.io.overview;
 
+import java.util.Arrays;
+
 /** Counts over time in bins that double their width as time goes on, so that any length fits. One thread. */
 final class TimeCourse {
     private static final int BINS = 512;
@@ -14,7 +16,7 @@ final class TimeCourse {
             for (int i = 0; i < BINS / 2; i++) {
                 counts[i] = counts[2 * i] + counts[2 * i + 1];
             }
-            java.util.Arrays.fill(counts, BINS / 2, BINS, 0);
+            Arrays.fill(counts, BINS / 2, BINS, 0);
             stepPs *= 2;
             bin = timePs / stepPs;
         }

@@ -1,6 +1,7 @@
 package org.raysheaf.io.records;
 
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Map;
@@ -18,7 +19,7 @@ final class Reasons {
         }
         texts.add(text);
         if (texts.size() >= counts.length) {
-            counts = java.util.Arrays.copyOf(counts, 2 * counts.length);
+            counts = Arrays.copyOf(counts, 2 * counts.length);
         }
         return texts.size();
     }

@@ -8,6 +8,7 @@ import java.util.EnumSet;
 import java.util.LinkedHashMap;
 import java.util.LinkedHashSet;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
 import java.util.Set;
 import java.util.stream.Stream;
@@ -138,8 +139,7 @@ public final class RecordImport {
             }
         }
         ImportResult result = result(streams, reasons, damage, outlet);
-        progress.end(
-                String.format(java.util.Locale.ROOT, "%,d records, %,d events", result.records(), result.written()));
+        progress.end(String.format(Locale.ROOT, "%,d records, %,d events", result.records(), result.written()));
         return result;
     }
 

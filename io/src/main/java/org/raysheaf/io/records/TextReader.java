@@ -9,6 +9,8 @@ import java.util.Arrays;
 import java.util.HexFormat;
 import java.util.List;
 import java.util.Map;
+import java.util.regex.Pattern;
+import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 
 /** Reads records from lines of text. Bytes are parsed where they lie; only unusual lines become strings. One thread. */
@@ -122,7 +124,7 @@ final class TextReader implements RecordReader {
         fieldsOfColumn = new int[columns][];
         for (int c = 0; c < columns; c++) {
             int column = c;
-            fieldsOfColumn[c] = java.util.stream.IntStream.range(0, columnOf.length)
+            fieldsOfColumn[c] = IntStream.range(0, columnOf.length)
                     .filter(i -> columnOf[i] == column)
                     .toArray();
         }
@@ -133,8 +135,8 @@ final class TextReader implements RecordReader {
     private List<String> split(String text) {
         List<String> values = new ArrayList<>();
         String rest = blanks ? text.strip() : text;
-        String pattern = blanks ? "[ \t]+" : java.util.regex.Pattern.quote(String.valueOf((char) delimiter));
-        for (String value : java.util.regex.Pattern.compile(pattern).split(rest, -1)) {
+        String pattern = blanks ? "[ \t]+" : Pattern.quote(String.valueOf((char) delimiter));
+        for (String value : Pattern.compile(pattern).split(rest, -1)) {
             String bare = value.strip();
             if (quote >= 0
                     && bare.length() >= 2

@@ -5,6 +5,7 @@ import static org.assertj.core.api.Assertions.assertThat;
 import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
@@ -33,7 +34,7 @@ class CacheTest {
             Files.write(file, damaged);
             assertThat(cache.find("table", "abc")).isEmpty();
         }
-        Files.write(file, java.util.Arrays.copyOf(sound, sound.length - 1));
+        Files.write(file, Arrays.copyOf(sound, sound.length - 1));
         assertThat(cache.find("table", "abc")).isEmpty();
     }
 

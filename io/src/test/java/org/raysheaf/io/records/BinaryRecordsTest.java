@@ -8,8 +8,10 @@ import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.HexFormat;
 import java.util.Map;
+import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
@@ -192,7 +194,7 @@ class BinaryRecordsTest {
         ByteBuffer bytes = ByteBuffer.allocate(2_000_000).order(ByteOrder.LITTLE_ENDIAN);
         int good = 0;
         long lost = 0;
-        java.util.SplittableRandom random = new java.util.SplittableRandom(3);
+        SplittableRandom random = new SplittableRandom(3);
         while (bytes.remaining() > 2000) {
             if (random.nextInt(50) == 0) {
                 int junk = 1 + random.nextInt(random.nextInt(20) == 0 ? 1500 : 20);
@@ -219,7 +221,7 @@ class BinaryRecordsTest {
     @Test
     void junkWithoutAnyMarkerToTheEndOfALongFileIsPassedOver() throws IOException {
         byte[] junk = new byte[1_000_003];
-        java.util.Arrays.fill(junk, (byte) 0xa5);
+        Arrays.fill(junk, (byte) 0xa5);
         Path path = Files.write(folder.resolve("junk.bin"), junk);
         Lab.Imported got = Lab.run(folder, MARKED, path);
         assertThat(got.result().records()).isZero();

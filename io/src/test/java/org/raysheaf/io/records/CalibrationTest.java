@@ -8,6 +8,8 @@ import java.io.IOException;
 import java.nio.file.Path;
 import java.util.List;
 import java.util.Random;
+import java.util.SortedMap;
+import java.util.TreeMap;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.raysheaf.geometry.detector.DetectorSystem;
@@ -145,7 +147,7 @@ class CalibrationTest {
     void singlesThatFollowEachOtherTellOffsetsToo() throws IOException {
         StringBuilder text = new StringBuilder();
         long time = 1_000_000;
-        java.util.SortedMap<Long, Integer> singles = new java.util.TreeMap<>();
+        SortedMap<Long, Integer> singles = new TreeMap<>();
         for (int i = 0; i < 40_000; i++) {
             time += 1_000_000;
             int a = random.nextInt(10);

@@ -4,12 +4,15 @@ import static org.assertj.core.api.Assertions.assertThat;
 
 import java.io.ByteArrayOutputStream;
 import java.io.IOException;
+import java.io.InputStream;
 import java.nio.ByteBuffer;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.time.Duration;
+import java.util.Arrays;
 import java.util.List;
+import java.util.Objects;
 import java.util.SplittableRandom;
 import org.junit.jupiter.api.Assertions;
 import org.junit.jupiter.api.Tag;
@@ -128,8 +131,8 @@ class FuzzTest {
             byte[] sound(Path folder) throws IOException {
                 // Made by compound.py beside it: 60 compound values with an enumeration among them, compressed in
                 // chunks.
-                try (java.io.InputStream stored = FuzzTest.class.getResourceAsStream("compound.h5")) {
-                    return java.util.Objects.requireNonNull(stored).readAllBytes();
+                try (InputStream stored = FuzzTest.class.getResourceAsStream("compound.h5")) {
+                    return Objects.requireNonNull(stored).readAllBytes();
                 }
             }
         },
@@ -237,7 +240,7 @@ class FuzzTest {
     private static byte[] spoiled(byte[] sound, SplittableRandom random) {
         byte[] bytes = sound.clone();
         switch (random.nextInt(6)) {
-            case 0 -> bytes = java.util.Arrays.copyOf(bytes, random.nextInt(bytes.length));
+            case 0 -> bytes = Arrays.copyOf(bytes, random.nextInt(bytes.length));
             case 1 -> {
                 for (int i = 0; i < 1 + random.nextInt(8); i++) {
                     bytes[random.nextInt(bytes.length)] ^= (byte) (1 << random.nextInt(8));
@@ -247,16 +250,12 @@ class FuzzTest {
                 int at = random.nextInt(bytes.length);
                 byte[] junk = new byte[random.nextInt(40)];
                 random.nextBytes(junk);
-                bytes = joined(
-                        java.util.Arrays.copyOf(bytes, at),
-                        junk,
-                        java.util.Arrays.copyOfRange(bytes, at, bytes.length));
+                bytes = joined(Arrays.copyOf(bytes, at), junk, Arrays.copyOfRange(bytes, at, bytes.length));
             }
             case 3 -> {
                 int from = random.nextInt(bytes.length);
                 int to = from + random.nextInt(bytes.length - from);
-                bytes = joined(
-                        java.util.Arrays.copyOf(bytes, from), java.util.Arrays.copyOfRange(bytes, to, bytes.length));
+                bytes = joined(Arrays.copyOf(bytes, from), Arrays.copyOfRange(bytes, to, bytes.length));
             }
             case 4 -> {
                 int from = random.nextInt(bytes.length);

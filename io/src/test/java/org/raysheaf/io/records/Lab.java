@@ -5,6 +5,7 @@ import java.io.UncheckedIOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.List;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.SystemDescription;
@@ -93,17 +94,17 @@ final class Lab {
     }
 
     static long[] times(Imported imported) {
-        return java.util.Arrays.copyOf(
+        return Arrays.copyOf(
                 imported.events().longs(Attribute.TIME), imported.events().size());
     }
 
     static int[] elements(Imported imported) {
-        return java.util.Arrays.copyOf(
+        return Arrays.copyOf(
                 imported.events().ints(Attribute.ELEMENT), imported.events().size());
     }
 
     static float[] energies(Imported imported) {
-        return java.util.Arrays.copyOf(
+        return Arrays.copyOf(
                 imported.events().floats(Attribute.ENERGY), imported.events().size());
     }
 }

@@ -7,6 +7,7 @@ import java.io.IOException;
 import java.nio.file.Files;
 import java.nio.file.Path;
 import java.util.Map;
+import java.util.SplittableRandom;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
@@ -148,7 +149,7 @@ class StepsTest {
     @Test
     void smallDisorderIsPutInOrder() throws IOException {
         int n = 300_000;
-        java.util.SplittableRandom random = new java.util.SplittableRandom(4);
+        SplittableRandom random = new SplittableRandom(4);
         StringBuilder text = new StringBuilder();
         for (int i = 0; i < n; i++) {
             text.append(i % 512)

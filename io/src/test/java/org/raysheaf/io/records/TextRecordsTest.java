@@ -3,11 +3,15 @@ package org.raysheaf.io.records;
 import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.assertThatThrownBy;
 
+import java.io.ByteArrayOutputStream;
 import java.io.IOException;
 import java.nio.charset.StandardCharsets;
+import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.Map;
 import java.util.SplittableRandom;
+import java.util.zip.GZIPOutputStream;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 
@@ -45,7 +49,7 @@ class TextRecordsTest {
         assertThat(Lab.energies(got)).containsExactly(511.5f, 450);
         assertThat(got.result().setAside()).isEqualTo(Map.of("energy: marked as invalid", 2L));
         assertThat(got.result().unread()).containsExactly("other");
-        assertThat(got.result().bytes()).isEqualTo(java.nio.file.Files.size(file));
+        assertThat(got.result().bytes()).isEqualTo(Files.size(file));
     }
 
     @Test
@@ -77,7 +81,7 @@ class TextRecordsTest {
 
     @Test
     void whatIsNoTextIsShownInHexadecimal() throws IOException {
-        Path file = java.nio.file.Files.write(folder.resolve("run.bin"), new byte[] {1, 2, (byte) 0xff, 0, '\n'});
+        Path file = Files.write(folder.resolve("run.bin"), new byte[] {1, 2, (byte) 0xff, 0, '\n'});
         assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
                 .hasMessageContaining("line 1")
                 .hasMessageContaining("the record: 01 02 ff 00;");
@@ -112,7 +116,7 @@ class TextRecordsTest {
         Lab.Imported got = Lab.run(folder, PLAIN + "damage: {policy: skip}\n", file);
         assertThat(Lab.elements(got)).containsExactly(1, 5, 2);
         assertThat(got.result().unreadable()).isEqualTo(Map.of("line too long", 1L));
-        assertThat(got.result().bytes()).isEqualTo(java.nio.file.Files.size(file));
+        assertThat(got.result().bytes()).isEqualTo(Files.size(file));
     }
 
     private static final String PLAIN = """
@@ -126,19 +130,19 @@ class TextRecordsTest {
         for (int i = 0; i < 50_000; i++) {
             text.append(i % 512).append(',').append(i * 7919L % 100_003).append('\n');
         }
-        java.io.ByteArrayOutputStream bytes = new java.io.ByteArrayOutputStream();
-        try (var out = new java.util.zip.GZIPOutputStream(bytes)) {
+        ByteArrayOutputStream bytes = new ByteArrayOutputStream();
+        try (var out = new GZIPOutputStream(bytes)) {
             out.write(text.toString().getBytes(StandardCharsets.US_ASCII));
         }
-        Path file = java.nio.file.Files.write(folder.resolve("run.txt.gz"), bytes.toByteArray());
+        Path file = Files.write(folder.resolve("run.txt.gz"), bytes.toByteArray());
         Lab.Imported got = Lab.run(folder, PLAIN, file);
         assertThat(got.events().size()).isEqualTo(50_000);
         assertThat(got.result().bytes()).isEqualTo(text.length());
-        java.nio.file.Files.write(file, java.util.Arrays.copyOf(bytes.toByteArray(), bytes.size() / 2));
+        Files.write(file, Arrays.copyOf(bytes.toByteArray(), bytes.size() / 2));
         assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
                 .isInstanceOf(RecordException.class)
                 .hasMessageContaining("run.txt.gz: expected sound compressed data, found damage or the end after");
-        java.nio.file.Files.writeString(file, "1,2\n");
+        Files.writeString(file, "1,2\n");
         assertThatThrownBy(() -> Lab.run(folder, PLAIN, file))
                 .hasMessageContaining("run.txt.gz: expected data compressed with gzip");
     }

@@ -2,29 +2,25 @@ package org.raysheaf.app;
 
 import java.io.IOException;
 import java.nio.file.Path;
+import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.LinkedHashMap;
 import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
-import org.raysheaf.engine.correct.Attenuation;
+import org.raysheaf.engine.correct.Backgrounds;
 import org.raysheaf.engine.correct.Efficiencies;
+import org.raysheaf.engine.correct.GeometryFactors;
+import org.raysheaf.engine.correct.Goodness;
 import org.raysheaf.engine.correct.PhantomMaps;
-import org.raysheaf.engine.correct.PileUp;
-import org.raysheaf.engine.correct.Randoms;
 import org.raysheaf.engine.correct.Scatter;
-import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.ListHeader;
-import org.raysheaf.geometry.event.Pairing;
-import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
-import org.raysheaf.geometry.response.CoincidenceSheaves;
-import org.raysheaf.geometry.response.ElementResponse;
-import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.efficiency.EfficiencyFile;
 import org.raysheaf.io.list.ListFile;
+import org.raysheaf.io.picture.HeatMap;
 import picocli.CommandLine.Command;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.Parameters;
@@ -37,6 +33,9 @@ import picocli.CommandLine.Parameters;
             "The source may be anything that all crystals see well: a cylinder, an annulus, lines, points."
         })
 final class NormalizeVerb extends Verb {
+    /** Residuals beyond so many standard errors look alike. */
+    private static final double MOST_SHOWN = 5;
+
     @Parameters(paramLabel = "LIST.h5", description = "The list of the source.")
     private Path input;
 
@@ -54,7 +53,9 @@ final class NormalizeVerb extends Verb {
 
     @Override
     void run() throws IOException {
+        Path picture = residuals(out);
         common().requireFree(out);
+        common().requireFree(picture);
         Phantom phantom = Phantoms.read(source);
         if (!(phantom.activityBq().value() > 0)) {
             throw new IOException(source + ": expected a source with activity, found none");
@@ -63,78 +64,93 @@ final class NormalizeVerb extends Verb {
         Progress progress = common().progress();
         ListFile opened = ListFile.open(input);
         Reconstruction.requirePairs(input, opened);
-        ListHeader header = opened.header();
-        Systems systems = Systems.of(header.systemDescription(), input + " (its system)", common(), pool, progress);
+        Systems systems =
+                Systems.of(opened.header().systemDescription(), input + " (its system)", common(), pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
-        PairingRecord pairing = header.pairing();
-        Pairing settings = pairing == null ? Pairing.within(1) : pairing.settings();
-        Double highest = settings.highestKeV();
-        ElementResponse first = systems.response();
-        WindowShares window =
-                systems.window(first, settings.lowestKeV(), highest == null ? Double.POSITIVE_INFINITY : highest);
-        ElementResponse response = first.within(window);
-        Attenuation attenuation =
-                new Attenuation(PhantomMaps.attenuation(phantom, CorrectedModel.ATTENUATION_VOXEL_MM));
-        Image activity = PhantomMaps.activity(phantom, CorrectedModel.ATTENUATION_VOXEL_MM);
-        CoincidenceSheaves sheaves = new CoincidenceSheaves(response).with(attenuation);
-        Randoms randoms =
-                list.attributes().contains(Attribute.DELAYED) ? Randoms.fromDelayed(list, systems.system()) : null;
-        double left = pairing == null
-                ? 1
-                : Randoms.survival(pairing, header.durationS())
-                        * PileUp.pairShare(systems.system(), header, pairing, window.pileUpShare());
-        Scatter scatter =
-                Scatter.of(response, window, activity, attenuation.muPerMm(), CorrectedModel.SCATTER_POINTS, pool);
+        Image activity = PhantomMaps.activity(phantom, MuMap.VOXEL_MM);
+        PairModel pairs = PairModel.of(
+                list, systems, Corrections.OF_A_BARE_LIST, MuMap.of(phantom).attenuation(), new Applied());
+        Scatter scatter = pairs.scatter(activity, pool);
+        if (scatter != null) {
+            // As in a reconstruction: what is clear of the source tells how much scattered twice and more.
+            Backgrounds.Balance balance = new Backgrounds(
+                            pairs.sheaves(), pairs.randoms(), scatter, pairs.attenuation(), pairs.pairsPerUnit())
+                    .balance(list, pool);
+            scatter = scatter.scaled(balance.scatterScale());
+        }
         Efficiencies found = Efficiencies.of(
                 list,
-                sheaves,
+                pairs.sheaves(),
                 activity,
-                randoms,
+                pairs.randoms(),
                 scatter,
-                attenuation,
-                1e-3 * header.pairsPerBecquerel() * left,
+                pairs.attenuation(),
+                pairs.pairsPerUnit(),
                 pool,
                 progress);
-        EfficiencyFile.write(out, systems.text(), found.efficiencies(), found.relativeErrors(), common().replace());
-        report(found);
+        GeometryFactors geometry = found.geometry();
+        EfficiencyFile.write(
+                out,
+                systems.text(),
+                found.efficiencies(),
+                found.relativeErrors(),
+                new EfficiencyFile.Geometry(geometry.pair(), geometry.column(), geometry.row()),
+                common().replace());
+        HeatMap.write(
+                "pairs of blocks: (found - expected) / standard error",
+                "block",
+                List.of(
+                        new HeatMap.Panel("efficiencies alone", boxed(found.pullsAlone())),
+                        new HeatMap.Panel("with block geometry", boxed(found.pulls()))),
+                MOST_SHOWN,
+                picture,
+                common().replace());
+        report(found, picture);
     }
 
-    private void report(Efficiencies found) {
-        double sum = 0;
-        double squares = 0;
-        int live = 0;
-        for (double e : found.efficiencies()) {
-            if (e > 0) {
-                sum += e;
-                squares += e * e;
-                live++;
-            }
-        }
-        double mean = sum / Math.max(1, live);
-        double spread = Math.sqrt(Math.max(0, squares / Math.max(1, live) - mean * mean));
-        double error = java.util.Arrays.stream(found.relativeErrors()).average().orElse(0);
+    /** Where the picture of the residuals goes: beside the efficiencies. */
+    private static Path residuals(Path out) {
+        String name = out.getFileName().toString();
+        String stem = name.endsWith(".h5") ? name.substring(0, name.length() - 3) : name;
+        return out.resolveSibling(stem + "-residuals.png");
+    }
+
+    private static List<Double> boxed(double[] values) {
+        return Arrays.stream(values).boxed().toList();
+    }
+
+    private void report(Efficiencies found, Path picture) {
         Map<String, Object> results = new LinkedHashMap<>();
         results.put("file", out.toString());
-        results.put("mean_efficiency", mean);
-        results.put("spread", spread);
-        results.put("mean_relative_error", error);
+        results.put("mean_efficiency", found.mean());
+        results.put("spread", found.spread());
+        results.put("mean_relative_error", found.meanRelativeError());
         results.put("silent_elements", found.silent());
-        results.put("reduced_chi_square_of_block_pairs", found.reducedChiSquare());
-        common().print(
-                        results,
-                        List.of(
-                                String.format(
-                                        Locale.ROOT,
-                                        "efficiencies  mean %.4f, spread %.4f, each known to %.1f %%",
-                                        mean,
-                                        spread,
-                                        100 * error),
-                                "silent        " + (found.silent().isEmpty() ? "none" : found.silent()),
-                                String.format(
-                                        Locale.ROOT,
-                                        "fit           chi square per degree of freedom %.2f, of pairs between blocks",
-                                        found.reducedChiSquare()),
-                                "written " + out,
-                                Common.CAUTION));
+        results.put("rounds", found.rounds());
+        results.put("last_change", found.lastChange());
+        results.put("reduced_chi_square", found.goodness());
+        results.put("residuals", picture.toString());
+        List<String> lines = new ArrayList<>();
+        lines.add(String.format(
+                Locale.ROOT,
+                "efficiencies  mean %.4f, spread %.4f, each known to %.1f %%",
+                found.mean(),
+                found.spread(),
+                100 * found.meanRelativeError()));
+        lines.add("silent        " + (found.silent().isEmpty() ? "none" : found.silent()));
+        lines.add(String.format(
+                Locale.ROOT, "fit           %d rounds, last change %.1e", found.rounds(), found.lastChange()));
+        for (Goodness goodness : found.goodness()) {
+            lines.add(String.format(
+                    Locale.ROOT,
+                    "              chi square per degree of freedom of %s: %.2f, with efficiencies alone %.2f",
+                    goodness.of(),
+                    goodness.withGeometry(),
+                    goodness.efficienciesAlone()));
+        }
+        lines.add("written " + out);
+        lines.add("        " + picture);
+        lines.add(Common.CAUTION);
+        common().print(results, lines);
     }
 }

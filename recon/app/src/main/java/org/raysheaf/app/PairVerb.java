@@ -2,6 +2,7 @@ package org.raysheaf.app;
 
 import java.io.IOException;
 import java.nio.file.Path;
+import java.util.ArrayList;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Locale;
@@ -120,7 +121,7 @@ final class PairVerb extends Verb {
             writer.commit(SinglesPairing.header(singles.header(), record));
             tally = record.tally();
         }
-        List<String> lines = new java.util.ArrayList<>(lines(tally));
+        List<String> lines = new ArrayList<>(lines(tally));
         lines.add("written " + out);
         lines.add(Common.CAUTION);
         common().print(Map.of("list", out.toString(), "pairing", tally), lines);

@@ -82,11 +82,11 @@ record Reconstruction(
         }
     }
 
-    /** From mm³ to counts: 1 Bq/mL is 10⁻³ Bq/mm³, and each becquerel emits so many pairs while the list was taken. */
-    static Image countsPerBqPerMl(Image sensitivity, double pairsPerBecquerel) {
+    /** From mm³ to counts: 1 Bq/mL in 1 mm³ emits so many pairs while the list was taken. */
+    static Image countsPerBqPerMl(Image sensitivity, double pairsPerBqPerMlAndMm3) {
         Image counts = sensitivity.copy();
         for (int j = 0; j < counts.values().length; j++) {
-            counts.values()[j] *= (float) (1e-3 * pairsPerBecquerel);
+            counts.values()[j] *= (float) pairsPerBqPerMlAndMm3;
         }
         return counts;
     }

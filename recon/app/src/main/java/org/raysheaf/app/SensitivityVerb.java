@@ -22,6 +22,9 @@ import picocli.CommandLine.Parameters;
             "With a system only: the same for one pair of photons per second and becquerel, for one second."
         })
 final class SensitivityVerb extends Verb {
+    /** Without a list, one pair for each becquerel. */
+    private static final double BQ_PER_BQ_PER_ML_AND_MM3 = 1e-3;
+
     @Parameters(paramLabel = "RECONSTRUCTION.yaml", description = "Names a list or a system, and the grid.")
     private Path input;
 
@@ -43,12 +46,12 @@ final class SensitivityVerb extends Verb {
         String listName = plan.list();
         String systemName = plan.system();
         Systems systems;
-        double pairs = 1;
+        double pairs = BQ_PER_BQ_PER_ML_AND_MM3;
         if (listName != null) {
             Path listPath = input.resolveSibling(listName);
             ListFile list = ListFile.open(listPath);
             systems = SystemOfList.of(list.header(), listPath, plan.systemBeside(input), common(), pool, progress);
-            pairs = list.header().pairsPerBecquerel();
+            pairs = list.header().pairsPerBqPerMlAndMm3();
         } else if (systemName != null) {
             systems = Systems.read(input.resolveSibling(systemName), common(), pool, progress);
         } else {

@@ -4,6 +4,7 @@ import java.io.IOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Optional;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.engine.Sensitivity;
 import org.raysheaf.geometry.detector.DetectorSystem;
@@ -107,11 +108,11 @@ final class Systems {
         return made;
     }
 
-    private java.util.Optional<ElementResponse> restore(float[] tables) {
+    private Optional<ElementResponse> restore(float[] tables) {
         try {
-            return java.util.Optional.of(ElementResponse.restore(system, tables));
+            return Optional.of(ElementResponse.restore(system, tables));
         } catch (IllegalArgumentException e) {
-            return java.util.Optional.empty();
+            return Optional.empty();
         }
     }
 

@@ -11,6 +11,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.EnumSet;
 import java.util.List;
+import java.util.Locale;
 import java.util.Objects;
 import java.util.Set;
 import java.util.SplittableRandom;
@@ -213,7 +214,7 @@ class CorrectionsTest {
     @ParameterizedTest
     @EnumSource(Pairing.Crowds.class)
     void randomsAreFoundUnderEveryRuleForCrowds(Pairing.Crowds crowds) throws IOException {
-        String name = crowds.name().toLowerCase(java.util.Locale.ROOT);
+        String name = crowds.name().toLowerCase(Locale.ROOT);
         String pairing = "window_ns: 5, lowest_keV: 350, highest_keV: 650, delay_ns: 200, crowds: " + name;
         Path list = record(name, 300, 10, 500_000, pairing, 8);
         ListFile opened = ListFile.open(list);
@@ -254,8 +255,7 @@ class CorrectionsTest {
                 Scatter.of(response, window, PhantomMaps.activity(phantom, 1), attenuation.muPerMm(), 500, POOL);
         CoincidenceSheaves sheaves = new CoincidenceSheaves(response).with(attenuation);
         ListHeader header = list.header();
-        double perUnit = 1e-3
-                * header.pairsPerBecquerel()
+        double perUnit = header.pairsPerBqPerMlAndMm3()
                 * Randoms.survival(header.pairing(), header.durationS())
                 * PileUp.pairShare(
                         systems.system(), header, Objects.requireNonNull(header.pairing()), window.pileUpShare());

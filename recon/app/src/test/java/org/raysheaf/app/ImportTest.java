@@ -13,6 +13,7 @@ import java.nio.ByteOrder;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.nio.file.StandardOpenOption;
 import java.util.List;
 import java.util.Random;
 import java.util.concurrent.TimeUnit;
@@ -232,7 +233,7 @@ class ImportTest {
                 .asString()
                 .contains("none.dat: there is no such file");
         assertThat(call("import", records)).returns(2, Outcome::exit);
-        Files.write(data, new byte[7], java.nio.file.StandardOpenOption.APPEND);
+        Files.write(data, new byte[7], StandardOpenOption.APPEND);
         Path list = folder.resolve("list.h5");
         assertThat(call("import", records, data, "--out", list))
                 .returns(1, Outcome::exit)

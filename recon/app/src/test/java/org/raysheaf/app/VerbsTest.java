@@ -7,6 +7,7 @@ import java.nio.ByteBuffer;
 import java.nio.ByteOrder;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.Arrays;
 import java.util.List;
 import java.util.stream.Stream;
 import org.junit.jupiter.api.BeforeEach;
@@ -160,8 +161,7 @@ class VerbsTest {
                             .exit())
                     .isZero();
             byte[] bytes = Files.readAllBytes(out.resolve("activity.h5"));
-            assertThat(first.length == 0 || java.util.Arrays.equals(first, bytes))
-                    .isTrue();
+            assertThat(first.length == 0 || Arrays.equals(first, bytes)).isTrue();
             first = bytes;
         }
     }

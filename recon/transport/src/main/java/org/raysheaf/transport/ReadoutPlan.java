@@ -1,5 +1,6 @@
 package org.raysheaf.transport;
 
+import java.util.Arrays;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.MonolithicBlock;
@@ -112,7 +113,7 @@ final class ReadoutPlan {
                 channelOfElement[block.placed.firstElement() + i] = channels - 1;
             }
         }
-        blockOfChannel = java.util.Arrays.copyOf(owner, channels);
+        blockOfChannel = Arrays.copyOf(owner, channels);
     }
 
     int channels() {
@@ -133,12 +134,12 @@ final class ReadoutPlan {
 
     /** Whether any block measures a point that is finer than its element. */
     boolean measuresPoints() {
-        return java.util.Arrays.stream(blocks).anyMatch(block -> block.monolithic);
+        return Arrays.stream(blocks).anyMatch(block -> block.monolithic);
     }
 
     /** Whether any block measures depth. */
     boolean measuresDepth() {
-        return java.util.Arrays.stream(blocks).anyMatch(block -> block.readout.depthFwhmMm() != null);
+        return Arrays.stream(blocks).anyMatch(block -> block.readout.depthFwhmMm() != null);
     }
 
     /** How far a single can stand from the order of its first share of energy (ps). */

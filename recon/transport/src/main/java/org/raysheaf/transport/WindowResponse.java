@@ -172,7 +172,7 @@ public final class WindowResponse {
 
     private Counts send(
             double energyKeV, double[] shape, int firstChunk, int chunks, ForkJoinPool pool, Progress progress) {
-        // A fixed number of partial sums, each over every so-manieth chunk in order: the same bits on any number of
+        // A fixed number of partial sums, each over every sixteenth chunk in order: the same bits on any number of
         // threads.
         int parts = 16;
         Counts[] sums = new Counts[parts];

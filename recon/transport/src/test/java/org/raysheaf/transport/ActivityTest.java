@@ -8,6 +8,7 @@ import org.apache.commons.rng.UniformRandomProvider;
 import org.junit.jupiter.api.Test;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.frame.Pose;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.phantom.LabelledVolume;
 import org.raysheaf.geometry.phantom.Phantom;
@@ -65,8 +66,8 @@ class ActivityTest {
 
     @Test
     void voxelsEmitLikeSolidsAndSolidsReplaceThem() {
-        // along x: label 1 from −10 to 0, label 2 from 0 to 10, a solid in its middle
-        Image labels = new Image(new Grid(10, 2, 2, 2, 2, 2, org.raysheaf.geometry.frame.Pose.IDENTITY));
+        // along x: label 1 from −10 to 0, label 2 from 0 to 10, a cold solid from 4 to 8
+        Image labels = new Image(new Grid(10, 2, 2, 2, 2, 2, Pose.IDENTITY));
         for (int x = 0; x < 10; x++) {
             for (int y = 0; y < 2; y++) {
                 for (int z = 0; z < 2; z++) {
@@ -79,14 +80,12 @@ class ActivityTest {
                 List.of(
                         new LabelledVolume.Label(1, "one", "water", 1),
                         new LabelledVolume.Label(2, "two", "water", 3)));
-        PhantomPart cold = PhantomPart.of("cold", new Box(new Vector3(4, 6, 6))).at(new Vector3(5, 0, 0));
+        PhantomPart cold = PhantomPart.of("cold", new Box(new Vector3(4, 6, 6))).at(new Vector3(6, 0, 0));
         Phantom phantom =
                 new Phantom(new PhantomDescription("voxels", List.of(), volume, List.of(cold), List.of()), labels);
         assertThat(phantom.concentrationBqPerMlAt(9, 1, 1)).isEqualTo(3000);
-        // the solid's faces at 3 and 7 lie on faces of voxel rows that begin at 2, 4, 6: half a row each is covered
-        double expected = 1 * 160 + 3 * (160 - 64);
-        assertThat(phantom.activityBq().value())
-                .isCloseTo(expected + 0, within(3 * 2.0 * 16)); // whole voxels by their centres
+        // the solid covers the voxels from 4 to 8, two layers of 2 × 2 of 8 mm³ each
+        assertThat(phantom.activityBq().value()).isCloseTo(1000 * 0.160 + 3000 * (0.160 - 0.064), within(1e-9));
         check(phantom, 16, 400_000);
     }
 

@@ -4,6 +4,8 @@ import static org.assertj.core.api.Assertions.assertThat;
 import static org.assertj.core.api.Assertions.within;
 
 import java.io.IOException;
+import java.time.Instant;
+import java.util.Arrays;
 import java.util.List;
 import java.util.Objects;
 import java.util.Set;
@@ -192,7 +194,7 @@ class ReadoutTest {
                 "",
                 "Tc-99m",
                 seconds,
-                java.time.Instant.EPOCH,
+                Instant.EPOCH,
                 43,
                 null,
                 ListKind.PAIRS,
@@ -223,7 +225,7 @@ class ReadoutTest {
                 counts[(int) Math.rint(block.floats(Attribute.ENERGY)[i] / 510.99895)]++;
             }
         });
-        double signals = java.util.Arrays.stream(counts).sum();
+        double signals = Arrays.stream(counts).sum();
         double mean = 3e5 * 200e-9;
         double two = mean * Math.exp(-mean);
         assertThat(counts[0]).isZero();

@@ -1,6 +1,7 @@
 package org.raysheaf.transport;
 
 import java.time.Instant;
+import java.util.Arrays;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.CrystalBlock;
@@ -68,7 +69,7 @@ final class Trials {
 
     /** A phantom whose parts hold activity but no matter. */
     static Phantom phantom(PhantomPart... parts) {
-        List<PhantomPart> empty = java.util.Arrays.stream(parts)
+        List<PhantomPart> empty = Arrays.stream(parts)
                 .map(part -> new PhantomPart(
                         part.name(),
                         part.shape(),

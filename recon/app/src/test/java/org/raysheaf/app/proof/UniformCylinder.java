@@ -109,7 +109,7 @@ final class UniformCylinder {
         ListHeader header = list.header();
         Image counts = sensitivity.copy();
         for (int j = 0; j < counts.values().length; j++) {
-            counts.values()[j] *= (float) (1e-3 * header.pairsPerBecquerel());
+            counts.values()[j] *= (float) header.pairsPerBqPerMlAndMm3();
         }
         Image support = FieldOfView.support(counts, FieldOfView.cylinder(29));
         EventStore store = EventLoader.load(

@@ -1,23 +1,16 @@
 package org.raysheaf.engine.correct;
 
 import java.io.IOException;
-import java.util.EnumSet;
-import java.util.Set;
+import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.ray.EventBackground;
-import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
-import org.raysheaf.geometry.event.EventTally;
-import org.raysheaf.geometry.frame.Grid;
-import org.raysheaf.geometry.frame.Image;
-import org.raysheaf.geometry.frame.Pose;
-import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
+import org.raysheaf.geometry.response.PairVisitor;
 
 /**
  * What else than the activity on its line may have caused each event of a list: random coincidences and scatter, in the unit in which an
@@ -30,16 +23,13 @@ import org.raysheaf.geometry.response.PairFactor;
  * <p>Also counts what is expected over all pairs, and how much of it on lines that pass clear of the object, where no true pair can be.
  */
 public final class Backgrounds {
-    private static final int BLOCK = 1 << 15;
-
-    /** Lines clear of the object keep this distance from it (mm): crystals are sometimes mistaken for their neighbours. */
-    private static final double CLEARANCE_MM = 5;
-
-    private static final double MASK_VOXEL_MM = 2;
-    private static final double DENSE = 0.1;
-
     /** Stands for "nothing but background": a line on which activity cannot be seen. */
     private static final float HOPELESS = 1e20f;
+
+    /** A line that runs less than this in the object's surroundings is clear of it (mm). */
+    private static final double TOUCH_MM = 1e-3;
+
+    private static final int ENOUGH_PAIRS = 200_000;
 
     private final CoincidenceSheaves sheaves;
     private final @Nullable Randoms randoms;
@@ -70,63 +60,8 @@ public final class Backgrounds {
         this.randoms = randoms;
         this.scatter = scatter;
         this.attenuation = attenuation;
-        this.mask = attenuation == null ? null : new RaySums(mask(attenuation.muPerMm()));
+        this.mask = attenuation == null ? null : new RaySums(ObjectMask.around(attenuation.muPerMm()));
         this.countsPerUnit = countsPerUnit;
-    }
-
-    /** 1 within {@value #CLEARANCE_MM} mm of dense matter, 0 elsewhere. */
-    private static Image mask(Image mu) {
-        Grid fine = mu.grid();
-        double half = 0.5
-                * Math.max(
-                        fine.nx() * fine.spacingXMm(),
-                        Math.max(fine.ny() * fine.spacingYMm(), fine.nz() * fine.spacingZMm()));
-        int reach = (int) Math.ceil(CLEARANCE_MM / MASK_VOXEL_MM);
-        int n = (int) Math.ceil(2 * Math.sqrt(3) * half / MASK_VOXEL_MM) + 2 * reach + 2;
-        n = Math.min(n, 400);
-        Grid grid = new Grid(
-                n,
-                n,
-                n,
-                MASK_VOXEL_MM,
-                MASK_VOXEL_MM,
-                MASK_VOXEL_MM,
-                Pose.shift(fine.pose().origin()));
-        Image mask = new Image(grid);
-        float most = 0;
-        for (float value : mu.values()) {
-            most = Math.max(most, value);
-        }
-        for (int x = 0; x < fine.nx(); x++) {
-            for (int y = 0; y < fine.ny(); y++) {
-                for (int z = 0; z < fine.nz(); z++) {
-                    if (mu.at(x, y, z) > DENSE * most) {
-                        mark(mask, grid.indices(fine.centre(x, y, z)), reach);
-                    }
-                }
-            }
-        }
-        return mask;
-    }
-
-    private static void mark(Image mask, Vector3 index, int reach) {
-        Grid grid = mask.grid();
-        int x0 = (int) Math.rint(index.x());
-        int y0 = (int) Math.rint(index.y());
-        int z0 = (int) Math.rint(index.z());
-        boolean inside = x0 >= 0 && y0 >= 0 && z0 >= 0 && x0 < grid.nx() && y0 < grid.ny() && z0 < grid.nz();
-        if (!inside || mask.at(x0, y0, z0) > 1) {
-            return; // this voxel was spread before
-        }
-        for (int x = Math.max(0, x0 - reach); x <= Math.min(grid.nx() - 1, x0 + reach); x++) {
-            for (int y = Math.max(0, y0 - reach); y <= Math.min(grid.ny() - 1, y0 + reach); y++) {
-                for (int z = Math.max(0, z0 - reach); z <= Math.min(grid.nz() - 1, z0 + reach); z++) {
-                    int at = grid.index(x, y, z);
-                    mask.values()[at] = Math.max(1, mask.values()[at]);
-                }
-            }
-        }
-        mask.values()[grid.index(x0, y0, z0)] = 2;
     }
 
     /**
@@ -177,7 +112,7 @@ public final class Backgrounds {
     }
 
     /**
-     * Adds up what is expected over all pairs, and what was found.
+     * Adds up what is expected over the pairs, and what was found.
      *
      * @param list the list
      * @param pool does the work
@@ -185,8 +120,31 @@ public final class Backgrounds {
      * @throws IOException if the list cannot be read
      */
     public Balance balance(EventSource list, ForkJoinPool pool) throws IOException {
+        long[] prompts = new long[2];
+        EventPairs.read(list, sheaves, pool, () -> new Prompts(mask), block -> {
+            prompts[0] += block.all;
+            prompts[1] += block.clear;
+        });
+        return expected((double) prompts[0], (double) prompts[1], pool);
+    }
+
+    /**
+     * The same, where the list was counted before.
+     *
+     * @param counted the balance of other backgrounds over the same sheaves, with attenuation
+     * @param pool does the work
+     * @return the balance
+     */
+    public Balance balance(Balance counted, ForkJoinPool pool) {
+        return expected(counted.prompts(), counted.promptsClear(), pool);
+    }
+
+    private Balance expected(double prompts, double promptsClear, ForkJoinPool pool) {
         double[][] sums = new double[sheaves.parts()][];
-        pool.submit(() -> IntStream.range(0, sheaves.parts()).parallel().forEach(part -> sums[part] = expected(part)))
+        int every = every();
+        pool.submit(() -> IntStream.range(0, sheaves.parts())
+                        .parallel()
+                        .forEach(part -> sums[part] = expected(part, every)))
                 .join();
         double[] total = {0, 0, 0, 0, 1, 0, 0};
         for (double[] sum : sums) {
@@ -194,30 +152,33 @@ public final class Backgrounds {
                 total[i] = i == 4 ? Math.min(total[i], sum[i]) : total[i] + sum[i];
             }
         }
-        long[] prompts = new long[2];
-        RaySums clear = mask;
-        read(list, (event, a, b, line) -> {
-            prompts[0]++;
-            prompts[1] += clear != null && clear.along(line) < 1e-3 ? 1 : 0;
-        });
         return new Balance(
-                prompts[0],
-                prompts[1],
-                total[0],
-                total[1],
-                total[2],
-                total[3],
+                prompts,
+                promptsClear,
+                every * total[0],
+                every * total[1],
+                every * total[2],
+                every * total[3],
                 total[4],
                 total[6] > 0 ? total[5] / total[6] : 1);
     }
 
-    private double[] expected(int part) {
+    /** All that is added up is smooth, so of very many pairs some are enough. */
+    private int every() {
+        long pairs = 0;
+        for (int part = 0; part < sheaves.parts(); part++) {
+            pairs += sheaves.capacity(part);
+        }
+        return (int) Math.max(1, Math.min(64, pairs / ENOUGH_PAIRS));
+    }
+
+    private double[] expected(int part, int every) {
         double[] sum = {0, 0, 0, 0, 1, 0, 0};
         PairFactor factor = sheaves.factor();
         PairFactor through = attenuation == null ? null : attenuation.make();
         RaySums clear = mask == null ? null : mask.twin();
-        sheaves.visit(part, (a, b, line) -> {
-            boolean passes = clear != null && clear.along(line) < 1e-3;
+        sheaves.visit(part, every, (a, b, line) -> {
+            boolean passes = clear != null && clear.along(line) < TOUCH_MM;
             double random = randoms == null ? 0 : randoms.of(a, b);
             sum[0] += random;
             sum[1] += passes ? random : 0;
@@ -237,48 +198,63 @@ public final class Backgrounds {
         return sum;
     }
 
+    /** Counts the events of a block. */
+    private static final class Prompts implements PairVisitor {
+        private final @Nullable RaySums mask;
+        private long all;
+        private long clear;
+
+        Prompts(@Nullable RaySums mask) {
+            this.mask = mask == null ? null : mask.twin();
+        }
+
+        @Override
+        public void pair(int a, int b, LineOfResponse line) {
+            all++;
+            clear += mask != null && mask.along(line) < TOUCH_MM ? 1 : 0;
+        }
+    }
+
     /**
      * The background of every usable event.
      *
      * @param list the list
+     * @param pool does the work
      * @return b/c by number of the event among those used (Bq/mL · mm)
      * @throws IOException if the list cannot be read
      */
-    public EventBackground of(EventSource list) throws IOException {
+    public EventBackground of(EventSource list, ForkJoinPool pool) throws IOException {
         if (randoms == null && scatter == null) {
             return EventBackground.NONE;
         }
         float[] background = new float[(int) Math.min(Integer.MAX_VALUE - 8, list.events())];
-        PairFactor factor = sheaves.factor();
-        PairFactor through = attenuation == null ? null : attenuation.make();
-        read(list, (event, a, b, line) -> {
+        int[] used = new int[1];
+        EventPairs.read(list, sheaves, pool, OfEvents::new, block -> {
+            System.arraycopy(block.values, 0, background, used[0], block.size);
+            used[0] += block.size;
+        });
+        return event -> background[(int) event];
+    }
+
+    /** The backgrounds of a block of events. */
+    private final class OfEvents implements PairVisitor {
+        private final PairFactor factor = sheaves.factor();
+        private final @Nullable PairFactor through = attenuation == null ? null : attenuation.make();
+        private float[] values = new float[1 << 10];
+        private int size;
+
+        @Override
+        public void pair(int a, int b, LineOfResponse line) {
             double c = line.etendueMm2Sr() / (2 * Math.PI) * factor.of(a, b, line) * countsPerUnit;
             double random = randoms == null ? 0 : randoms.of(a, b) / c;
             double scattered = scatter == null || through == null
                     ? 0
                     : 2 * Math.PI * scatter.perEtendue(a, b) / through.of(a, b, line);
             double sum = random + scattered;
-            background[event] = sum < HOPELESS ? (float) sum : HOPELESS; // also where c is 0
-        });
-        return event -> background[(int) event];
-    }
-
-    /** Hears of every usable event. */
-    private interface Visitor {
-        void event(int number, int a, int b, LineOfResponse line);
-    }
-
-    private void read(EventSource list, Visitor visitor) throws IOException {
-        Set<Attribute> columns = EnumSet.copyOf(sheaves.alsoReads());
-        columns.retainAll(list.attributes());
-        columns.addAll(sheaves.attributes());
-        EventBlock block = new EventBlock(columns, BLOCK);
-        EventTally tally = new EventTally();
-        int[] number = new int[1];
-        try (EventSource.Cursor cursor = list.open()) {
-            while (cursor.next(block)) {
-                sheaves.visit(block, tally, (a, b, line) -> visitor.event(number[0]++, a, b, line));
+            if (size == values.length) {
+                values = Arrays.copyOf(values, 2 * size);
             }
+            values[size++] = sum < HOPELESS ? (float) sum : HOPELESS; // also where c is 0
         }
     }
 }

@@ -2,32 +2,26 @@ package org.raysheaf.engine.correct;
 
 import java.io.IOException;
 import java.util.ArrayList;
-import java.util.EnumSet;
+import java.util.Arrays;
 import java.util.List;
-import java.util.Set;
 import java.util.concurrent.ForkJoinPool;
-import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
-import org.raysheaf.geometry.event.Attribute;
-import org.raysheaf.geometry.event.EventBlock;
+import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.event.EventSource;
-import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.BlockPairKinds;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
-import org.raysheaf.geometry.response.PairFactor;
 
 /**
- * Efficiency of every element relative to the model, most likely from a list of a known source: pairs of elements a and b are expected ε_a ε_b m_ab
- * times beside randoms, with m from étendue, window, attenuation, scatter and the activity on the line. The likelihood of a Poisson product
- * model is climbed by fixed-point steps on the numbers of pairs of each element (its fan), ε_a ← ε_a √(n_a / (ε_a Σ_b ε_b m_ab)); at the top
- * every fan is met exactly. As the activity is known, the efficiencies are absolute: 1 for a perfect model.
+ * Efficiency of every element, and of the places of blocks to each other, relative to the model, most likely from a list of a known source: pairs of
+ * elements a and b are expected ε_a ε_b g_ab m_ab times beside randoms, with m from étendue, window, attenuation, scatter and the activity on the
+ * line, and g as {@link GeometryFactors} says. The likelihood of a Poisson product model, its randoms taken off beforehand, is climbed by fixed-point
+ * steps on the numbers of pairs that each factor has; at the top every one of these numbers is met exactly. As the activity is known, the
+ * efficiencies are absolute: 1 for a perfect model. Immutable.
  */
 public final class Efficiencies {
-    private static final int BLOCK = 1 << 15;
-    private static final int MOST_ROUNDS = 60;
-    private static final double SETTLED = 1e-5;
-
     /** An element is taken for dead if it has less than a tenth of what is expected, and that is enough to tell. */
     private static final double DEAD_SHARE = 0.1;
 
@@ -35,15 +29,30 @@ public final class Efficiencies {
 
     private final double[] efficiencies;
     private final double[] relativeErrors;
-    private final List<Integer> silent;
-    private final double reducedChiSquare;
+    private final GeometryFactors geometry;
+    private final int rounds;
+    private final double lastChange;
+    private final List<Goodness> goodness;
+    private final double[] pullsAlone;
+    private final double[] pulls;
 
     private Efficiencies(
-            double[] efficiencies, double[] relativeErrors, List<Integer> silent, double reducedChiSquare) {
+            double[] efficiencies,
+            double[] relativeErrors,
+            GeometryFactors geometry,
+            int rounds,
+            double lastChange,
+            List<Goodness> goodness,
+            double[] pullsAlone,
+            double[] pulls) {
         this.efficiencies = efficiencies;
         this.relativeErrors = relativeErrors;
-        this.silent = silent;
-        this.reducedChiSquare = reducedChiSquare;
+        this.geometry = geometry;
+        this.rounds = rounds;
+        this.lastChange = lastChange;
+        this.goodness = goodness;
+        this.pullsAlone = pullsAlone;
+        this.pulls = pulls;
     }
 
     /**
@@ -72,205 +81,106 @@ public final class Efficiencies {
             ForkJoinPool pool,
             Progress progress)
             throws IOException {
-        int elements = sheaves.system().elements();
-        Pairs[] parts = expected(
-                sheaves, new RaySums(activityBqPerMl), randoms, scatter, attenuation, countsPerUnit, pool, progress);
-        double[] found = fans(list, sheaves);
-        double[] randomFans = new double[elements];
-        double[] modelFans = new double[elements];
-        for (Pairs part : parts) {
-            for (int i = 0; i < part.size; i++) {
-                randomFans[part.a[i]] += part.random[i];
-                randomFans[part.b[i]] += part.random[i];
-                modelFans[part.a[i]] += part.model[i];
-                modelFans[part.b[i]] += part.model[i];
-            }
+        ExpectedPairs pairs =
+                ExpectedPairs.of(sheaves, activityBqPerMl, scatter, attenuation, countsPerUnit, pool, progress);
+        BlockPairKinds kinds = new BlockPairKinds(sheaves.system());
+        double[] start = start(list, pairs, kinds, randoms, pool);
+        Margins found = Margins.found(list, pairs, start, pool);
+        Margins random = randoms == null ? Margins.none(pairs) : Margins.randoms(randoms, pairs, start, pool);
+        EfficiencyFit fit = new EfficiencyFit(pairs, kinds, found.less(random), start, pool, progress);
+        fit.climbEfficiencies();
+        Margins alone = fit.expected().plus(random);
+        fit.climbAll();
+        Margins all = fit.expected().plus(random);
+        double[] counts = found.ofElements();
+        double[] randomCounts = random.ofElements();
+        double[] errors = new double[start.length];
+        for (int e = 0; e < errors.length; e++) {
+            double wanted = counts[e] - randomCounts[e];
+            errors[e] = start[e] > 0 && wanted > 0 ? Math.sqrt(counts[e]) / wanted : 1;
         }
-        List<Integer> silent = new ArrayList<>();
-        double typical = typical(found, randomFans, modelFans);
-        double[] efficiencies = new double[elements];
-        double[] wanted = new double[elements];
-        for (int e = 0; e < elements; e++) {
-            wanted[e] = Math.max(0, found[e] - randomFans[e]);
-            double hoped = typical * modelFans[e];
-            boolean dead = hoped > ENOUGH_TO_TELL && wanted[e] < DEAD_SHARE * hoped;
-            efficiencies[e] = dead || !(modelFans[e] > 0) ? 0 : Math.sqrt(typical);
-            if (efficiencies[e] == 0) {
-                silent.add(e);
-            }
-        }
-        climb(parts, wanted, efficiencies, pool, progress);
-        double[] errors = new double[elements];
-        for (int e = 0; e < elements; e++) {
-            errors[e] = efficiencies[e] > 0 && wanted[e] > 0 ? Math.sqrt(found[e]) / wanted[e] : 1;
-        }
-        return new Efficiencies(efficiencies, errors, silent, chiSquare(list, sheaves, parts, efficiencies));
+        return new Efficiencies(
+                fit.efficiencies(),
+                errors,
+                fit.geometry(),
+                fit.rounds(),
+                fit.lastChange(),
+                goodness(found, alone, all, kinds),
+                pulls(found.ofBlocks(), alone.ofBlocks()),
+                pulls(found.ofBlocks(), all.ofBlocks()));
     }
 
-    /** Expected pairs of a part of the catalogue. */
-    private static final class Pairs {
-        int size;
-        int[] a;
-        int[] b;
-        float[] model;
-        float[] random;
-
-        Pairs(int room) {
-            a = new int[room];
-            b = new int[room];
-            model = new float[room];
-            random = new float[room];
-        }
-    }
-
-    private static Pairs[] expected(
-            CoincidenceSheaves sheaves,
-            RaySums activity,
-            @Nullable Randoms randoms,
-            @Nullable Scatter scatter,
-            @Nullable Attenuation attenuation,
-            double countsPerUnit,
-            ForkJoinPool pool,
-            Progress progress) {
-        Pairs[] parts = new Pairs[sheaves.parts()];
-        progress.begin("expecting pairs", parts.length, "parts");
-        pool.submit(() -> IntStream.range(0, parts.length).parallel().forEach(part -> {
-                    Pairs pairs = new Pairs(sheaves.capacity(part));
-                    RaySums mine = activity.twin();
-                    PairFactor factor = sheaves.factor();
-                    PairFactor through = attenuation == null ? null : attenuation.make();
-                    sheaves.visit(part, (a, b, line) -> {
-                        double f = factor.of(a, b, line);
-                        double etendue = line.etendueMm2Sr();
-                        double trues = etendue / (2 * Math.PI) * f * mine.along(line);
-                        double scattered = scatter == null || through == null
-                                ? 0
-                                : scatter.perEtendue(a, b) * etendue * (f / through.of(a, b, line));
-                        int i = pairs.size++;
-                        pairs.a[i] = a;
-                        pairs.b[i] = b;
-                        pairs.model[i] = (float) (countsPerUnit * (trues + scattered));
-                        pairs.random[i] = randoms == null ? 0 : (float) randoms.of(a, b);
-                    });
-                    parts[part] = pairs;
-                    progress.advance(1);
-                }))
-                .join();
-        progress.end("");
-        return parts;
-    }
-
-    private static double typical(double[] found, double[] randoms, double[] model) {
-        double pairs = 0;
-        double expected = 0;
-        for (int e = 0; e < found.length; e++) {
-            pairs += found[e] - randoms[e];
-            expected += model[e];
-        }
-        return expected > 0 ? Math.max(1e-6, pairs / expected) : 1;
-    }
-
-    private static void climb(
-            Pairs[] parts, double[] wanted, double[] efficiencies, ForkJoinPool pool, Progress progress) {
-        progress.begin("finding efficiencies", MOST_ROUNDS, "rounds");
-        int round = 0;
-        for (double change = 1; change > SETTLED && round < MOST_ROUNDS; round++) {
-            double[] partners = partners(parts, efficiencies, pool);
-            change = 0;
-            for (int e = 0; e < efficiencies.length; e++) {
-                if (efficiencies[e] > 0) {
-                    double next = partners[e] > 0 ? Math.sqrt(efficiencies[e] * wanted[e] / partners[e]) : 0;
-                    next = Math.max(next, 1e-9);
-                    change = Math.max(change, Math.abs(next / efficiencies[e] - 1));
-                    efficiencies[e] = next;
-                }
-            }
-            progress.advance(1);
-        }
-        progress.end(round + " rounds");
-    }
-
-    /** For each element Σ_b ε_b m_ab, in a fixed order whatever the threads. */
-    private static double[] partners(Pairs[] parts, double[] efficiencies, ForkJoinPool pool) {
-        int slices = 16;
-        double[][] sums = new double[slices][efficiencies.length];
-        pool.submit(() -> IntStream.range(0, slices).parallel().forEach(slice -> {
-                    double[] sum = sums[slice];
-                    for (int part = slice; part < parts.length; part += slices) {
-                        Pairs pairs = parts[part];
-                        for (int i = 0; i < pairs.size; i++) {
-                            sum[pairs.a[i]] += efficiencies[pairs.b[i]] * pairs.model[i];
-                            sum[pairs.b[i]] += efficiencies[pairs.a[i]] * pairs.model[i];
-                        }
-                    }
-                }))
-                .join();
-        for (int slice = 1; slice < slices; slice++) {
-            for (int e = 0; e < efficiencies.length; e++) {
-                sums[0][e] += sums[slice][e];
-            }
-        }
-        return sums[0];
-    }
-
-    private static double[] fans(EventSource list, CoincidenceSheaves sheaves) throws IOException {
-        double[] fans = new double[sheaves.system().elements()];
-        read(list, sheaves, (a, b) -> {
-            fans[a]++;
-            fans[b]++;
-        });
-        return fans;
-    }
-
-    private interface PairHearer {
-        void pair(int a, int b);
-    }
-
-    private static void read(EventSource list, CoincidenceSheaves sheaves, PairHearer hearer) throws IOException {
-        Set<Attribute> columns = EnumSet.copyOf(sheaves.alsoReads());
-        columns.retainAll(list.attributes());
-        columns.addAll(sheaves.attributes());
-        EventBlock block = new EventBlock(columns, BLOCK);
-        EventTally tally = new EventTally();
-        try (EventSource.Cursor cursor = list.open()) {
-            while (cursor.next(block)) {
-                sheaves.visit(block, tally, (a, b, line) -> hearer.pair(a, b));
-            }
-        }
-    }
-
-    /** χ² of the numbers of pairs between blocks, which are not fitted, per degree of freedom. */
-    private static double chiSquare(EventSource list, CoincidenceSheaves sheaves, Pairs[] parts, double[] efficiencies)
+    /** The same for all elements, and 0 for the dead. */
+    private static double[] start(
+            EventSource list, ExpectedPairs pairs, BlockPairKinds kinds, @Nullable Randoms randoms, ForkJoinPool pool)
             throws IOException {
-        int blocks = sheaves.system().blocks().size();
-        double[] expected = new double[blocks * blocks];
-        for (Pairs part : parts) {
-            for (int i = 0; i < part.size; i++) {
-                int at = key(sheaves, part.a[i], part.b[i], blocks);
-                expected[at] += efficiencies[part.a[i]] * efficiencies[part.b[i]] * part.model[i] + part.random[i];
-            }
+        double[] ones = new double[pairs.sheaves().system().elements()];
+        Arrays.fill(ones, 1);
+        double[] wanted = Margins.found(list, pairs, ones, pool).ofElements();
+        if (randoms != null) {
+            double[] random = Margins.randoms(randoms, pairs, ones, pool).ofElements();
+            Arrays.setAll(wanted, e -> Math.max(0, wanted[e] - random[e]));
         }
-        double[] found = new double[blocks * blocks];
-        read(list, sheaves, (a, b) -> {
-            if (efficiencies[a] > 0 && efficiencies[b] > 0) {
-                found[key(sheaves, a, b, blocks)]++;
-            }
-        });
-        double sum = 0;
-        int terms = 0;
-        for (int i = 0; i < found.length; i++) {
-            if (expected[i] > 5) {
-                sum += (found[i] - expected[i]) * (found[i] - expected[i]) / expected[i];
-                terms++;
-            }
+        double[] model =
+                Margins.expected(pairs, ones, GeometryFactors.ones(kinds), pool).ofElements();
+        double expected = Arrays.stream(model).sum();
+        double typical = expected > 0 ? Math.max(1e-6, Arrays.stream(wanted).sum() / expected) : 1;
+        double[] start = new double[ones.length];
+        for (int e = 0; e < start.length; e++) {
+            double hoped = typical * model[e];
+            boolean dead = hoped > ENOUGH_TO_TELL && wanted[e] < DEAD_SHARE * hoped;
+            start[e] = dead || !(model[e] > 0) ? 0 : Math.sqrt(typical);
         }
-        return terms > blocks ? sum / (terms - blocks) : Double.NaN;
+        return start;
     }
 
-    private static int key(CoincidenceSheaves sheaves, int a, int b, int blocks) {
-        int one = sheaves.system().blockIndexOf(a);
-        int other = sheaves.system().blockIndexOf(b);
-        return Math.max(one, other) * blocks + Math.min(one, other);
+    private static List<Goodness> goodness(Margins found, Margins alone, Margins all, BlockPairKinds kinds) {
+        DetectorSystem system = kinds.system();
+        int columns = 0;
+        int rows = 0;
+        for (PlacedBlock block : system.blocks()) {
+            columns += block.kind().lattice().columns();
+            rows += block.kind().lattice().rows();
+        }
+        return List.of(
+                Goodness.of(
+                        "pairs of blocks",
+                        half(found.ofBlocks(), system),
+                        half(alone.ofBlocks(), system),
+                        half(all.ofBlocks(), system),
+                        system.blocks().size()),
+                Goodness.of(
+                        "columns towards partner blocks",
+                        found.ofBlockColumns(kinds),
+                        alone.ofBlockColumns(kinds),
+                        all.ofBlockColumns(kinds),
+                        columns),
+                Goodness.of(
+                        "rows towards partner blocks",
+                        found.ofBlockRows(kinds),
+                        alone.ofBlockRows(kinds),
+                        all.ofBlockRows(kinds),
+                        rows));
+    }
+
+    /** Each pair of blocks once. */
+    private static double[] half(double[] ofBlocks, DetectorSystem system) {
+        int blocks = system.blocks().size();
+        double[] half = ofBlocks.clone();
+        for (int a = 0; a < blocks; a++) {
+            for (int b = a; b < blocks; b++) {
+                half[a * blocks + b] = 0;
+            }
+        }
+        return half;
+    }
+
+    private static double[] pulls(double[] found, double[] expected) {
+        double[] pulls = new double[found.length];
+        for (int i = 0; i < pulls.length; i++) {
+            pulls[i] = expected[i] > 0 ? (found[i] - expected[i]) / Math.sqrt(expected[i]) : Double.NaN;
+        }
+        return pulls;
     }
 
     /**
@@ -292,20 +202,111 @@ public final class Efficiencies {
     }
 
     /**
+     * The factors of block geometry.
+     *
+     * @return what goes with the efficiencies
+     */
+    public GeometryFactors geometry() {
+        return geometry;
+    }
+
+    /**
      * Elements taken for dead.
      *
      * @return their numbers
      */
     public List<Integer> silent() {
-        return List.copyOf(silent);
+        List<Integer> silent = new ArrayList<>();
+        for (int e = 0; e < efficiencies.length; e++) {
+            if (efficiencies[e] == 0) {
+                silent.add(e);
+            }
+        }
+        return silent;
     }
 
     /**
-     * Goodness of fit.
+     * Mean of the efficiencies.
      *
-     * @return χ² per degree of freedom of the pairs between blocks
+     * @return the mean over all elements that are not silent, NaN if there are none
      */
-    public double reducedChiSquare() {
-        return reducedChiSquare;
+    public double mean() {
+        return Arrays.stream(efficiencies).filter(e -> e > 0).average().orElse(Double.NaN);
+    }
+
+    /**
+     * Spread of the efficiencies.
+     *
+     * @return the standard deviation over all elements that are not silent, NaN if there are none
+     */
+    public double spread() {
+        double mean = mean();
+        return Math.sqrt(Arrays.stream(efficiencies)
+                .filter(e -> e > 0)
+                .map(e -> (e - mean) * (e - mean))
+                .average()
+                .orElse(Double.NaN));
+    }
+
+    /**
+     * How well an efficiency is known.
+     *
+     * @return mean relative standard error over all elements that are not silent, NaN if there are none
+     */
+    public double meanRelativeError() {
+        double sum = 0;
+        int live = 0;
+        for (int e = 0; e < efficiencies.length; e++) {
+            if (efficiencies[e] > 0) {
+                sum += relativeErrors[e];
+                live++;
+            }
+        }
+        return sum / live;
+    }
+
+    /**
+     * How long it took.
+     *
+     * @return rounds through all factors
+     */
+    public int rounds() {
+        return rounds;
+    }
+
+    /**
+     * How well the fit had settled.
+     *
+     * @return the largest relative change of any factor in the last round
+     */
+    public double lastChange() {
+        return lastChange;
+    }
+
+    /**
+     * Goodness of fit, by numbers that were not fitted one by one.
+     *
+     * @return pairs of blocks, then columns and rows of blocks towards each partner block
+     */
+    public List<Goodness> goodness() {
+        return goodness;
+    }
+
+    /**
+     * Residuals of pairs of blocks with efficiencies alone.
+     *
+     * @return (found − expected) / √expected at block · blocks + partner, NaN where nothing is expected; a copy
+     */
+    public double[] pullsAlone() {
+        return pullsAlone.clone();
+    }
+
+    /**
+     * Residuals of pairs of blocks with the factors of block geometry.
+     *
+     * @return as {@link #pullsAlone}
+     */
+    public double[] pulls() {
+        return pulls.clone();
     }
 }

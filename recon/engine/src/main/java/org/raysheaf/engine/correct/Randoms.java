@@ -1,6 +1,7 @@
 package org.raysheaf.engine.correct;
 
 import java.io.IOException;
+import java.util.Arrays;
 import java.util.EnumSet;
 import java.util.List;
 import org.jspecify.annotations.Nullable;
@@ -193,7 +194,7 @@ public final class Randoms {
         for (double fan : fans) {
             all += fan;
         }
-        java.util.Arrays.fill(rates, Math.sqrt(all) / fans.length);
+        Arrays.fill(rates, Math.sqrt(all) / fans.length);
         for (int round = 0; round < MOST_ROUNDS; round++) {
             double[] partners = partners(system, rates);
             double change = 0;

@@ -5,7 +5,6 @@ import java.util.List;
 import java.util.SplittableRandom;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.IntStream;
-import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.frame.Grid;
@@ -33,33 +32,17 @@ import org.raysheaf.geometry.response.WindowShares;
  * safe for use by several threads.
  */
 public final class Scatter {
-    /** Elements across a block that are sampled, each way. */
-    private static final int NODES = 3;
-
     /** Voxels below this share of the largest attenuation scatter too little to count. */
     private static final double DENSE = 0.1;
 
-    private final DetectorSystem system;
-    private final int[][] columns;
-    private final int[][] rows;
-    private final int[] firstNode;
-    private final int nodes;
+    private static final double TOTAL_511 = KleinNishina.totalB(KleinNishina.ELECTRON_KEV);
+
+    private final ScatterMesh mesh;
     private final float[] perEtendue;
     private final double scale;
 
-    private Scatter(
-            DetectorSystem system,
-            int[][] columns,
-            int[][] rows,
-            int[] firstNode,
-            int nodes,
-            float[] perEtendue,
-            double scale) {
-        this.system = system;
-        this.columns = columns;
-        this.rows = rows;
-        this.firstNode = firstNode;
-        this.nodes = nodes;
+    private Scatter(ScatterMesh mesh, float[] perEtendue, double scale) {
+        this.mesh = mesh;
         this.perEtendue = perEtendue;
         this.scale = scale;
     }
@@ -83,25 +66,8 @@ public final class Scatter {
             int points,
             ForkJoinPool pool) {
         DetectorSystem system = response.system();
-        int blocks = system.blocks().size();
-        int[][] columns = new int[blocks][];
-        int[][] rows = new int[blocks][];
-        int[] firstNode = new int[blocks + 1];
-        List<Integer> elements = new ArrayList<>();
-        for (PlacedBlock block : system.blocks()) {
-            int b = block.index();
-            CrystalBlock lattice = block.kind().lattice();
-            columns[b] = spread(lattice.columns());
-            rows[b] = spread(lattice.rows());
-            firstNode[b] = elements.size();
-            for (int row : rows[b]) {
-                for (int column : columns[b]) {
-                    elements.add(block.firstElement() + lattice.crystal(column, row, lattice.layers() / 2));
-                }
-            }
-        }
-        firstNode[blocks] = elements.size();
-        int[] element = elements.stream().mapToInt(Integer::intValue).toArray();
+        ScatterMesh mesh = new ScatterMesh(system);
+        int[] element = mesh.sampled();
         List<double[]> places = places(muPerMm, points);
         Paths paths = new Paths(response, element, places, activityBqPerMl, muPerMm, pool);
         float[] table = new float[element.length * element.length];
@@ -120,14 +86,7 @@ public final class Scatter {
                     }
                 }))
                 .join();
-        return new Scatter(system, columns, rows, firstNode, element.length, table, 1);
-    }
-
-    private static int[] spread(int count) {
-        int n = Math.min(NODES, count);
-        return IntStream.range(0, n)
-                .map(i -> n == 1 ? (count - 1) / 2 : (int) Math.rint((double) i * (count - 1) / (n - 1)))
-                .toArray();
+        return new Scatter(mesh, table, 1);
     }
 
     /** Points spread over the dense voxels by a stratified draw with a fixed seed: x, y, z, µ, volume. */
@@ -270,8 +229,6 @@ public final class Scatter {
         }
     }
 
-    private static final double TOTAL_511 = KleinNishina.totalB(KleinNishina.ELECTRON_KEV);
-
     /**
      * Scatter of a pair for each unit of its étendue, interpolated linearly over rows and columns of both blocks.
      *
@@ -280,59 +237,7 @@ public final class Scatter {
      * @return scatter per étendue (Bq/mL · mm), to be compared with ∫ activity dl / 2π
      */
     public double perEtendue(int a, int b) {
-        int blockA = system.blockIndexOf(a);
-        int blockB = system.blockIndexOf(b);
-        double[] wa = WEIGHTS.get();
-        int[] na = INDICES.get();
-        int countA = corners(blockA, a, na, wa, 0);
-        int countB = corners(blockB, b, na, wa, 4);
-        double sum = 0;
-        for (int i = 0; i < countA; i++) {
-            for (int j = 4; j < 4 + countB; j++) {
-                sum += wa[i] * wa[j] * perEtendue[na[i] * nodes + na[j]];
-            }
-        }
-        return scale * sum;
-    }
-
-    private static final ThreadLocal<double[]> WEIGHTS = ThreadLocal.withInitial(() -> new double[8]);
-    private static final ThreadLocal<int[]> INDICES = ThreadLocal.withInitial(() -> new int[8]);
-
-    /** The four nodes round an element and their weights. */
-    private int corners(int block, int element, int[] index, double[] weight, int at) {
-        PlacedBlock placed = system.blocks().get(block);
-        CrystalBlock lattice = placed.kind().lattice();
-        int crystal = element - placed.firstElement();
-        int column = lattice.column(crystal);
-        int row = lattice.row(crystal);
-        int c = below(columns[block], column);
-        int r = below(rows[block], row);
-        double fc = share(columns[block], c, column);
-        double fr = share(rows[block], r, row);
-        int nc = columns[block].length;
-        int nextC = Math.min(c + 1, nc - 1);
-        int nextR = Math.min(r + 1, rows[block].length - 1);
-        index[at] = firstNode[block] + r * nc + c;
-        index[at + 1] = firstNode[block] + r * nc + nextC;
-        index[at + 2] = firstNode[block] + nextR * nc + c;
-        index[at + 3] = firstNode[block] + nextR * nc + nextC;
-        weight[at] = (1 - fr) * (1 - fc);
-        weight[at + 1] = (1 - fr) * fc;
-        weight[at + 2] = fr * (1 - fc);
-        weight[at + 3] = fr * fc;
-        return 4;
-    }
-
-    private static int below(int[] nodes, int place) {
-        int i = 0;
-        while (i + 2 < nodes.length && place >= nodes[i + 1]) {
-            i++;
-        }
-        return i;
-    }
-
-    private static double share(int[] nodes, int i, int place) {
-        return i + 1 < nodes.length ? (place - nodes[i]) / (double) (nodes[i + 1] - nodes[i]) : 0;
+        return scale * mesh.interpolate(perEtendue, a, b);
     }
 
     /**
@@ -342,7 +247,7 @@ public final class Scatter {
      * @return scatter times the factor
      */
     public Scatter scaled(double factor) {
-        return new Scatter(system, columns, rows, firstNode, nodes, perEtendue, scale * factor);
+        return new Scatter(mesh, perEtendue, scale * factor);
     }
 
     /**

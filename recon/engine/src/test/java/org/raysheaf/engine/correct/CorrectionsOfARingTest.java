@@ -22,6 +22,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.phantom.PhantomDescription;
 import org.raysheaf.geometry.phantom.Source;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.BlockPairKinds;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
@@ -205,7 +206,7 @@ class CorrectionsOfARingTest {
         Scatter scatter =
                 Scatter.of(Ring.FACES, Ring.window(), PhantomMaps.activity(water, 1), attenuation.muPerMm(), 100, POOL);
         double perUnit = 2e-3;
-        EventBackground background = new Backgrounds(sheaves, randoms, scatter, attenuation, perUnit).of(list);
+        EventBackground background = new Backgrounds(sheaves, randoms, scatter, attenuation, perUnit).of(list, POOL);
         LineOfResponse line = line(HERE, THERE);
         double through = attenuation.make().of(HERE, THERE, line);
         double c = line.etendueMm2Sr() / (2 * Math.PI) * through * perUnit;
@@ -220,7 +221,8 @@ class CorrectionsOfARingTest {
         // all pairs that may pair hold 100 randoms; those whose lines cross the field of view hold fewer
         assertThat(balance.randoms()).isBetween(30.0, 100.0);
         assertThat(balance.attenuationLow()).isBetween(0.7, 0.9);
-        assertThat(new Backgrounds(sheaves, null, null, null, perUnit).of(list)).isSameAs(EventBackground.NONE);
+        assertThat(new Backgrounds(sheaves, null, null, null, perUnit).of(list, POOL))
+                .isSameAs(EventBackground.NONE);
     }
 
     @Test
@@ -258,7 +260,7 @@ class CorrectionsOfARingTest {
         }
         Efficiencies found = Efficiencies.of(list, sheaves, activity, null, null, null, perUnit, POOL, Progress.SILENT);
         assertThat(found.silent()).containsExactly(7, 133);
-        assertThat(found.reducedChiSquare()).isBetween(0.4, 1.8); // 20 pairs of blocks
+        assertThat(found.goodness().get(0).withGeometry()).isBetween(0.3, 1.8); // 20 pairs of blocks
         double chi = 0;
         for (int e = 0; e < n; e++) {
             if (truth[e] > 0) {
@@ -267,5 +269,76 @@ class CorrectionsOfARingTest {
             }
         }
         assertThat(chi).isBetween(0.7, 1.3); // 198 elements: ± 0.1
+    }
+
+    /** In a ring all blocks are alike, and pairs are of a kind if they are as many places apart, either way round. */
+    @Test
+    void pairsOfBlocksAreSortedByHowTheyStand() {
+        BlockPairKinds kinds = new BlockPairKinds(Ring.SYSTEM);
+        assertThat(kinds.blockKinds()).isEqualTo(1);
+        assertThat(kinds.kinds()).isEqualTo(3); // 2, 3 and 4 of 8 places apart
+        assertThat(kinds.kindOf(0, 2)).isEqualTo(kinds.kindOf(7, 1)).isEqualTo(kinds.kindOf(6, 0));
+        assertThat(kinds.kindOf(0, 1)).isEqualTo(-1);
+        // Column 4 of block 0 is as near to block 2 as its column 0 is to block 6; towards block 4 they are the same.
+        int left = 0;
+        int right = 4;
+        assertThat(kinds.column(left, 2)).isEqualTo(kinds.column(right, 6)).isNotEqualTo(kinds.column(right, 2));
+        assertThat(kinds.column(left, 4)).isEqualTo(kinds.column(right, 4));
+    }
+
+    /**
+     * Factors of pairs of blocks and of columns come back beside efficiencies, and what columns have in common towards all partners goes to the
+     * efficiencies.
+     */
+    @Test
+    void blockGeometryComesBackBesideEfficiencies() throws IOException {
+        Image activity = PhantomMaps.activity(Ring.water(24, 28, 500), 1);
+        CoincidenceSheaves sheaves = new CoincidenceSheaves(Ring.FACES);
+        BlockPairKinds kinds = new BlockPairKinds(Ring.SYSTEM);
+        int n = Ring.SYSTEM.elements();
+        SplittableRandom random = new SplittableRandom(8);
+        double[] truth = new double[n];
+        for (int e = 0; e < n; e++) {
+            truth[e] = 0.7 + 0.6 * random.nextDouble();
+        }
+        int beside = kinds.kindOf(0, 3);
+        int side = kinds.endOf(0, 3);
+        RaySums sums = new RaySums(activity);
+        double perUnit = 5e-4; // some tens of pairs for each two elements, all of which cross the source
+        Ring.Pairs list = new Ring.Pairs(null);
+        for (int part = 0; part < sheaves.parts(); part++) {
+            int[] blocks = sheaves.blocksOf(part);
+            boolean near = kinds.kindOf(blocks[0], blocks[1]) == beside;
+            sheaves.visit(part, (a, b, line) -> {
+                double g = near ? 1.2 : 1;
+                for (int end = 0; near && end < 2; end++) {
+                    g *= kinds.column(end == 0 ? a : b, blocks[1 - end]) == 0 ? 0.8 : 1;
+                }
+                double mean = g * truth[a] * truth[b] * perUnit * line.etendueMm2Sr() / (2 * Math.PI);
+                for (int k = poisson(mean * sums.along(line), random); k > 0; k--) {
+                    list.add(a, b, false);
+                }
+            });
+        }
+
+        Efficiencies found = Efficiencies.of(list, sheaves, activity, null, null, null, perUnit, POOL, Progress.SILENT);
+
+        GeometryFactors geometry = found.geometry();
+        double[] column = geometry.column();
+        int at = side * kinds.columns();
+        // Columns 0 and 4 mirror each other, so only their ratio to each other is geometry. Some 20,000 pairs each: 1
+        // %, and their ratio 1.4 %.
+        assertThat(column[at] / column[at + 4]).isCloseTo(0.8, within(0.05));
+        assertThat(geometry.of(HERE, 3 * 25 + 12) / geometry.of(HERE, THERE)).isBetween(1.05, 1.35);
+        assertThat(found.goodness().get(0).withGeometry()).isBetween(0.3, 1.8);
+        assertThat(found.goodness().get(1).withGeometry()).isBetween(0.7, 1.3);
+        assertThat(found.goodness().get(1).efficienciesAlone()).isGreaterThan(1.5);
+        // The product is what counts: pairs of some elements as they were made.
+        double[] e = found.efficiencies();
+        for (int partner : new int[] {3 * 25 + 12, THERE}) {
+            double product = e[HERE] * e[partner] * geometry.of(HERE, partner);
+            double expected = truth[HERE] * truth[partner] * (partner == THERE ? 1 : 1.2);
+            assertThat(product / expected).isCloseTo(1, within(0.08));
+        }
     }
 }

@@ -3,6 +3,7 @@ package org.raysheaf.engine.correct;
 import java.io.IOException;
 import java.time.Instant;
 import java.util.ArrayList;
+import java.util.Arrays;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
@@ -68,9 +69,9 @@ final class Ring {
     /** Everything of 511 keV passes the window, half of it at 400 keV, nothing below 350 keV. */
     static WindowShares window() {
         double[] shape = new double[WindowShares.SHAPE * WindowShares.SHAPE];
-        java.util.Arrays.fill(shape, 1);
+        Arrays.fill(shape, 1);
         double[] factors = new double[FACES.classes()];
-        java.util.Arrays.fill(factors, 1);
+        Arrays.fill(factors, 1);
         return new WindowShares(
                 0, 0.5, shape, factors, new double[] {350, 400, 511}, new double[] {0, 0.5, 1}, 1, 0.01);
     }
