@@ -33,6 +33,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionReader;
@@ -45,6 +46,7 @@ import org.raysheaf.io.volume.VolumeFile;
  *
  * @param sheaves the pairs with their factors
  * @param counts expected counts of the whole list per Bq/mL in each voxel
+ * @param countsError standard error of these, or null where they are a sum over all pairs
  * @param support where there may be activity
  * @param background b/c of each event
  * @param applied what was applied, with its size
@@ -53,6 +55,7 @@ import org.raysheaf.io.volume.VolumeFile;
 record CorrectedModel(
         CoincidenceSheaves sheaves,
         Image counts,
+        @Nullable Image countsError,
         Image support,
         EventBackground background,
         Map<String, Object> applied,
@@ -68,19 +71,20 @@ record CorrectedModel(
     static CorrectedModel of(
             EventSource list,
             Systems systems,
-            Corrections corrections,
+            ReconstructionPlan plan,
             @Nullable Path base,
             Grid grid,
             Common common,
             ForkJoinPool pool)
             throws IOException {
-        return new Builder(list, systems, corrections, base, grid, common, pool).build();
+        return new Builder(list, systems, plan, base, grid, common, pool).build();
     }
 
     private static final class Builder {
         private final EventSource list;
         private final ListHeader header;
         private final Systems systems;
+        private final ReconstructionPlan plan;
         private final Corrections corrections;
         private final @Nullable Path base;
         private final Grid grid;
@@ -92,7 +96,7 @@ record CorrectedModel(
         Builder(
                 EventSource list,
                 Systems systems,
-                Corrections corrections,
+                ReconstructionPlan plan,
                 @Nullable Path base,
                 Grid grid,
                 Common common,
@@ -100,7 +104,8 @@ record CorrectedModel(
             this.list = list;
             this.header = list.header();
             this.systems = systems;
-            this.corrections = corrections;
+            this.plan = plan;
+            this.corrections = plan.corrections();
             this.base = base;
             this.grid = grid;
             this.pool = pool;
@@ -122,7 +127,8 @@ record CorrectedModel(
             if (window != null) {
                 response = response.within(window);
             }
-            CoincidenceSheaves sheaves = new CoincidenceSheaves(response);
+            Positions positions = Positions.of(plan.raysPerEvent(), list.attributes());
+            CoincidenceSheaves sheaves = new CoincidenceSheaves(response).locating(positions);
             double[] efficiencies = efficiencies();
             if (efficiencies != null) {
                 sheaves = sheaves.withEfficiencies(efficiencies);
@@ -134,9 +140,14 @@ record CorrectedModel(
             double survival = survival(window);
             survival /= calibration();
             double perUnit = 1e-3 * header.pairsPerBecquerel() * survival;
-            Image counts = Reconstruction.countsPerBqPerMl(
-                    systems.sensitivity(sheaves, grid, key(window, efficiencies, attenuation)),
-                    header.pairsPerBecquerel() * survival);
+            SystemSensitivity sensitivity =
+                    systems.sensitivity(sheaves, grid, key(window, efficiencies, attenuation), plan.sensitivity());
+            applied.put("sensitivity", sensitivity.how());
+            Image error = sensitivity.standardError();
+            Image counts = Reconstruction.countsPerBqPerMl(sensitivity.image(), header.pairsPerBecquerel() * survival);
+            Image countsError = error == null
+                    ? null
+                    : Reconstruction.countsPerBqPerMl(error, header.pairsPerBecquerel() * survival);
             Image support = FieldOfView.support(
                     counts, FieldOfView.cylinder(systems.system().fieldOfView().radiusMm()));
             Randoms randoms = randoms();
@@ -148,7 +159,7 @@ record CorrectedModel(
                 left.add("scatter in the object");
                 report(backgrounds.balance(list, pool), randoms, null, attenuation);
             }
-            return new CorrectedModel(sheaves, counts, support, backgrounds.of(list), applied, left);
+            return new CorrectedModel(sheaves, counts, countsError, support, backgrounds.of(list), applied, left);
         }
 
         private Backgrounds withScatter(

@@ -22,6 +22,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.efficiency.EfficiencyFile;
 import org.raysheaf.io.list.ListFile;
@@ -76,7 +77,9 @@ final class NormalizeVerb extends Verb {
         Attenuation attenuation =
                 new Attenuation(PhantomMaps.attenuation(phantom, CorrectedModel.ATTENUATION_VOXEL_MM));
         Image activity = PhantomMaps.activity(phantom, CorrectedModel.ATTENUATION_VOXEL_MM);
-        CoincidenceSheaves sheaves = new CoincidenceSheaves(response).with(attenuation);
+        CoincidenceSheaves sheaves = new CoincidenceSheaves(response)
+                .locating(new Positions(1, false, false)) // by elements, like the efficiencies
+                .with(attenuation);
         Randoms randoms =
                 list.attributes().contains(Attribute.DELAYED) ? Randoms.fromDelayed(list, systems.system()) : null;
         double left = pairing == null

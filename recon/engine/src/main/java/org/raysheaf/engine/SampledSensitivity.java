@@ -1,6 +1,8 @@
 package org.raysheaf.engine;
 
+import java.util.Arrays;
 import java.util.Locale;
+import java.util.Optional;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.geometry.detector.FieldOfView;
 import org.raysheaf.geometry.frame.Grid;
@@ -28,6 +30,9 @@ public record SampledSensitivity(Image mean, Image standardError, double relativ
 
     private static final int FIRST_ROUND = 128;
     private static final double FAINT = 0.1;
+
+    /** Numbers that a kept row has beside the voxels. */
+    private static final int EXTRA = 4;
 
     /**
      * When to stop: whichever comes first.
@@ -69,6 +74,43 @@ public record SampledSensitivity(Image mean, Image standardError, double relativ
         } while (!result.reached && 2 * sheaves <= stop.mostSheaves() && drawn < 1 << 28);
         progress.end(percent(result.relativeError) + " standard error");
         return result;
+    }
+
+    /**
+     * All numbers, to be kept and given to {@link #restore} later.
+     *
+     * @return mean, standard error and the rest in one row
+     */
+    public float[] toFloats() {
+        int voxels = mean.values().length;
+        float[] row = Arrays.copyOf(mean.values(), 2 * voxels + EXTRA);
+        System.arraycopy(standardError.values(), 0, row, voxels, voxels);
+        row[2 * voxels] = (float) relativeError;
+        row[2 * voxels + 1] = sheaves >>> 24; // a float holds whole numbers of 24 bits
+        row[2 * voxels + 2] = sheaves & 0xffffff;
+        row[2 * voxels + 3] = reached ? 1 : 0;
+        return row;
+    }
+
+    /**
+     * Takes numbers that were kept.
+     *
+     * @param row what {@link #toFloats()} gave
+     * @param grid the grid that they belong to
+     * @return the sensitivity, or empty if the row has another length
+     */
+    public static Optional<SampledSensitivity> restore(float[] row, Grid grid) {
+        int voxels = grid.voxels();
+        if (row.length != 2 * voxels + EXTRA) {
+            return Optional.empty();
+        }
+        long sheaves = ((long) row[2 * voxels + 1] << 24) + (long) row[2 * voxels + 2];
+        return Optional.of(new SampledSensitivity(
+                new Image(grid, Arrays.copyOf(row, voxels)),
+                new Image(grid, Arrays.copyOfRange(row, voxels, 2 * voxels)),
+                row[2 * voxels],
+                sheaves,
+                row[2 * voxels + 3] > 0));
     }
 
     private static String percent(double share) {
