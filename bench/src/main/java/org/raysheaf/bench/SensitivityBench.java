@@ -117,20 +117,21 @@ public final class SensitivityBench implements Callable<Integer> {
 
     private void sampled(CoincidenceSheaves sheaves, Grid fine, Image exact, ForkJoinPool pool) {
         FieldOfView view = sheaves.system().fieldOfView();
-        Grid coarse = CoarseGrid.around(fine, coarseMm);
+        boolean interpolated = coarseMm > voxelMm;
+        Grid coarse = interpolated ? CoarseGrid.around(fine, coarseMm) : fine;
         List<Double> seconds = new ArrayList<>();
         SampledSensitivity found = null;
         Image image = exact;
         for (int round = 0; round < rounds; round++) {
             long begun = System.nanoTime();
             found = SampledSensitivity.of(
-                    sheaves.sampler(round, 3 * coarseMm),
+                    sheaves.sampler(round, interpolated ? 3 * coarseMm : 0),
                     coarse,
                     view,
                     new SampledSensitivity.Stop(error, Long.MAX_VALUE / 4),
                     pool,
                     Progress.SILENT);
-            image = CoarseGrid.interpolate(found.mean(), fine);
+            image = interpolated ? CoarseGrid.interpolate(found.mean(), fine) : found.mean();
             seconds.add((System.nanoTime() - begun) * NANO);
         }
         print("sampled", seconds);

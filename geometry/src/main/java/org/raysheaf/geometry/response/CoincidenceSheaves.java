@@ -197,20 +197,14 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
         if (positions.rays() == 1) {
-            visit(events, tally, (a, b, line) -> append(out, line, 1));
+            visit(events, tally, (a, b, line) -> PairCaster.append(out, line, 1));
             return;
         }
         PairRays rays = new PairRays(response, frames, strata);
-        MeasuredPoints.End endA = measured.ofA(events);
-        MeasuredPoints.End endB = measured.ofB(events);
-        each(events, tally, (i, a, b, line) -> {
+        MeasuredPoints.Events found = measured.of(events);
+        each(events, found, tally, (i, a, b, line) -> {
             rays.aim(a, b, line);
-            if (endA.measures(a)) {
-                endA.blur(i, a, rays.end(0));
-            }
-            if (endB.measures(b)) {
-                endB.blur(i, b, rays.end(1));
-            }
+            found.blur(i, a, b, rays);
             rays.append(out, 1);
         });
     }
@@ -224,7 +218,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @param visitor hears of every usable one
      */
     public void visit(EventBlock events, EventTally tally, PairVisitor visitor) {
-        each(events, tally, (i, a, b, line) -> visitor.pair(a, b, line));
+        each(events, measured.of(events), tally, (i, a, b, line) -> visitor.pair(a, b, line));
     }
 
     /** Hears of usable events by their number in the block. */
@@ -232,14 +226,12 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         void event(int i, int a, int b, LineOfResponse line);
     }
 
-    private void each(EventBlock events, EventTally tally, EventVisitor visitor) {
+    private void each(EventBlock events, MeasuredPoints.Events found, EventTally tally, EventVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         int[] a = events.ints(Attribute.ELEMENT_A);
         int[] b = events.ints(Attribute.ELEMENT_B);
         boolean mayBeDelayed = events.has(Attribute.DELAYED);
-        MeasuredPoints.End endA = measured.ofA(events);
-        MeasuredPoints.End endB = measured.ofB(events);
         for (int i = 0; i < events.size(); i++) {
             requireElement(a[i]);
             requireElement(b[i]);
@@ -249,37 +241,13 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
             } else if (silent[a[i]] || silent[b[i]]) {
                 tally.setAside(EventTally.Reason.SILENT_ELEMENT);
-            } else if (!finds(maker, i, a[i], b[i], endA, endB, line)) {
+            } else if (!found.find(i, a[i], b[i], maker, line)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
                 visitor.event(i, a[i], b[i], line);
                 tally.use();
             }
         }
-    }
-
-    /** Finds the line of an event; false if it passes the field of view. */
-    private static boolean finds(
-            PairLines maker,
-            int i,
-            int a,
-            int b,
-            MeasuredPoints.End endA,
-            MeasuredPoints.End endB,
-            LineOfResponse line) {
-        boolean moveA = endA.measures(a);
-        boolean moveB = endB.measures(b);
-        if (!moveA && !moveB) {
-            return maker.line(a, b, line);
-        }
-        maker.lineAnywhere(a, b, line);
-        if (moveA) {
-            endA.move(i, a, line, true);
-        }
-        if (moveB) {
-            endB.move(i, b, line, false);
-        }
-        return maker.crossesView(line);
     }
 
     private void requireElement(int element) {
@@ -307,54 +275,18 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     @Override
     public void fill(int part, SheafBundle out) {
-        Caster caster = new Caster();
-        visit(part, (a, b, line) -> caster.append(a, b, line, 1, out));
+        PairCaster caster = caster();
+        visit(part, (a, b, line) -> caster.cast(a, b, line, 1, out));
     }
 
-    /** Appends sheaves, weighted with all factors, to a catalogue. Belongs to one thread. */
-    final class Caster {
-        private final PairFactor factor = factors.make();
-        private final PairRays rays = new PairRays(response, frames, strata);
-        private final PairLines maker = lines.twin();
-        private final DrawnLines drawer = new DrawnLines(response, frames, positions);
-        private final LineOfResponse line = new LineOfResponse();
-
-        private void append(int a, int b, LineOfResponse found, double times, SheafBundle out) {
-            double weight = times * (found.etendue / (2 * Math.PI) * factor.of(a, b, found));
-            if (!(weight > 0)) {
-                return;
-            }
-            if (positions.rays() == 1) {
-                CoincidenceSheaves.append(out, found, weight);
-            } else {
-                rays.aim(a, b, found);
-                rays.append(out, weight);
-            }
-        }
-
-        /** The sheaf of a pair of elements, counted so many times. */
-        void pair(int a, int b, double times, SheafBundle out) {
-            if (!silent[a] && !silent[b] && maker.line(a, b, line)) {
-                append(a, b, line, times, out);
-            }
-        }
-
-        /** A line between drawn points of two elements, counted so many times. */
-        void drawn(int a, int b, double[] shares, double times, SheafBundle out) {
-            if (silent[a] || silent[b]) {
-                return;
-            }
-            drawer.draw(a, b, shares, line);
-            double weight = times * (line.etendue / (2 * Math.PI));
-            if (weight > 0 && maker.crossesView(line)) {
-                CoincidenceSheaves.append(out, line, weight * factor.of(a, b, line));
-            }
-        }
-    }
-
-    /** A caster for one thread. */
-    Caster caster() {
-        return new Caster();
+    /** Appends sheaves of pairs to a catalogue, weighted with all factors, for one thread. */
+    PairCaster caster() {
+        return new PairCaster(
+                lines.twin(),
+                positions.rays() == 1 ? null : new PairRays(response, frames, strata),
+                new DrawnLines(response, frames, measured, positions.rays() > 1),
+                factors.make(),
+                silent);
     }
 
     /**
@@ -377,9 +309,5 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 }
             }
         }
-    }
-
-    private static void append(SheafBundle out, LineOfResponse line, double weight) {
-        out.set(out.append(), line.ax, line.ay, line.az, line.bx, line.by, line.bz, weight);
     }
 }

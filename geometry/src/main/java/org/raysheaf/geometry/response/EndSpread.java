@@ -18,9 +18,14 @@ final class EndSpread {
         this.frames = frames;
     }
 
+    /** Takes up an element, whose laws are not known yet. */
+    void stand(int element) {
+        frame = ElementFrames.SIZE * element;
+    }
+
     /** The laws of an element for photons that it answers so: within its box, with its mean interaction point. */
     void set(int element, Response response) {
-        frame = ElementFrames.SIZE * element;
+        stand(element);
         set(0, response.u);
         set(1, response.v);
         set(2, response.w);
@@ -53,10 +58,14 @@ final class EndSpread {
         if (Double.isNaN(blurs[axis])) {
             return at(axis, strata.share(stratum));
         }
-        double above = measured[axis] + blurs[axis] * strata.normal(stratum) - lows[axis];
-        double length = lengths[axis];
-        above = above < 0 ? -above : above > length ? 2 * length - above : above;
-        return lows[axis] + Math.max(0, Math.min(length, above));
+        double value = measured[axis] + blurs[axis] * strata.normal(stratum);
+        return folded(value, lows[axis], lows[axis] + lengths[axis]);
+    }
+
+    /** A coordinate folded back in at the faces of a block, and no farther than from face to face. */
+    static double folded(double value, double low, double high) {
+        double inside = value < low ? 2 * low - value : value > high ? 2 * high - value : value;
+        return Math.max(low, Math.min(high, inside));
     }
 
     /** A coordinate for a share of its law, which must be one of the response. */

@@ -2,6 +2,7 @@ package org.raysheaf.geometry.response;
 
 import java.util.List;
 import java.util.Set;
+import java.util.random.RandomGenerator;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.BlockKind;
 import org.raysheaf.geometry.detector.DetectorSystem;
@@ -89,18 +90,79 @@ final class MeasuredPoints {
         }
     }
 
-    /** The columns of photon a of a block of events. */
-    End ofA(EventBlock events) {
-        return new End(events, POINT_A, SD_A, Attribute.DEPTH_A);
+    /** Whether a coordinate, 0 to 2 for u, v, w, of interactions in an element is measured. */
+    boolean measures(int element, int axis) {
+        return any
+                && switch (what[system.blockIndexOf(element)]) {
+                    case NOTHING -> false;
+                    case DEPTH -> axis == 2;
+                    case POINT -> true;
+                };
     }
 
-    /** The columns of photon b. */
-    End ofB(EventBlock events) {
-        return new End(events, POINT_B, SD_B, Attribute.DEPTH_B);
+    /**
+     * Where a ray ends whose photon interacted at a coordinate that is measured: the electronics blur it, and name no point outside the block; of
+     * several rays, each is then spread by the blur once more.
+     *
+     * @param value the coordinate from the element's centre (mm)
+     * @param several whether events have several rays
+     */
+    double blurred(int element, int axis, double value, boolean several, RandomGenerator chance) {
+        int block = system.blockIndexOf(element);
+        double sd = sds[3 * block + axis];
+        double place = frames[ElementFrames.SIZE * element + ElementFrames.PLACE + axis];
+        double low = faces[6 * block + axis] - place;
+        double high = faces[6 * block + 3 + axis] - place;
+        double found = Math.max(low, Math.min(high, value + sd * chance.nextGaussian()));
+        return several ? EndSpread.folded(found + sd * chance.nextGaussian(), low, high) : found;
     }
 
-    /** What was measured of one photon of every event in a block. Belongs to one thread. */
-    final class End {
+    /** What was measured of the events in a block, which may be filled again. */
+    Events of(EventBlock events) {
+        return new Events(
+                new End(events, POINT_A, SD_A, Attribute.DEPTH_A), new End(events, POINT_B, SD_B, Attribute.DEPTH_B));
+    }
+
+    /** What was measured of both photons of every event in a block. Belongs to one thread. */
+    static final class Events {
+        private final End endA;
+        private final End endB;
+
+        private Events(End endA, End endB) {
+            this.endA = endA;
+            this.endB = endB;
+        }
+
+        /** Finds the line of an event: that of its pair, its ends where they were measured. False if it passes the field of view. */
+        boolean find(int event, int a, int b, PairLines maker, LineOfResponse line) {
+            boolean moveA = endA.measures(a);
+            boolean moveB = endB.measures(b);
+            if (!moveA && !moveB) {
+                return maker.line(a, b, line);
+            }
+            maker.lineAnywhere(a, b, line);
+            if (moveA) {
+                endA.move(event, a, line, true);
+            }
+            if (moveB) {
+                endB.move(event, b, line, false);
+            }
+            return maker.crossesView(line);
+        }
+
+        /** Tells the rays of an event what was measured, and how well. */
+        void blur(int event, int a, int b, PairRays rays) {
+            if (endA.measures(a)) {
+                endA.blur(event, a, rays.end(0));
+            }
+            if (endB.measures(b)) {
+                endB.blur(event, b, rays.end(1));
+            }
+        }
+    }
+
+    /** What was measured of one photon of every event in a block. */
+    private final class End {
         private final float @Nullable [][] point;
         private final float @Nullable [][] blur;
         private final float @Nullable [] depth;
@@ -128,7 +190,7 @@ final class MeasuredPoints {
                     };
         }
 
-        /** Moves one end of a line, six coordinates of both ends from 0 or 3, to where the photon of an event was measured. */
+        /** Moves one end of a line to where the photon of an event was measured. */
         void move(int event, int element, LineOfResponse line, boolean endA) {
             double[] at = local;
             at[0] = endA ? line.ax : line.bx;

@@ -2,6 +2,7 @@ package org.raysheaf.geometry.response;
 
 import java.util.ArrayList;
 import java.util.List;
+import java.util.SplittableRandom;
 import org.apache.commons.math3.random.SobolSequenceGenerator;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.PlacedBlock;
@@ -24,6 +25,7 @@ final class SampledPairs implements SheafCatalogue {
 
     private final CoincidenceSheaves sheaves;
     private final boolean drawn;
+    private final int first;
     private final int points;
     private final long seed;
     private final double[] sequence;
@@ -39,6 +41,7 @@ final class SampledPairs implements SheafCatalogue {
     SampledPairs(CoincidenceSheaves sheaves, long seed, int first, int points) {
         this.sheaves = sheaves;
         this.drawn = sheaves.continuous();
+        this.first = first;
         this.points = points;
         this.seed = seed;
         this.sequence = new double[AXES * points];
@@ -82,18 +85,19 @@ final class SampledPairs implements SheafCatalogue {
             shift[axis] = unit(Strata.mix(Strata.mix(seed + part) + axis));
         }
         double[] shares = new double[AXES];
-        CoincidenceSheaves.Caster caster = sheaves.caster();
+        PairCaster caster = sheaves.caster();
+        SplittableRandom blur = new SplittableRandom(Strata.mix(seed - part) + first);
         for (int i = 0; i < points; i++) {
             for (int axis = 0; axis < AXES; axis++) {
                 double x = sequence[AXES * i + axis] + shift[axis];
                 shares[axis] = x < 1 ? x : x - 1;
             }
-            int first = a.firstElement() + take(ofA, shares, 0);
-            int second = b.firstElement() + take(ofB, shares, 3);
+            int one = a.firstElement() + take(ofA, shares, 0);
+            int other = b.firstElement() + take(ofB, shares, 3);
             if (drawn) {
-                caster.drawn(first, second, shares, each, out);
+                caster.drawn(one, other, shares, blur, each, out);
             } else {
-                caster.pair(first, second, each, out);
+                caster.pair(one, other, each, out);
             }
         }
     }

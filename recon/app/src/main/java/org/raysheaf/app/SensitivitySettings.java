@@ -1,5 +1,6 @@
 package org.raysheaf.app;
 
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;
@@ -8,16 +9,18 @@ import org.raysheaf.geometry.settings.Problems;
  * How the sensitivity is found.
  *
  * @param method as a sum over all pairs, or from samples
- * @param voxelMm edge of the voxels of a sampled one (mm), which is then interpolated; where the image's voxels are larger, they are taken
- * @param relativeError sampling goes on until the standard error is below this share of the sensitivity, above 0
+ * @param voxelMm edge of the voxels of a sampled one (mm), which is then interpolated; without it, or where they are not larger, those of the image. Structure that is
+ *     finer than these voxels is lost, and estimators make much of it: see DEVELOPERS.md
+ * @param relativeError sampling goes on until the standard error of a voxel is below this share of its sensitivity (root mean square over the
+ *     field of view), above 0
  * @param mostSheaves and stops when so many sheaves were tried, at least 1
  */
 record SensitivitySettings(
         @Default("auto") Method method,
-        @Default("2") double voxelMm,
-        @Default("0.005") double relativeError,
+        @Nullable Double voxelMm,
+        @Default("0.01") double relativeError,
         @Default("400000000") long mostSheaves) {
-    static final SensitivitySettings AUTO = new SensitivitySettings(Method.AUTO, 2, 0.005, 400_000_000);
+    static final SensitivitySettings AUTO = new SensitivitySettings(Method.AUTO, null, 0.01, 400_000_000);
 
     /** Rays beyond which a sum over all pairs takes minutes. */
     private static final long MANY_RAYS = 300_000_000;
@@ -33,9 +36,11 @@ record SensitivitySettings(
     }
 
     SensitivitySettings {
-        new Problems("sensitivity")
-                .above("voxel_mm", voxelMm, 0)
-                .above("relative_error", relativeError, 0)
+        Problems problems = new Problems("sensitivity");
+        if (voxelMm != null) {
+            problems.above("voxel_mm", voxelMm, 0);
+        }
+        problems.above("relative_error", relativeError, 0)
                 .atLeast("most_sheaves", (double) mostSheaves, 1)
                 .orThrow();
     }

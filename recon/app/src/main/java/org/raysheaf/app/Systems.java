@@ -150,8 +150,9 @@ final class Systems {
     private SystemSensitivity sampled(
             CoincidenceSheaves sheaves, Grid grid, String key, SensitivitySettings settings, String why) {
         double finest = Math.min(grid.spacingXMm(), Math.min(grid.spacingYMm(), grid.spacingZMm()));
-        boolean interpolated = finest < settings.voxelMm();
-        Grid coarse = interpolated ? CoarseGrid.around(grid, settings.voxelMm()) : grid;
+        double voxel = settings.voxelMm() == null ? finest : settings.voxelMm();
+        boolean interpolated = finest < voxel;
+        Grid coarse = interpolated ? CoarseGrid.around(grid, voxel) : grid;
         String digest = Cache.digest(
                 REVISION, text, coarse.toString(), key, sheaves.positions().toString(), settings.toString());
         SampledSensitivity made = cache.find("sampled", digest)
@@ -159,7 +160,7 @@ final class Systems {
                 .orElse(null);
         if (made == null) {
             made = SampledSensitivity.of(
-                    sheaves.sampler(SAMPLING_SEED, interpolated ? MARGIN_VOXELS * settings.voxelMm() : 0),
+                    sheaves.sampler(SAMPLING_SEED, interpolated ? MARGIN_VOXELS * voxel : 0),
                     coarse,
                     system.fieldOfView(),
                     new SampledSensitivity.Stop(settings.relativeError(), settings.mostSheaves()),

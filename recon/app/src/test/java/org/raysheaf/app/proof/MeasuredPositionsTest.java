@@ -19,6 +19,12 @@ import org.raysheaf.geometry.frame.Image;
  */
 class MeasuredPositionsTest {
     private static final double INNER_MM = UniformCylinder.RADIUS_MM - 3;
+    /** Many rays undo blur, and overshoot by some per cent within 5 mm of an edge, as every such reconstruction does. */
+    private static final double FLAT_MM = 12;
+
+    /** 1 % for the model, 0.25 % for counting a million events. */
+    private static final double WHOLE = 0.0125;
+
     private static final ForkJoinPool POOL = new ForkJoinPool();
 
     @AfterAll
@@ -52,15 +58,26 @@ class MeasuredPositionsTest {
 
     private static void proveFlat(Image image, double innerHalfMm) {
         double[] whole = UniformCylinder.mean(image, 0, INNER_MM, -innerHalfMm, innerHalfMm);
-        System.err.printf("whole %.4f %.4f%n", whole[0], whole[1]);
-        for (double r = 0; r < INNER_MM; r += 1.5) {
-            double[] ring = UniformCylinder.mean(image, r, r + 1.5, -innerHalfMm, innerHalfMm);
-            System.err.printf("ring %.1f  %.4f %.4f%n", r, ring[0] / whole[0], ring[1]);
+        assertThat(whole[0]).isCloseTo(1, within(WHOLE));
+        int profiles = 0;
+        for (double r = 0; r + 2 <= FLAT_MM; r += 2) {
+            profiles += flat(whole, UniformCylinder.mean(image, r, r + 2, -innerHalfMm, innerHalfMm));
         }
         for (double z = -innerHalfMm; z + 2 <= innerHalfMm; z += 2) {
-            double[] slice = UniformCylinder.mean(image, 0, INNER_MM, z, z + 2);
-            System.err.printf("slice %.1f  %.4f %.4f%n", z, slice[0] / whole[0], slice[1]);
+            profiles += flat(whole, UniformCylinder.mean(image, 0, FLAT_MM, z, z + 2));
         }
-        assertThat(whole[0]).isCloseTo(1, within(0.02));
+        assertThat(profiles).isGreaterThan(12);
+    }
+
+    /**
+     * A ring or slice is within 2 % of the mean, for the model, and three standard errors. Errors come from the scatter of voxels, which hang
+     * together, so they are somewhat too small; parts with more than 1.5 % are not counted.
+     */
+    private static int flat(double[] whole, double[] part) {
+        if (part[1] >= 0.015) {
+            return 0;
+        }
+        assertThat(part[0] / whole[0]).isCloseTo(1, within(0.02 + 3 * part[1]));
+        return 1;
     }
 }

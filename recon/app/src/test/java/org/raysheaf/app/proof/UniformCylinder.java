@@ -4,7 +4,6 @@ import java.io.IOException;
 import java.time.Instant;
 import java.util.List;
 import java.util.concurrent.ForkJoinPool;
-import org.raysheaf.engine.CoarseGrid;
 import org.raysheaf.engine.EstimationSettings;
 import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.FieldOfView;
@@ -143,16 +142,9 @@ final class UniformCylinder {
     }
 
     private Image sampled(Grid grid) {
-        SampledSensitivity.Stop stop = new SampledSensitivity.Stop(0.005, 1L << 40);
-        Image coarse = SampledSensitivity.of(
-                        sheaves.sampler(1, 6),
-                        CoarseGrid.around(grid, 2),
-                        system.fieldOfView(),
-                        stop,
-                        pool,
-                        Progress.SILENT)
+        SampledSensitivity.Stop stop = new SampledSensitivity.Stop(0.01, 1L << 40);
+        return SampledSensitivity.of(sheaves.sampler(1, 0), grid, system.fieldOfView(), stop, pool, Progress.SILENT)
                 .mean();
-        return CoarseGrid.interpolate(coarse, grid);
     }
 
     ListInMemory record(int events) throws IOException {
