@@ -12,16 +12,16 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.NoUsableEventsException;
-import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionWriter;
-import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.io.list.ListFile;
 
 /**

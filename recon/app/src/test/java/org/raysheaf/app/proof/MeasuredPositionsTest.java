@@ -12,6 +12,7 @@ import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.frame.Vector3;
 
 /**
  * Events whose rays end at measured points have no finite catalogue; their sensitivity is sampled. A uniform cylinder must still come back as
@@ -34,7 +35,8 @@ class MeasuredPositionsTest {
 
     @Test
     void slabsOfOnePieceComeBackAsBecquerelsPerMillilitre() throws IOException {
-        UniformCylinder cylinder = UniformCylinder.slabs(1, Grid.centred(25, 25, 21, 2), POOL);
+        UniformCylinder cylinder =
+                UniformCylinder.slabs(new Vector3(10, 12, 12), 1, Grid.centred(25, 25, 21, 2), 4_000_000, POOL);
         Image image = cylinder.reconstruct(cylinder.record(200_000), 10);
         double half = 0.5 * UniformCylinder.SHORT_MM - 4;
         assertThat(UniformCylinder.mean(image, 0, INNER_MM - 2, -half, half)[0]).isCloseTo(1, within(0.03));
@@ -44,7 +46,8 @@ class MeasuredPositionsTest {
     @ValueSource(ints = {1, 4})
     @Tag("proof")
     void slabsComeBackFlat(int rays) throws IOException {
-        UniformCylinder cylinder = UniformCylinder.slabs(rays, Grid.centred(49, 49, 41, 1), POOL);
+        UniformCylinder cylinder =
+                UniformCylinder.slabs(new Vector3(5, 6, 6), rays, Grid.centred(49, 49, 41, 1), Long.MAX_VALUE, POOL);
         proveFlat(cylinder.reconstruct(cylinder.record(1_000_000), 20), 0.5 * UniformCylinder.SHORT_MM - 3);
     }
 

@@ -103,15 +103,10 @@ final class UniformCylinder {
                 rings(12.2, tile), LENGTH_MM, new Positions(rays, true, true), Grid.centred(63, 63, 67, 0.925), pool);
     }
 
-    /** A ring of eight blocks of one piece, like owl-slabs of the sample data. */
-    static UniformCylinder slabs(int rays, Grid grid, ForkJoinPool pool) {
+    /** A ring of eight blocks of one piece, like owl-slabs of the sample data, in cells of some size. */
+    static UniformCylinder slabs(Vector3 cellMm, int rays, Grid grid, long mostSheaves, ForkJoinPool pool) {
         MonolithicBlock slab = new MonolithicBlock(
-                "slab",
-                new Vector3(30, 48, 12),
-                new Vector3(5, 6, 6),
-                "crystal",
-                new Vector3(0.6, 0.6, 1.2),
-                Readout.IDEAL);
+                "slab", new Vector3(30, 48, 12), cellMm, "crystal", new Vector3(0.6, 0.6, 1.2), Readout.IDEAL);
         DetectorSystem system = new DetectorSystem(new SystemDescription(
                 "slabs",
                 new org.raysheaf.geometry.detector.FieldOfView(25, 40),
@@ -119,7 +114,7 @@ final class UniformCylinder {
                 List.of(new Material("crystal", 12.2)),
                 List.of(slab),
                 List.of(new Placement.Rings("slab", 8, 38, 0, List.of(0.0)))));
-        return new UniformCylinder(system, SHORT_MM, new Positions(rays, true, true), grid, pool);
+        return new UniformCylinder(system, SHORT_MM, new Positions(rays, true, true), grid, mostSheaves, pool);
     }
 
     private static DetectorSystem rings(double attenuationLengthMm, CrystalBlock tile) {
@@ -138,11 +133,13 @@ final class UniformCylinder {
         this.lengthMm = lengthMm;
         viewRadiusMm = system.fieldOfView().radiusMm();
         sheaves = new CoincidenceSheaves(ElementResponse.tabulate(system, pool, Progress.SILENT)).locating(positions);
-        sensitivity = sheaves.continuous() ? sampled(grid) : Sensitivity.of(sheaves, grid, pool, Progress.SILENT);
+        sensitivity = sheaves.continuous()
+                ? sampled(grid, mostSheaves)
+                : Sensitivity.of(sheaves, grid, pool, Progress.SILENT);
     }
 
-    private Image sampled(Grid grid) {
-        SampledSensitivity.Stop stop = new SampledSensitivity.Stop(0.01, 1L << 40);
+    private Image sampled(Grid grid, long mostSheaves) {
+        SampledSensitivity.Stop stop = new SampledSensitivity.Stop(0.01, mostSheaves);
         return SampledSensitivity.of(sheaves.sampler(1, 0), grid, system.fieldOfView(), stop, pool, Progress.SILENT)
                 .mean();
     }
