@@ -18,6 +18,8 @@ public final class ListPart implements EventSource {
 
     private final EventSource whole;
     private final ListHeader header;
+    private final double fromS;
+    private final double toS;
     private final double toListStart;
     private final Choice choice;
 
@@ -29,9 +31,12 @@ public final class ListPart implements EventSource {
         boolean takes(EventBlock block, int row);
     }
 
-    private ListPart(EventSource whole, ListHeader header, double toListStart, Choice choice) {
+    private ListPart(
+            EventSource whole, ListHeader header, double fromS, double toS, double toListStart, Choice choice) {
         this.whole = whole;
         this.header = header;
+        this.fromS = fromS;
+        this.toS = toS;
         this.toListStart = toListStart;
         this.choice = choice;
     }
@@ -62,7 +67,7 @@ public final class ListPart implements EventSource {
                 scaled(all.pairing(), countShare));
         long fromPs = Math.round(fromS * PS_PER_S);
         long toPs = Math.round(toS * PS_PER_S);
-        return new ListPart(whole, header, 1 / left, new Choice() {
+        return new ListPart(whole, header, fromS, toS, 1 / left, new Choice() {
             @Override
             public Attribute attribute() {
                 return Attribute.TIME;
@@ -95,7 +100,7 @@ public final class ListPart implements EventSource {
                 scaled(all.pairing(), share));
         // The header speaks of a scan of that length from the start; the gate has its share of the whole.
         double toListStart = header.pairsPerBecquerel() / (share * all.pairsPerBecquerel());
-        return new ListPart(whole, header, toListStart, new Choice() {
+        return new ListPart(whole, header, 0, all.durationS(), toListStart, new Choice() {
             @Override
             public Attribute attribute() {
                 return Attribute.GATE;
@@ -130,6 +135,24 @@ public final class ListPart implements EventSource {
 
     private static long part(long count, double share) {
         return Math.round(count * share);
+    }
+
+    /**
+     * When the part begins, in the times of its events.
+     *
+     * @return since the start of the whole list (s)
+     */
+    public double fromS() {
+        return fromS;
+    }
+
+    /**
+     * When the part ends, in the times of its events.
+     *
+     * @return since the start of the whole list (s)
+     */
+    public double toS() {
+        return toS;
     }
 
     /**

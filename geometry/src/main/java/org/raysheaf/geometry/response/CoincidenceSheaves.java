@@ -1,12 +1,10 @@
 package org.raysheaf.geometry.response;
 
 import java.util.ArrayList;
-import java.util.Collections;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
 import org.raysheaf.geometry.detector.DetectorSystem;
-import org.raysheaf.geometry.detector.MonolithicBlock;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
@@ -14,48 +12,54 @@ import org.raysheaf.geometry.event.EventTally;
 import org.raysheaf.geometry.sheaf.SheafBundle;
 import org.raysheaf.geometry.sheaf.SheafCatalogue;
 import org.raysheaf.geometry.sheaf.SheafMaker;
+import org.raysheaf.geometry.sheaf.SheafSampler;
 
 /**
- * Coincident pairs of crystals as sheaves of one ray: the line between the mean interaction points. The catalogue holds every pair that the
- * system admits, one part per pair of blocks. An event and the catalogue entry of the same pair have the same ray, so a pair that the
- * sensitivity leaves out is set aside in the list as well.
+ * Coincident pairs as sheaves: one line between the mean or measured interaction points, or several that are spread over what is not known of
+ * them ({@link Positions}). The catalogue holds every pair of elements that the system admits, one part per pair of blocks. An event and the catalogue
+ * entry of the same pair have the same rays, so a pair that the sensitivity leaves out is set aside in the list as well. Where rays end at
+ * measured points no catalogue has those of the events; then {@link #sampler} draws from all that are possible.
  */
 public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
-    private static final List<Attribute> POINT_A =
-            List.of(Attribute.POSITION_A_X, Attribute.POSITION_A_Y, Attribute.POSITION_A_Z);
-    private static final List<Attribute> POINT_B =
-            List.of(Attribute.POSITION_B_X, Attribute.POSITION_B_Y, Attribute.POSITION_B_Z);
-    private static final Set<Attribute> ALSO_READS = alsoReadSet();
-
+    private final ElementResponse response;
     private final DetectorSystem system;
+    private final double[] frames;
     private final PairLines lines;
     private final List<PlacedBlock[]> blockPairs;
+    private final Positions positions;
+    private final MeasuredPoints measured;
+    private final Strata strata;
     private final PairFactor.Maker factors;
     private final boolean[] silent;
 
     /**
-     * The sheaves of a system.
+     * The sheaves of a system, one ray each.
      *
      * @param response the tabulated response of its elements
      */
     public CoincidenceSheaves(ElementResponse response) {
-        this(
-                response.system(),
-                new PairLines(response),
-                admitted(response.system()),
-                () -> (a, b, line) -> 1,
-                new boolean[response.system().elements()]);
+        this.response = response;
+        this.system = response.system();
+        this.frames = ElementFrames.of(system);
+        this.lines = new PairLines(response, frames, 0);
+        this.blockPairs = admitted(system);
+        this.positions = Positions.ONE_RAY;
+        this.measured = new MeasuredPoints(system, frames, positions);
+        this.strata = new Strata(1);
+        this.factors = () -> (a, b, line) -> 1;
+        this.silent = new boolean[system.elements()];
     }
 
     private CoincidenceSheaves(
-            DetectorSystem system,
-            PairLines lines,
-            List<PlacedBlock[]> blockPairs,
-            PairFactor.Maker factors,
-            boolean[] silent) {
-        this.system = system;
+            CoincidenceSheaves from, PairLines lines, Positions positions, PairFactor.Maker factors, boolean[] silent) {
+        this.response = from.response;
+        this.system = from.system;
+        this.frames = from.frames;
         this.lines = lines;
-        this.blockPairs = blockPairs;
+        this.blockPairs = from.blockPairs;
+        this.positions = positions;
+        this.measured = new MeasuredPoints(system, frames, positions);
+        this.strata = new Strata(positions.rays());
         this.factors = factors;
         this.silent = silent;
     }
@@ -80,16 +84,22 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      */
     public CoincidenceSheaves with(PairFactor.Maker more) {
         PairFactor.Maker before = factors;
-        return new CoincidenceSheaves(
-                system,
-                lines,
-                blockPairs,
-                () -> {
-                    PairFactor one = before.make();
-                    PairFactor other = more.make();
-                    return (a, b, line) -> one.of(a, b, line) * other.of(a, b, line);
-                },
-                silent);
+        PairFactor.Maker both = () -> {
+            PairFactor one = before.make();
+            PairFactor other = more.make();
+            return (a, b, line) -> one.of(a, b, line) * other.of(a, b, line);
+        };
+        return new CoincidenceSheaves(this, lines, positions, both, silent);
+    }
+
+    /**
+     * The same pairs, with rays for interaction points that are known in another way.
+     *
+     * @param known how well they are known, and how many rays stand for the rest
+     * @return sheaves of that many rays
+     */
+    public CoincidenceSheaves locating(Positions known) {
+        return new CoincidenceSheaves(this, lines, known, factors, silent);
     }
 
     /**
@@ -105,7 +115,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             quiet[e] |= !(efficiencies[e] > 0);
         }
         CoincidenceSheaves weighted = with(() -> (a, b, line) -> efficiencies[a] * efficiencies[b]);
-        return new CoincidenceSheaves(system, lines, blockPairs, weighted.factors, quiet);
+        return new CoincidenceSheaves(this, lines, positions, weighted.factors, quiet);
     }
 
     /**
@@ -126,11 +136,36 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         return factors.make();
     }
 
-    private static Set<Attribute> alsoReadSet() {
-        Set<Attribute> set = EnumSet.of(Attribute.DELAYED);
-        set.addAll(POINT_A);
-        set.addAll(POINT_B);
-        return Collections.unmodifiableSet(set);
+    /**
+     * How well interaction points are known.
+     *
+     * @return what these sheaves were made for
+     */
+    public Positions positions() {
+        return positions;
+    }
+
+    /**
+     * Whether rays end anywhere, so that the catalogue, which is one of pairs of elements, has not the rays of the events.
+     *
+     * @return true if points or depths are measured
+     */
+    public boolean continuous() {
+        return positions.continuous(system);
+    }
+
+    /**
+     * Draws from all sheaves that events can have, with all factors.
+     *
+     * @param seed decides what is drawn
+     * @param marginMm by how much the field of view is widened: sheaves that pass it at this distance are drawn as well (mm), at least 0
+     * @return the sampler
+     */
+    public SheafSampler sampler(long seed, double marginMm) {
+        PairLines wide = new PairLines(response, frames, marginMm);
+        CoincidenceSheaves all = new CoincidenceSheaves(this, wide, positions, factors, silent);
+        return (replicate, first, points) ->
+                new SampledPairs(all, Strata.mix(seed ^ Strata.mix(replicate + 1)), first, points);
     }
 
     @Override
@@ -140,25 +175,38 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     @Override
     public Set<Attribute> alsoReads() {
-        return ALSO_READS;
+        Set<Attribute> columns = EnumSet.of(Attribute.DELAYED);
+        measured.addColumns(columns, positions.rays() > 1);
+        return columns;
     }
 
     @Override
     public int raysPerSheaf() {
-        return 1;
+        return positions.rays();
     }
 
     /**
      * {@inheritDoc}
      *
-     * <p>If the events have a {@link Attribute#DELAYED} column, delayed pairs are set aside. In a block of one piece the ray ends at the
-     * measured point, if the events have one; the response, and so the sensitivity, is that of the cell that holds the point.
+     * <p>If the events have a {@link Attribute#DELAYED} column, delayed pairs are set aside. Rays end where the event was measured, in
+     * blocks of one piece at the point, in crystals whose readout tells it at the depth, if the events have such columns; the étendue is that of
+     * the pair of elements.
      *
      * @throws IllegalArgumentException if an element is not one of the system's
      */
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
-        visit(events, tally, (a, b, line) -> append(out, line, 1));
+        if (positions.rays() == 1) {
+            visit(events, tally, (a, b, line) -> PairCaster.append(out, line, 1));
+            return;
+        }
+        PairRays rays = new PairRays(response, frames, strata);
+        MeasuredPoints.Events found = measured.of(events);
+        each(events, found, tally, (i, a, b, line) -> {
+            rays.aim(a, b, line);
+            found.blur(i, a, b, rays);
+            rays.append(out, 1);
+        });
     }
 
     /**
@@ -170,13 +218,20 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @param visitor hears of every usable one
      */
     public void visit(EventBlock events, EventTally tally, PairVisitor visitor) {
+        each(events, measured.of(events), tally, (i, a, b, line) -> visitor.pair(a, b, line));
+    }
+
+    /** Hears of usable events by their number in the block. */
+    private interface EventVisitor {
+        void event(int i, int a, int b, LineOfResponse line);
+    }
+
+    private void each(EventBlock events, MeasuredPoints.Events found, EventTally tally, EventVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         int[] a = events.ints(Attribute.ELEMENT_A);
         int[] b = events.ints(Attribute.ELEMENT_B);
         boolean mayBeDelayed = events.has(Attribute.DELAYED);
-        boolean pointsA = POINT_A.stream().allMatch(events::has);
-        boolean pointsB = POINT_B.stream().allMatch(events::has);
         for (int i = 0; i < events.size(); i++) {
             requireElement(a[i]);
             requireElement(b[i]);
@@ -186,27 +241,13 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
             } else if (silent[a[i]] || silent[b[i]]) {
                 tally.setAside(EventTally.Reason.SILENT_ELEMENT);
-            } else if (!maker.line(a[i], b[i], line)) {
+            } else if (!found.find(i, a[i], b[i], maker, line)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
-                if (pointsA && measuresPoints(a[i])) {
-                    line.ax = events.floats(Attribute.POSITION_A_X)[i];
-                    line.ay = events.floats(Attribute.POSITION_A_Y)[i];
-                    line.az = events.floats(Attribute.POSITION_A_Z)[i];
-                }
-                if (pointsB && measuresPoints(b[i])) {
-                    line.bx = events.floats(Attribute.POSITION_B_X)[i];
-                    line.by = events.floats(Attribute.POSITION_B_Y)[i];
-                    line.bz = events.floats(Attribute.POSITION_B_Z)[i];
-                }
-                visitor.pair(a[i], b[i], line);
+                visitor.event(i, a[i], b[i], line);
                 tally.use();
             }
         }
-    }
-
-    private boolean measuresPoints(int element) {
-        return system.blockOf(element).kind() instanceof MonolithicBlock;
     }
 
     private void requireElement(int element) {
@@ -227,15 +268,25 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         return Math.multiplyExact(pair[0].kind().elements(), pair[1].kind().elements());
     }
 
+    /** One of the two blocks of a part. */
+    PlacedBlock block(int part, int which) {
+        return blockPairs.get(part)[which];
+    }
+
     @Override
     public void fill(int part, SheafBundle out) {
-        PairFactor factor = factors.make();
-        visit(part, (a, b, line) -> {
-            double weight = line.etendue / (2 * Math.PI) * factor.of(a, b, line);
-            if (weight > 0) {
-                append(out, line, weight);
-            }
-        });
+        PairCaster caster = caster();
+        visit(part, (a, b, line) -> caster.cast(a, b, line, 1, out));
+    }
+
+    /** Appends sheaves of pairs to a catalogue, weighted with all factors, for one thread. */
+    PairCaster caster() {
+        return new PairCaster(
+                lines.twin(),
+                positions.rays() == 1 ? null : new PairRays(response, frames, strata),
+                new DrawnLines(response, frames, measured, positions.rays() > 1),
+                factors.make(),
+                silent);
     }
 
     /**
@@ -280,9 +331,5 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      */
     public int[] blocksOf(int part) {
         return new int[] {blockPairs.get(part)[0].index(), blockPairs.get(part)[1].index()};
-    }
-
-    private static void append(SheafBundle out, LineOfResponse line, double weight) {
-        out.set(out.append(), line.ax, line.ay, line.az, line.bx, line.by, line.bz, weight);
     }
 }

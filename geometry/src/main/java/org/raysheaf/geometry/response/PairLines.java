@@ -1,9 +1,6 @@
 package org.raysheaf.geometry.response;
 
-import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.FieldOfView;
-import org.raysheaf.geometry.frame.Pose;
-import org.raysheaf.geometry.frame.Vector3;
 
 /**
  * Makes the line of response of a pair of elements. The ends are the mean interaction points for the direction of the line itself, and the
@@ -30,15 +27,16 @@ public final class PairLines {
     private static final int MOST_PARTS = 8;
 
     private final ElementResponse response;
-    private final DetectorSystem system;
     private final double viewRadius;
     private final double viewHalfLength;
-    // Per element: centre (3), then the axes of its block (9), then half sizes across (2). Looked up for every event.
+    private final double marginMm;
     private final double[] frames;
     private final Response near = new Response();
     private final Response far = new Response();
 
-    private static final int FRAME = 14;
+    private static final int FRAME = ElementFrames.SIZE;
+    private static final int HALF_U = ElementFrames.HALF;
+    private static final int HALF_V = ElementFrames.HALF + 1;
 
     /**
      * Lines of response of a system.
@@ -46,16 +44,23 @@ public final class PairLines {
      * @param response the tabulated response of its elements
      */
     public PairLines(ElementResponse response) {
-        this(response, frames(response.system()));
+        this(response, ElementFrames.of(response.system()), 0);
     }
 
-    private PairLines(ElementResponse response, double[] frames) {
+    /**
+     * Lines of response of a system, also those that pass the field of view at a distance.
+     *
+     * @param response the tabulated response of its elements
+     * @param frames where they stand
+     * @param marginMm by how much the field of view is widened on all sides (mm), at least 0
+     */
+    PairLines(ElementResponse response, double[] frames, double marginMm) {
         this.response = response;
-        this.system = response.system();
         this.frames = frames;
-        FieldOfView view = system.fieldOfView();
-        this.viewRadius = view.radiusMm();
-        this.viewHalfLength = 0.5 * view.lengthMm();
+        this.marginMm = marginMm;
+        FieldOfView view = response.system().fieldOfView();
+        this.viewRadius = view.radiusMm() + marginMm;
+        this.viewHalfLength = 0.5 * view.lengthMm() + marginMm;
     }
 
     /**
@@ -64,25 +69,7 @@ public final class PairLines {
      * @return a new maker
      */
     public PairLines twin() {
-        return new PairLines(response, frames);
-    }
-
-    private static double[] frames(DetectorSystem system) {
-        double[] frames = new double[Math.multiplyExact(FRAME, system.elements())];
-        for (int e = 0; e < system.elements(); e++) {
-            Vector3 centre = system.centre(e);
-            Pose pose = system.blockOf(e).pose();
-            Vector3 size = system.size(e);
-            Vector3[] rows = {centre, pose.u(), pose.v(), pose.w()};
-            for (int i = 0; i < 4; i++) {
-                frames[FRAME * e + 3 * i] = rows[i].x();
-                frames[FRAME * e + 3 * i + 1] = rows[i].y();
-                frames[FRAME * e + 3 * i + 2] = rows[i].z();
-            }
-            frames[FRAME * e + 12] = 0.5 * size.x();
-            frames[FRAME * e + 13] = 0.5 * size.y();
-        }
-        return frames;
+        return new PairLines(response, frames, marginMm);
     }
 
     /**
@@ -114,8 +101,8 @@ public final class PairLines {
 
     private double refined(int a, int b, double product, double lengthMm) {
         double width = Math.max(
-                Math.max(frames[FRAME * a + 12], frames[FRAME * a + 13]),
-                Math.max(frames[FRAME * b + 12], frames[FRAME * b + 13]));
+                Math.max(frames[FRAME * a + HALF_U], frames[FRAME * a + HALF_V]),
+                Math.max(frames[FRAME * b + HALF_U], frames[FRAME * b + HALF_V]));
         double ratio = 2 * width / lengthMm;
         return ratio * ratio > NEAR ? divided(a, b, product) : product;
     }
@@ -162,10 +149,10 @@ public final class PairLines {
     private double whole(int a, int b, double ua, double va, double ub, double vb, LineOfResponse line) {
         int fa = FRAME * a;
         int fb = FRAME * b;
-        double oua = ua * frames[fa + 12];
-        double ova = va * frames[fa + 13];
-        double oub = ub * frames[fb + 12];
-        double ovb = vb * frames[fb + 13];
+        double oua = ua * frames[fa + HALF_U];
+        double ova = va * frames[fa + HALF_V];
+        double oub = ub * frames[fb + HALF_U];
+        double ovb = vb * frames[fb + HALF_V];
         setA(line, fa, oua, ova, 0);
         setB(line, fb, oub, ovb, 0);
         double d = 0;
@@ -189,11 +176,12 @@ public final class PairLines {
     }
 
     private void lookUp(int element, int f, double x, double y, double z, Response out) {
-        response.lookUp(element, along(f + 3, x, y, z), along(f + 6, x, y, z), along(f + 9, x, y, z), out);
-    }
-
-    private double along(int at, double x, double y, double z) {
-        return frames[at] * x + frames[at + 1] * y + frames[at + 2] * z;
+        response.lookUp(
+                element,
+                ElementFrames.along(frames, f + ElementFrames.U, x, y, z),
+                ElementFrames.along(frames, f + ElementFrames.V, x, y, z),
+                ElementFrames.along(frames, f + ElementFrames.W, x, y, z),
+                out);
     }
 
     private void setA(LineOfResponse line, int f, double u, double v, double w) {
@@ -208,8 +196,8 @@ public final class PairLines {
         line.bz = frames[f + 2] + u * frames[f + 5] + v * frames[f + 8] + w * frames[f + 11];
     }
 
-    /** Whether the segment shares a point with the cylinder: the overlap of its part within the radius and its part within the length. */
-    private boolean crossesView(LineOfResponse line) {
+    /** Whether a line shares a point with the field of view: the overlap of its part within the radius and its part within the length. */
+    boolean crossesView(LineOfResponse line) {
         double dx = line.bx - line.ax;
         double dy = line.by - line.ay;
         double dz = line.bz - line.az;

@@ -21,12 +21,19 @@ import org.raysheaf.engine.ray.EventBackground;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
+import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.EveryNth;
+import org.raysheaf.geometry.event.ListPart;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.motion.Motion;
+import org.raysheaf.geometry.motion.MotionDescription;
+import org.raysheaf.geometry.motion.MovingSheaves;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.Positions;
+import org.raysheaf.geometry.sheaf.SheafMaker;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionReader;
 
@@ -34,21 +41,26 @@ import org.raysheaf.io.description.DescriptionReader;
  * Everything that an estimate needs beside the events: sheaves with all factors, sensitivity, support, background; and what was applied, for
  * the report.
  *
- * @param sheaves the pairs with their factors
+ * @param sheaves makes the rays of events, where the detector stood at their time
  * @param counts expected counts of the whole list per Bq/mL in each voxel
+ * @param countsError standard error of these, or null where they are a sum over all pairs
  * @param support where there may be activity
  * @param background b/c of each event
  * @param applied what was applied, with its size
  * @param left what was not
  */
 record CorrectedModel(
-        CoincidenceSheaves sheaves,
+        SheafMaker sheaves,
         Image counts,
+        @Nullable Image countsError,
         Image support,
         EventBackground background,
         Map<String, Object> applied,
         List<String> left) {
     private static final int SCATTER_ROUNDS = 2;
+
+    /** Poses whose mean stands for the sensitivity of a detector that moves; it varies so slowly with the pose that more change nothing. */
+    private static final int MOST_POSES = 48;
 
     /** Enough for a smooth estimate of scatter: ten updates, and about so many events. */
     private static final EstimationSettings ROUGH = new EstimationSettings(2, 5, 0, 3);
@@ -59,18 +71,19 @@ record CorrectedModel(
     static CorrectedModel of(
             EventSource list,
             Systems systems,
-            Corrections corrections,
+            ReconstructionPlan plan,
             @Nullable Path base,
             Grid grid,
             Common common,
             ForkJoinPool pool)
             throws IOException {
-        return new Builder(list, systems, corrections, base, grid, common, pool).build();
+        return new Builder(list, systems, plan, base, grid, common, pool).build();
     }
 
     private static final class Builder {
         private final EventSource list;
         private final Systems systems;
+        private final ReconstructionPlan plan;
         private final Corrections corrections;
         private final @Nullable Path base;
         private final Grid grid;
@@ -81,14 +94,15 @@ record CorrectedModel(
         Builder(
                 EventSource list,
                 Systems systems,
-                Corrections corrections,
+                ReconstructionPlan plan,
                 @Nullable Path base,
                 Grid grid,
                 Common common,
                 ForkJoinPool pool) {
             this.list = list;
             this.systems = systems;
-            this.corrections = corrections;
+            this.plan = plan;
+            this.corrections = plan.corrections();
             this.base = base;
             this.grid = grid;
             this.pool = pool;
@@ -99,20 +113,26 @@ record CorrectedModel(
             MuMap map = map();
             Attenuation attenuation = map == null ? null : map.attenuation();
             PairModel pairs = PairModel.of(list, systems, corrections, attenuation, applied);
-            CoincidenceSheaves sheaves = pairs.sheaves();
+            CoincidenceSheaves sheaves = pairs.sheaves(Positions.of(plan.raysPerEvent(), list.attributes()));
             Normalization normalization = normalization();
             if (normalization != null) {
                 sheaves = sheaves.withEfficiencies(normalization.efficiencies());
                 GeometryFactors geometry = normalization.geometry();
                 sheaves = geometry == null ? sheaves : sheaves.with(geometry);
             }
+            Motion motion = motion(map);
+            SheafMaker maker = motion == null ? sheaves : new MovingSheaves(sheaves, motion);
             // Counting with fewer pairs per becquerel multiplies the image.
             double perUnit = pairs.pairsPerUnit() / calibration();
-            Image counts = Reconstruction.countsPerBqPerMl(
-                    systems.sensitivity(sheaves, grid, key(pairs, normalization)), perUnit);
+            SystemSensitivity sensitivity =
+                    systems.sensitivity(sheaves, grid, key(pairs, normalization), plan.sensitivity(), poses(motion));
+            applied.add("sensitivity", sensitivity.how());
+            Image error = sensitivity.standardError();
+            Image counts = Reconstruction.countsPerBqPerMl(sensitivity.image(), perUnit);
+            Image countsError = error == null ? null : Reconstruction.countsPerBqPerMl(error, perUnit);
             Image support = FieldOfView.support(
                     counts, FieldOfView.cylinder(systems.system().fieldOfView().radiusMm()));
-            Stage stage = new Stage(pairs, sheaves, perUnit, counts, support);
+            Stage stage = new Stage(pairs, sheaves, maker, perUnit, counts, support);
             Backgrounds backgrounds = stage.backgrounds(null);
             if (corrections.scatter() && map != null && pairs.window() != null) {
                 backgrounds = withScatter(stage, map, backgrounds);
@@ -126,20 +146,28 @@ record CorrectedModel(
                 }
             }
             return new CorrectedModel(
-                    sheaves, counts, support, backgrounds.of(list, pool), applied.done(), applied.left());
+                    maker, counts, countsError, support, backgrounds.of(list, pool), applied.done(), applied.left());
         }
 
         /** What stays the same while scatter is estimated. */
         private final class Stage {
             final PairModel pairs;
             final CoincidenceSheaves sheaves;
+            final SheafMaker maker;
             final double perUnit;
             final Image counts;
             final Image support;
 
-            Stage(PairModel pairs, CoincidenceSheaves sheaves, double perUnit, Image counts, Image support) {
+            Stage(
+                    PairModel pairs,
+                    CoincidenceSheaves sheaves,
+                    SheafMaker maker,
+                    double perUnit,
+                    Image counts,
+                    Image support) {
                 this.pairs = pairs;
                 this.sheaves = sheaves;
+                this.maker = maker;
                 this.perUnit = perUnit;
                 this.counts = counts;
                 this.support = support;
@@ -159,7 +187,7 @@ record CorrectedModel(
                 }
                 EventStore store = EventLoader.load(
                         some,
-                        sheaves,
+                        maker,
                         support,
                         EventSelection.ALL,
                         ROUGH.subsets(),
@@ -194,6 +222,46 @@ record CorrectedModel(
                 }
             }
             return backgrounds;
+        }
+
+        /** Where the detector stood when, if it moved. Attenuation would have to follow the motion for every pair, which it does not yet. */
+        private @Nullable Motion motion(@Nullable MuMap map) throws IOException {
+            String name = plan.motion();
+            if (name == null) {
+                return null;
+            }
+            if (map != null) {
+                throw new IOException(name + ": motion cannot be combined with attenuation yet; leave out one of"
+                        + " motion and corrections.attenuation");
+            }
+            if (!list.attributes().contains(Attribute.TIME)) {
+                throw new IOException(name + ": motion needs the times of events, but the list has no column "
+                        + Attribute.TIME.columnName());
+            }
+            MotionDescription description = DescriptionReader.read(resolve(name), "motion", MotionDescription.class);
+            applied.add(
+                    "motion",
+                    Map.of(
+                            "file",
+                            name,
+                            "of",
+                            description.of(),
+                            "poses",
+                            description.poses().size()));
+            org.raysheaf.geometry.detector.FieldOfView view = systems.system().fieldOfView();
+            return Motion.of(description, Math.hypot(view.radiusMm(), 0.5 * view.lengthMm()));
+        }
+
+        private double fromS() {
+            return list instanceof ListPart part ? part.fromS() : 0;
+        }
+
+        private double toS() {
+            return list instanceof ListPart part ? part.toS() : list.header().durationS();
+        }
+
+        private List<Motion.Weighted> poses(@Nullable Motion motion) {
+            return motion == null ? List.of() : motion.over(fromS(), toS(), MOST_POSES);
         }
 
         private void outside(double share) {

@@ -18,6 +18,8 @@ import org.raysheaf.engine.correct.Scatter;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.io.efficiency.EfficiencyFile;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.picture.HeatMap;
@@ -70,17 +72,19 @@ final class NormalizeVerb extends Verb {
         Image activity = PhantomMaps.activity(phantom, MuMap.VOXEL_MM);
         PairModel pairs = PairModel.of(
                 list, systems, Corrections.OF_A_BARE_LIST, MuMap.of(phantom).attenuation(), new Applied());
+        CoincidenceSheaves sheaves =
+                pairs.sheaves(new Positions(1, false, false)); // by elements, like the efficiencies
         Scatter scatter = pairs.scatter(activity, pool);
         if (scatter != null) {
             // As in a reconstruction: what is clear of the source tells how much scattered twice and more.
             Backgrounds.Balance balance = new Backgrounds(
-                            pairs.sheaves(), pairs.randoms(), scatter, pairs.attenuation(), pairs.pairsPerUnit())
+                            sheaves, pairs.randoms(), scatter, pairs.attenuation(), pairs.pairsPerUnit())
                     .balance(list, pool);
             scatter = scatter.scaled(balance.scatterScale());
         }
         Efficiencies found = Efficiencies.of(
                 list,
-                pairs.sheaves(),
+                sheaves,
                 activity,
                 pairs.randoms(),
                 scatter,

@@ -17,6 +17,7 @@ import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.response.WindowShares;
 
 /**
@@ -37,7 +38,11 @@ record PairModel(
     private static final int SCATTER_POINTS = 500;
 
     static PairModel of(
-            EventSource list, Systems systems, Corrections corrections, @Nullable Attenuation attenuation, Applied applied)
+            EventSource list,
+            Systems systems,
+            Corrections corrections,
+            @Nullable Attenuation attenuation,
+            Applied applied)
             throws IOException {
         ListHeader header = list.header();
         applied.add("live_fraction", header.liveTimeS() / header.durationS());
@@ -62,9 +67,9 @@ record PairModel(
                 header.pairsPerBqPerMlAndMm3() * kept);
     }
 
-    /** The pairs, attenuated if that is counted with. */
-    CoincidenceSheaves sheaves() {
-        CoincidenceSheaves sheaves = new CoincidenceSheaves(response);
+    /** The pairs, with so many rays and what else is measured of their ends, attenuated if that is counted with. */
+    CoincidenceSheaves sheaves(Positions positions) {
+        CoincidenceSheaves sheaves = new CoincidenceSheaves(response).locating(positions);
         return attenuation == null ? sheaves : sheaves.with(attenuation);
     }
 
@@ -127,8 +132,8 @@ record PairModel(
         return unspoilt * piled;
     }
 
-    private static @Nullable Randoms randoms(EventSource list, Systems systems, Corrections corrections, Applied applied)
-            throws IOException {
+    private static @Nullable Randoms randoms(
+            EventSource list, Systems systems, Corrections corrections, Applied applied) throws IOException {
         Corrections.RandomsFrom from = corrections.randoms();
         PairingRecord pairing = list.header().pairing();
         if (from == Corrections.RandomsFrom.AUTO) {

@@ -12,12 +12,14 @@ import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.NoUsableEventsException;
+import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionWriter;
 import org.raysheaf.io.list.ListFile;
@@ -60,6 +62,7 @@ record Reconstruction(
         ListHeader header = opened.header();
         Systems systems = SystemOfList.of(header, listPath, plan.systemBeside(base), common, pool, progress);
         ListFile list = opened.withElements(systems.system().elements());
+        noteUnusedDepths(list, systems, common);
         Grid grid = plan.grid().gridFor(systems.system());
         List<Frame> frames = Frame.of(plan.frames(), list, listPath);
         Maker maker = new Maker(list, systems, plan, base, grid, work, common, pool);
@@ -72,6 +75,15 @@ record Reconstruction(
             images.add(maker.image(frame));
         }
         return new Reconstruction(list, systems, plan, grid, model, whole, odd, even, images);
+    }
+
+    private static void noteUnusedDepths(ListFile list, Systems systems, Common common) {
+        Positions depths = new Positions(1, false, true);
+        if (list.attributes().contains(Attribute.DEPTH_A) && !depths.continuous(systems.system())) {
+            common.note(
+                    "the list has measured depths, which are not used: no block of crystals has a depth_fwhm_mm in its"
+                            + " readout");
+        }
     }
 
     /** Singles have no lines. */
@@ -102,7 +114,7 @@ record Reconstruction(
             Common common,
             ForkJoinPool pool) {
         CorrectedModel model(EventSource part) throws IOException {
-            return CorrectedModel.of(part, systems, plan.corrections(), base, grid, common, pool);
+            return CorrectedModel.of(part, systems, plan, base, grid, common, pool);
         }
 
         Estimate estimate(EventSource part, CorrectedModel model, EventSelection selection, String name)

@@ -3,6 +3,7 @@ package org.raysheaf.app;
 import java.nio.file.Path;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.EstimationSettings;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.settings.Default;
 
 /**
@@ -16,6 +17,9 @@ import org.raysheaf.geometry.settings.Default;
  * @param halves whether to make the images of the odd and of the even events as well
  * @param corrections which corrections to make
  * @param frames parts of the list that get images of their own, or null for none
+ * @param motion path of a description of how detector or subject moved, or null if both stood still
+ * @param raysPerEvent lines that stand for an event: 1, or more that are spread over its crystals or the blur of its measured points
+ * @param sensitivity how the sensitivity is found
  */
 record ReconstructionPlan(
         @Nullable String list,
@@ -24,7 +28,14 @@ record ReconstructionPlan(
         @Default("{}") EstimationSettings estimation,
         @Default("false") boolean halves,
         @Default("{}") Corrections corrections,
-        @Nullable FrameSettings frames) {
+        @Nullable FrameSettings frames,
+        @Nullable String motion,
+        @Default("1") int raysPerEvent,
+        @Default("{}") SensitivitySettings sensitivity) {
+    ReconstructionPlan {
+        new Positions(raysPerEvent, false, false); // states the bounds
+    }
+
     /** What is done with a bare list. */
     static ReconstructionPlan bare() {
         return new ReconstructionPlan(
@@ -34,7 +45,10 @@ record ReconstructionPlan(
                 EstimationSettings.mlem(20),
                 false,
                 Corrections.OF_A_BARE_LIST,
-                null);
+                null,
+                null,
+                1,
+                SensitivitySettings.AUTO);
     }
 
     /** The file of the system, or null; paths start from the folder of the file that the plan came from. */
@@ -56,6 +70,9 @@ record ReconstructionPlan(
                 new EstimationSettings(e.passes(), e.subsets(), lanes > 0 ? lanes : e.lanes(), e.postFilterFwhmMm()),
                 halves || wantHalves,
                 corrections,
-                frames);
+                frames,
+                motion,
+                raysPerEvent,
+                sensitivity);
     }
 }

@@ -34,6 +34,7 @@ final class ResultFolder {
             "activity-even.nii.gz",
             "activity-frames.nii.gz",
             "sensitivity.nii.gz",
+            "sensitivity-error.nii.gz",
             "planes.png",
             "calibration.yaml",
             "result.json");
@@ -73,6 +74,10 @@ final class ResultFolder {
         volume(activity, UNIT, "activity.nii.gz");
         volume(activity, UNIT, "activity.h5");
         volume(done.model().counts(), "mL/Bq", "sensitivity.nii.gz");
+        Image countsError = done.model().countsError();
+        if (countsError != null) {
+            volume(countsError, "mL/Bq", "sensitivity-error.nii.gz");
+        }
         Estimate odd = done.odd();
         Estimate even = done.even();
         if (odd != null && even != null) {

@@ -7,6 +7,7 @@ import java.util.Map;
 import java.util.concurrent.ForkJoinPool;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.volume.VolumeFile;
@@ -47,19 +48,28 @@ final class SensitivityVerb extends Verb {
         String systemName = plan.system();
         Systems systems;
         double pairs = BQ_PER_BQ_PER_ML_AND_MM3;
+        Positions positions = new Positions(plan.raysPerEvent(), true, true);
         if (listName != null) {
             Path listPath = input.resolveSibling(listName);
             ListFile list = ListFile.open(listPath);
             systems = SystemOfList.of(list.header(), listPath, plan.systemBeside(input), common(), pool, progress);
             pairs = list.header().pairsPerBqPerMlAndMm3();
+            positions = Positions.of(plan.raysPerEvent(), list.attributes());
         } else if (systemName != null) {
             systems = Systems.read(input.resolveSibling(systemName), common(), pool, progress);
         } else {
             throw new IOException(input + ": names neither a list nor a system; add one of them");
         }
-        Image image = Reconstruction.countsPerBqPerMl(
-                systems.sensitivity(systems.sheaves(), plan.grid().gridFor(systems.system()), ""), pairs);
+        SystemSensitivity sensitivity = systems.sensitivity(
+                systems.sheaves().locating(positions),
+                plan.grid().gridFor(systems.system()),
+                "",
+                plan.sensitivity(),
+                List.of());
+        Image image = Reconstruction.countsPerBqPerMl(sensitivity.image(), pairs);
         VolumeFile.write(image, "mL/Bq", out, common().replace());
-        common().print(Map.of("volume", out.toString(), "sum", image.sum()), List.of("written " + out, Common.CAUTION));
+        common().print(
+                        Map.of("volume", out.toString(), "sum", image.sum(), "sensitivity", sensitivity.how()),
+                        List.of("from       " + sensitivity.how(), "written " + out, Common.CAUTION));
     }
 }

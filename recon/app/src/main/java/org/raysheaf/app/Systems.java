@@ -4,17 +4,26 @@ import java.io.IOException;
 import java.nio.charset.StandardCharsets;
 import java.nio.file.Files;
 import java.nio.file.Path;
+import java.util.LinkedHashMap;
+import java.util.List;
+import java.util.Locale;
+import java.util.Map;
 import java.util.Optional;
 import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.engine.CoarseGrid;
+import org.raysheaf.engine.SampledSensitivity;
 import org.raysheaf.engine.Sensitivity;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
+import org.raysheaf.geometry.motion.Motion;
+import org.raysheaf.geometry.motion.MovingCatalogue;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
 import org.raysheaf.geometry.response.WindowShares;
+import org.raysheaf.geometry.sheaf.SheafCatalogue;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.transport.WindowResponse;
@@ -28,6 +37,11 @@ final class Systems {
     private static final long WINDOW_PHOTONS = 10_000_000;
 
     private static final long WINDOW_SEED = 1;
+
+    private static final long SAMPLING_SEED = 1;
+
+    /** How far interpolation and the projector reach beyond the field of view, where lines must then be drawn as well (coarse voxels). */
+    private static final double MARGIN_VOXELS = 3;
 
     private final DetectorSystem system;
     private final String text;
@@ -116,8 +130,33 @@ final class Systems {
         }
     }
 
-    /** Sensitivity: Σ étendue / 2π · factors · length (mm³) in each voxel; the key tells the factors. */
-    Image sensitivity(CoincidenceSheaves sheaves, Grid grid, String key) {
+    /**
+     * The sensitivity of sheaves, from the cache if it is there; the key tells their factors.
+     *
+     * @param poses where the detector stood, if it moved; then it is the sum over all pairs in each pose
+     */
+    SystemSensitivity sensitivity(
+            CoincidenceSheaves sheaves,
+            Grid grid,
+            String key,
+            SensitivitySettings settings,
+            List<Motion.Weighted> poses) {
+        SensitivitySettings.Choice choice = settings.choiceFor(sheaves);
+        int rays = sheaves.raysPerSheaf();
+        String known = key + (rays == 1 ? "" : " rays " + rays);
+        if (!poses.isEmpty()) {
+            return new SystemSensitivity(
+                    exact(new MovingCatalogue(sheaves, poses), grid, known + " poses " + poses),
+                    null,
+                    Map.of("method", "exact", "why", "the detector moves", "poses", poses.size()));
+        }
+        return choice.sampled()
+                ? sampled(sheaves, grid, known, settings, choice.why())
+                : new SystemSensitivity(
+                        exact(sheaves, grid, known), null, Map.of("method", "exact", "why", choice.why()));
+    }
+
+    private Image exact(SheafCatalogue sheaves, Grid grid, String key) {
         String digest = Cache.digest(REVISION, text, grid.toString(), key);
         float[] kept = cache.find("sensitivity", digest).orElse(null);
         if (kept != null && kept.length == grid.voxels()) {
@@ -126,5 +165,47 @@ final class Systems {
         Image made = Sensitivity.of(sheaves, grid, pool, progress);
         common.keep(cache, "sensitivity", digest, made.values());
         return made;
+    }
+
+    private SystemSensitivity sampled(
+            CoincidenceSheaves sheaves, Grid grid, String key, SensitivitySettings settings, String why) {
+        double finest = Math.min(grid.spacingXMm(), Math.min(grid.spacingYMm(), grid.spacingZMm()));
+        double voxel = settings.voxelMm() == null ? finest : settings.voxelMm();
+        boolean interpolated = finest < voxel;
+        Grid coarse = interpolated ? CoarseGrid.around(grid, voxel) : grid;
+        String digest = Cache.digest(
+                REVISION, text, coarse.toString(), key, sheaves.positions().toString(), settings.toString());
+        SampledSensitivity made = cache.find("sampled", digest)
+                .flatMap(row -> SampledSensitivity.restore(row, coarse))
+                .orElse(null);
+        if (made == null) {
+            made = SampledSensitivity.of(
+                    sheaves.sampler(SAMPLING_SEED, interpolated ? MARGIN_VOXELS * voxel : 0),
+                    coarse,
+                    system.fieldOfView(),
+                    new SampledSensitivity.Stop(settings.relativeError(), settings.mostSheaves()),
+                    pool,
+                    progress);
+            common.keep(cache, "sampled", digest, made.toFloats());
+        }
+        if (!made.reached()) {
+            common.note(String.format(
+                    Locale.ROOT,
+                    "the sensitivity has a standard error of %.2f %%, not %.2f %% as asked for; allow more sensitivity.most_sheaves",
+                    100 * made.relativeError(),
+                    100 * settings.relativeError()));
+        }
+        Map<String, Object> how = new LinkedHashMap<>();
+        how.put("method", "sampled");
+        how.put("why", why);
+        how.put("relative_standard_error", made.relativeError());
+        how.put("sheaves", made.sheaves());
+        how.put("voxel_mm", coarse.spacingXMm());
+        return interpolated
+                ? new SystemSensitivity(
+                        CoarseGrid.interpolate(made.mean(), grid),
+                        CoarseGrid.interpolate(made.standardError(), grid),
+                        how)
+                : new SystemSensitivity(made.mean(), made.standardError(), how);
     }
 }

@@ -1,5 +1,6 @@
 package org.raysheaf.engine;
 
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.ray.EventPage;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.Joseph;
@@ -47,10 +48,15 @@ final class Visit {
     }
 
     private void page(EventPage page) {
-        if (rays == 1 && page.background() == null) {
-            lines(page.walks(), page.first() - page.offset(), page.end() - page.offset());
+        float[] background = page.background();
+        int first = page.first() - page.offset();
+        int end = page.end() - page.offset();
+        if (rays > 1) {
+            sheaves(page.walks(), background, first, end);
+        } else if (background == null) {
+            lines(page.walks(), first, end);
         } else {
-            sheaves(page);
+            lines(page.walks(), background, first, end);
         }
     }
 
@@ -71,10 +77,25 @@ final class Visit {
         product = means;
     }
 
-    private void sheaves(EventPage page) {
-        Walks walks = page.walks();
-        float[] background = page.background();
-        for (int event = page.first() - page.offset(); event < page.end() - page.offset(); event++) {
+    private void lines(Walks walks, float[] background, int first, int end) {
+        double logs = sum;
+        double means = product;
+        for (int k = first; k < end; k++) {
+            joseph.aim(walks, k);
+            float mean = background[k] + joseph.forward(image);
+            joseph.back(1 / mean, accumulator);
+            means *= mean;
+            if (!(means > SMALL && means < LARGE)) {
+                logs += Math.log(means);
+                means = 1;
+            }
+        }
+        sum = logs;
+        product = means;
+    }
+
+    private void sheaves(Walks walks, float @Nullable [] background, int first, int end) {
+        for (int event = first; event < end; event++) {
             float mean = background == null ? 0 : background[event];
             for (int k = event * rays; k < (event + 1) * rays; k++) {
                 joseph.aim(walks, k);

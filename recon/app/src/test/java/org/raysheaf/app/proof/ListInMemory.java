@@ -1,6 +1,5 @@
 package org.raysheaf.app.proof;
 
-import java.util.Arrays;
 import java.util.Objects;
 import java.util.Set;
 import org.jspecify.annotations.Nullable;
@@ -13,9 +12,7 @@ import org.raysheaf.geometry.event.ListHeader;
 /** A list of pairs that never touches a disk. */
 final class ListInMemory implements EventSink, EventSource {
     private @Nullable ListHeader header;
-    private int[] a = new int[1024];
-    private int[] b = new int[1024];
-    private int size;
+    private @Nullable EventBlock events;
 
     /** Ends the writing. */
     void complete(ListHeader finalHeader) {
@@ -24,14 +21,14 @@ final class ListInMemory implements EventSink, EventSource {
 
     @Override
     public void accept(EventBlock block) {
-        if (size + block.size() > a.length) {
-            int room = Math.max(2 * a.length, size + block.size());
-            a = Arrays.copyOf(a, room);
-            b = Arrays.copyOf(b, room);
-        }
-        System.arraycopy(block.ints(Attribute.ELEMENT_A), 0, a, size, block.size());
-        System.arraycopy(block.ints(Attribute.ELEMENT_B), 0, b, size, block.size());
-        size += block.size();
+        EventBlock before = events == null ? new EventBlock(block.attributes(), 1 << 16) : events;
+        EventBlock roomy = before.withRoomFor(before.size() + block.size());
+        roomy.append(block, 0, block.size());
+        events = roomy;
+    }
+
+    private EventBlock all() {
+        return Objects.requireNonNull(events, "no event was written");
     }
 
     @Override
@@ -41,12 +38,12 @@ final class ListInMemory implements EventSink, EventSource {
 
     @Override
     public Set<Attribute> attributes() {
-        return Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B);
+        return all().attributes();
     }
 
     @Override
     public long events() {
-        return size;
+        return all().size();
     }
 
     @Override
@@ -55,10 +52,12 @@ final class ListInMemory implements EventSink, EventSource {
             private int next;
 
             @Override
+            @SuppressWarnings("SuspiciousSystemArraycopy") // columns of one attribute are arrays of one type
             public boolean next(EventBlock block) {
-                int count = Math.min(block.capacity(), size - next);
-                System.arraycopy(a, next, block.ints(Attribute.ELEMENT_A), 0, count);
-                System.arraycopy(b, next, block.ints(Attribute.ELEMENT_B), 0, count);
+                int count = Math.min(block.capacity(), all().size() - next);
+                for (Attribute attribute : block.attributes()) {
+                    System.arraycopy(all().column(attribute), next, block.column(attribute), 0, count);
+                }
                 block.resize(count);
                 next += count;
                 return count > 0;

@@ -8,6 +8,7 @@ import org.raysheaf.engine.EstimationSettings;
 import org.raysheaf.engine.Estimator;
 import org.raysheaf.engine.FieldOfView;
 import org.raysheaf.engine.PassListener;
+import org.raysheaf.engine.SampledSensitivity;
 import org.raysheaf.engine.Sensitivity;
 import org.raysheaf.engine.ray.EventBackground;
 import org.raysheaf.engine.ray.EventLoader;
@@ -15,8 +16,10 @@ import org.raysheaf.engine.ray.EventSelection;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.detector.MonolithicBlock;
 import org.raysheaf.geometry.detector.PairRule;
 import org.raysheaf.geometry.detector.Placement;
+import org.raysheaf.geometry.detector.Readout;
 import org.raysheaf.geometry.detector.SystemDescription;
 import org.raysheaf.geometry.event.ListHeader;
 import org.raysheaf.geometry.event.ListKind;
@@ -31,6 +34,7 @@ import org.raysheaf.geometry.phantom.PhantomPart;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.solid.Cylinder;
 import org.raysheaf.transport.Acquisition;
 import org.raysheaf.transport.Physics;
@@ -40,10 +44,15 @@ import org.raysheaf.transport.Simulation;
 final class UniformCylinder {
     static final double RADIUS_MM = 18;
     static final double LENGTH_MM = 44;
+    /** Fits into the field of view of slabs(). */
+    static final double SHORT_MM = 32;
+
     static final double TRUTH_BQ_PER_ML = 500;
 
     private final DetectorSystem system;
     private final ForkJoinPool pool;
+    private final double viewRadiusMm;
+    private final double lengthMm;
     private final Image sensitivity;
     private final CoincidenceSheaves sheaves;
 
@@ -51,33 +60,94 @@ final class UniformCylinder {
     static UniformCylinder heron12(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
         CrystalBlock tile = new CrystalBlock(
                 "tile", 11, 11, 1, new Vector3(1.85, 1.85, depthMm), new Vector3(1.7, 1.7, depthMm), "crystal");
-        return new UniformCylinder(attenuationLengthMm, tile, Grid.centred(63, 63, 67, 0.925), pool);
+        return new UniformCylinder(
+                rings(attenuationLengthMm, tile), LENGTH_MM, Positions.ONE_RAY, Grid.centred(63, 63, 67, 0.925), pool);
     }
 
     /** The same rings with a tenth of the crystals, for a quick look. */
     static UniformCylinder coarse(double attenuationLengthMm, double depthMm, ForkJoinPool pool) {
         CrystalBlock tile = new CrystalBlock(
                 "tile", 4, 4, 1, new Vector3(5.1, 5.1, depthMm), new Vector3(4.8, 4.8, depthMm), "crystal");
-        return new UniformCylinder(attenuationLengthMm, tile, Grid.centred(29, 29, 31, 2), pool);
+        return new UniformCylinder(
+                rings(attenuationLengthMm, tile), LENGTH_MM, Positions.ONE_RAY, Grid.centred(29, 29, 31, 2), pool);
     }
 
-    private UniformCylinder(double attenuationLengthMm, CrystalBlock tile, Grid grid, ForkJoinPool pool) {
-        this.pool = pool;
-        system = new DetectorSystem(new SystemDescription(
+    /** The crystals of heron-12 with a measured depth. */
+    static UniformCylinder withDepth(double depthFwhmMm, int rays, ForkJoinPool pool) {
+        Readout ideal = Readout.IDEAL;
+        CrystalBlock tile = new CrystalBlock(
+                "tile",
+                11,
+                11,
+                1,
+                new Vector3(1.85, 1.85, 13),
+                new Vector3(1.7, 1.7, 13),
+                "crystal",
+                new Readout(
+                        ideal.channel(),
+                        ideal.decoding(),
+                        0,
+                        depthFwhmMm,
+                        0,
+                        0.5,
+                        0,
+                        0,
+                        1,
+                        0,
+                        0,
+                        ideal.deadTime(),
+                        0,
+                        null,
+                        false));
+        return new UniformCylinder(
+                rings(12.2, tile), LENGTH_MM, new Positions(rays, true, true), Grid.centred(63, 63, 67, 0.925), pool);
+    }
+
+    /** A ring of eight blocks of one piece, like owl-slabs of the sample data, in cells of some size. */
+    static UniformCylinder slabs(Vector3 cellMm, int rays, Grid grid, long mostSheaves, ForkJoinPool pool) {
+        MonolithicBlock slab = new MonolithicBlock(
+                "slab", new Vector3(30, 48, 12), cellMm, "crystal", new Vector3(0.6, 0.6, 1.2), Readout.IDEAL);
+        DetectorSystem system = new DetectorSystem(new SystemDescription(
+                "slabs",
+                new org.raysheaf.geometry.detector.FieldOfView(25, 40),
+                new PairRule(2),
+                List.of(new Material("crystal", 12.2)),
+                List.of(slab),
+                List.of(new Placement.Rings("slab", 8, 38, 0, List.of(0.0)))));
+        return new UniformCylinder(system, SHORT_MM, new Positions(rays, true, true), grid, mostSheaves, pool);
+    }
+
+    private static DetectorSystem rings(double attenuationLengthMm, CrystalBlock tile) {
+        return new DetectorSystem(new SystemDescription(
                 "rings",
                 new org.raysheaf.geometry.detector.FieldOfView(29, 62),
                 new PairRule(3),
                 List.of(new Material("crystal", attenuationLengthMm)),
                 List.of(tile),
                 List.of(new Placement.Rings("tile", 12, 42, 0, List.of(-20.8, 0.0, 20.8)))));
-        sheaves = new CoincidenceSheaves(ElementResponse.tabulate(system, pool, Progress.SILENT));
-        sensitivity = Sensitivity.of(sheaves, grid, pool, Progress.SILENT);
+    }
+
+    private UniformCylinder(DetectorSystem system, double lengthMm, Positions positions, Grid grid, ForkJoinPool pool) {
+        this.pool = pool;
+        this.system = system;
+        this.lengthMm = lengthMm;
+        viewRadiusMm = system.fieldOfView().radiusMm();
+        sheaves = new CoincidenceSheaves(ElementResponse.tabulate(system, pool, Progress.SILENT)).locating(positions);
+        sensitivity = sheaves.continuous()
+                ? sampled(grid, mostSheaves)
+                : Sensitivity.of(sheaves, grid, pool, Progress.SILENT);
+    }
+
+    private Image sampled(Grid grid, long mostSheaves) {
+        SampledSensitivity.Stop stop = new SampledSensitivity.Stop(0.01, mostSheaves);
+        return SampledSensitivity.of(sheaves.sampler(1, 0), grid, system.fieldOfView(), stop, pool, Progress.SILENT)
+                .mean();
     }
 
     ListInMemory record(int events) throws IOException {
         PhantomPart cylinder = new PhantomPart(
                 "cylinder",
-                new Cylinder(RADIUS_MM, LENGTH_MM),
+                new Cylinder(RADIUS_MM, lengthMm),
                 Vector3.ZERO,
                 Vector3.ZERO,
                 "vacuum",
@@ -111,7 +181,7 @@ final class UniformCylinder {
         for (int j = 0; j < counts.values().length; j++) {
             counts.values()[j] *= (float) header.pairsPerBqPerMlAndMm3();
         }
-        Image support = FieldOfView.support(counts, FieldOfView.cylinder(29));
+        Image support = FieldOfView.support(counts, FieldOfView.cylinder(viewRadiusMm));
         EventStore store = EventLoader.load(
                 list, sheaves, support, EventSelection.ALL, 1, EventBackground.NONE, pool, Progress.SILENT);
         Image image = new Estimator(store, counts, EstimationSettings.mlem(passes), pool)
