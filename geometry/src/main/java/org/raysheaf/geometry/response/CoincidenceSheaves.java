@@ -197,12 +197,12 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
         if (positions.rays() == 1) {
-            visit(events, tally, (a, b, line) -> PairCaster.append(out, line, 1));
+            each(events, measured.of(events), false, tally, (i, a, b, line) -> PairCaster.append(out, line, 1));
             return;
         }
         PairRays rays = new PairRays(response, frames, strata);
         MeasuredPoints.Events found = measured.of(events);
-        each(events, found, tally, (i, a, b, line) -> {
+        each(events, found, false, tally, (i, a, b, line) -> {
             rays.aim(a, b, line);
             found.blur(i, a, b, rays);
             rays.append(out, 1);
@@ -218,7 +218,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @param visitor hears of every usable one
      */
     public void visit(EventBlock events, EventTally tally, PairVisitor visitor) {
-        each(events, measured.of(events), tally, (i, a, b, line) -> visitor.pair(a, b, line));
+        each(events, measured.of(events), true, tally, (i, a, b, line) -> visitor.pair(a, b, line));
     }
 
     /** Hears of usable events by their number in the block. */
@@ -226,7 +226,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         void event(int i, int a, int b, LineOfResponse line);
     }
 
-    private void each(EventBlock events, MeasuredPoints.Events found, EventTally tally, EventVisitor visitor) {
+    private void each(
+            EventBlock events, MeasuredPoints.Events found, boolean etendue, EventTally tally, EventVisitor visitor) {
         PairLines maker = lines.twin();
         LineOfResponse line = new LineOfResponse();
         int[] a = events.ints(Attribute.ELEMENT_A);
@@ -241,7 +242,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
             } else if (silent[a[i]] || silent[b[i]]) {
                 tally.setAside(EventTally.Reason.SILENT_ELEMENT);
-            } else if (!found.find(i, a[i], b[i], maker, line)) {
+            } else if (!found.find(i, a[i], b[i], maker, line, etendue)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
                 visitor.event(i, a[i], b[i], line);

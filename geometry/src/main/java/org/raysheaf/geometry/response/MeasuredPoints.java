@@ -133,14 +133,23 @@ final class MeasuredPoints {
             this.endB = endB;
         }
 
-        /** Finds the line of an event: that of its pair, its ends where they were measured. False if it passes the field of view. */
-        boolean find(int event, int a, int b, PairLines maker, LineOfResponse line) {
+        /**
+         * Finds the line of an event: that of its pair, its ends where they were measured.
+         *
+         * @param etendue whether the étendue of the pair is wanted
+         * @return false if the line passes the field of view
+         */
+        boolean find(int event, int a, int b, PairLines maker, LineOfResponse line, boolean etendue) {
             boolean moveA = endA.measures(a);
             boolean moveB = endB.measures(b);
-            if (!moveA && !moveB) {
+            if (etendue && !moveA && !moveB) {
                 return maker.line(a, b, line);
             }
-            maker.lineAnywhere(a, b, line);
+            if (etendue) {
+                maker.lineAnywhere(a, b, line);
+            } else {
+                maker.ends(a, b, line);
+            }
             if (moveA) {
                 endA.move(event, a, line, true);
             }

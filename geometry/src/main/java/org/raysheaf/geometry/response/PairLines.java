@@ -26,11 +26,17 @@ public final class PairLines {
 
     private static final int MOST_PARTS = 8;
 
+    /** Systems of so many elements, usually large ones, keep the étendues that took cutting: 16 MB at most. */
+    private static final int FEW_ELEMENTS = 2000;
+
     private final ElementResponse response;
     private final double viewRadius;
     private final double viewHalfLength;
     private final double marginMm;
     private final double[] frames;
+    /** Étendues of pairs that had to be cut, 0 where none is known yet, shared by all twins; empty if there are too many elements. */
+    private final double[] known;
+
     private final Response near = new Response();
     private final Response far = new Response();
 
@@ -55,6 +61,15 @@ public final class PairLines {
      * @param marginMm by how much the field of view is widened on all sides (mm), at least 0
      */
     PairLines(ElementResponse response, double[] frames, double marginMm) {
+        this(response, frames, marginMm, new double[room(response.system().elements())]);
+    }
+
+    private static int room(int elements) {
+        return elements <= FEW_ELEMENTS ? elements * (elements + 1) / 2 : 0;
+    }
+
+    private PairLines(ElementResponse response, double[] frames, double marginMm, double[] known) {
+        this.known = known;
         this.response = response;
         this.frames = frames;
         this.marginMm = marginMm;
@@ -69,7 +84,7 @@ public final class PairLines {
      * @return a new maker
      */
     public PairLines twin() {
-        return new PairLines(response, frames, marginMm);
+        return new PairLines(response, frames, marginMm, known);
     }
 
     /**
@@ -85,6 +100,17 @@ public final class PairLines {
         boolean crosses = crossesView(line);
         line.etendue = crosses ? refined(a, b, product, line.lengthMm()) : 0;
         return crosses;
+    }
+
+    /**
+     * Makes the line of a pair without its étendue, which is left as it was.
+     *
+     * @param a one element
+     * @param b the other element
+     * @param line receives the ends
+     */
+    void ends(int a, int b, LineOfResponse line) {
+        whole(a, b, 0, 0, 0, 0, line);
     }
 
     /**
@@ -104,7 +130,21 @@ public final class PairLines {
                 Math.max(frames[FRAME * a + HALF_U], frames[FRAME * a + HALF_V]),
                 Math.max(frames[FRAME * b + HALF_U], frames[FRAME * b + HALF_V]));
         double ratio = 2 * width / lengthMm;
-        return ratio * ratio > NEAR ? divided(a, b, product) : product;
+        return ratio * ratio > NEAR ? known(a, b, product) : product;
+    }
+
+    /** Cutting takes up to some 0.2 ms, and events name the same few large elements again and again. */
+    private double known(int a, int b, double product) {
+        if (known.length == 0) {
+            return divided(a, b, product);
+        }
+        int at = Math.max(a, b) * (Math.max(a, b) + 1) / 2 + Math.min(a, b);
+        double value = known[at];
+        if (value == 0) {
+            value = divided(a, b, product);
+            known[at] = value; // whichever thread comes first: all find the same
+        }
+        return value;
     }
 
     /**

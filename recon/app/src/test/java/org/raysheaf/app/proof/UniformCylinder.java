@@ -128,6 +128,16 @@ final class UniformCylinder {
     }
 
     private UniformCylinder(DetectorSystem system, double lengthMm, Positions positions, Grid grid, ForkJoinPool pool) {
+        this(system, lengthMm, positions, grid, Long.MAX_VALUE, pool);
+    }
+
+    private UniformCylinder(
+            DetectorSystem system,
+            double lengthMm,
+            Positions positions,
+            Grid grid,
+            long mostSheaves,
+            ForkJoinPool pool) {
         this.pool = pool;
         this.system = system;
         this.lengthMm = lengthMm;
