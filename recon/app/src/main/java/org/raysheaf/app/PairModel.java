@@ -37,7 +37,11 @@ record PairModel(
     private static final int SCATTER_POINTS = 500;
 
     static PairModel of(
-            EventSource list, Systems systems, Corrections corrections, @Nullable Attenuation attenuation, Applied applied)
+            EventSource list,
+            Systems systems,
+            Corrections corrections,
+            @Nullable Attenuation attenuation,
+            Applied applied)
             throws IOException {
         ListHeader header = list.header();
         applied.add("live_fraction", header.liveTimeS() / header.durationS());
@@ -127,8 +131,8 @@ record PairModel(
         return unspoilt * piled;
     }
 
-    private static @Nullable Randoms randoms(EventSource list, Systems systems, Corrections corrections, Applied applied)
-            throws IOException {
+    private static @Nullable Randoms randoms(
+            EventSource list, Systems systems, Corrections corrections, Applied applied) throws IOException {
         Corrections.RandomsFrom from = corrections.randoms();
         PairingRecord pairing = list.header().pairing();
         if (from == Corrections.RandomsFrom.AUTO) {
