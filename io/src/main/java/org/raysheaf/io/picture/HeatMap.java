@@ -62,8 +62,9 @@ public final class HeatMap {
             if (!Double.isNaN(value)) {
                 squares += value * value;
                 known++;
+                int row = i / n;
                 canvas.fill(
-                        new Rectangle2D.Double(x + i % n * cell, TOP + i / n * cell, cell, cell), colour(value / most));
+                        new Rectangle2D.Double(x + i % n * cell, TOP + row * cell, cell, cell), colour(value / most));
             }
         }
         String rms = String.format(Locale.ROOT, "%s, rms %.2f", panel.title(), Math.sqrt(squares / known));
