@@ -99,6 +99,17 @@ public final class Estimator {
     }
 
     /**
+     * What the estimate makes as large as it can, by a visit to all events: the log-likelihood less the penalty of the prior, if there is one, up
+     * to terms that do not depend on the image.
+     *
+     * @param image activity concentration (Bq/mL) on the store's grid, above 0 wherever there may be activity
+     * @return the objective (counts)
+     */
+    public double objective(Image image) {
+        return objective.value(likelihood.lattice().fromImage(image));
+    }
+
+    /**
      * Makes all passes, without checkpoints.
      *
      * @param listener hears of every pass
