@@ -55,14 +55,14 @@ public final class ConvergenceBench implements Callable<Integer> {
     private int passes = 12;
 
     @Option(names = "--methods", split = ",", paramLabel = "METHOD:SUBSETS", description = "What to run.")
-    private List<String> methods = List.of("variance_reduced:16", "variance_reduced:32", "bsrem:16", "em:16", "em:1");
+    private List<String> methods = List.of("variance_reduced:32", "bsrem:32", "em:32", "em:1");
 
     @Option(
             names = "--end",
             split = ",",
             paramLabel = "METHOD:SUBSETS:PASSES",
             description = "What makes the converged image; if there are two, their distance is printed too.")
-    private List<String> ends = List.of("variance_reduced:16:150", "variance_reduced:5:300");
+    private List<String> ends = List.of("variance_reduced:32:100", "bsrem:32:300");
 
     @Option(names = "--threads", description = "Threads; by default all processors.")
     private int threads = Runtime.getRuntime().availableProcessors();

@@ -54,7 +54,7 @@ public record EstimationSettings(
                         prior == null || method != Method.EM,
                         "method",
                         "expected variance_reduced or bsrem, since there is a prior, found em; add method:"
-                                + " variance_reduced and subsets: 16, or leave out prior")
+                                + " variance_reduced and subsets: 32, or leave out prior")
                 .rule(
                         prior != null || method == Method.EM,
                         "prior",
@@ -65,7 +65,7 @@ public record EstimationSettings(
                         method != Method.VARIANCE_REDUCED || subsets > 1,
                         "subsets",
                         "expected at least 2 subsets for method: variance_reduced, which goes from one to the next,"
-                                + " found 1; 16 suits most lists")
+                                + " found 1; 32 suits most lists")
                 .rule(
                         relaxation == null || method == Method.BSREM,
                         "relaxation",

@@ -41,6 +41,12 @@ final class PenalisedTest {
     /** Bar of the issue: all methods end within this part of the objective's range. */
     private static final double SAME_END = 1e-4;
 
+    /** Slopes that are left, in parts of s: faint voxels of a flat direction are still on their way to 0. */
+    private static final double REST = 3e-3;
+
+    /** Steps that shrink leave more: 1/200 of a full step in the last pass. */
+    private static final double RELAXED_REST = 3e-2;
+
     @AfterAll
     static void stop() {
         POOL.shutdown();
@@ -59,16 +65,18 @@ final class PenalisedTest {
         Arrays.fill(uniform, dense.typical);
         double low = dense.objective(uniform);
         double[] reduced = doubles(run(settings(150, 6, Method.VARIANCE_REDUCED, prior)));
-        double[] relaxed = doubles(run(settings(400, 6, Method.BSREM, prior)));
-        double[] alone = doubles(run(settings(600, 1, Method.BSREM, prior)));
+        double[] relaxed = doubles(
+                run(new EstimationSettings(500, 6, 3, 0, Method.BSREM, prior, new Relaxation(1, 0.4), null, null)));
+        double[] alone = doubles(
+                run(new EstimationSettings(1000, 1, 3, 0, Method.BSREM, prior, new Relaxation(1, 0.002), null, null)));
         double top = dense.objective(reduced);
         assertThat((top - dense.objective(relaxed)) / (top - low)).isBetween(-SAME_END, SAME_END);
         assertThat((top - dense.objective(alone)) / (top - low)).isBetween(-SAME_END, SAME_END);
-        dense.requireConditions(reduced, 2e-4);
-        dense.requireConditions(relaxed, 5e-2);
+        dense.requireConditions(reduced, REST);
+        dense.requireConditions(relaxed, RELAXED_REST);
         // The conditions are not fulfilled by just any image.
         double[] early = doubles(run(settings(2, 6, Method.VARIANCE_REDUCED, prior)));
-        assertThatThrownBy(() -> dense.requireConditions(early, 5e-2)).isInstanceOf(AssertionError.class);
+        assertThatThrownBy(() -> dense.requireConditions(early, RELAXED_REST)).isInstanceOf(AssertionError.class);
     }
 
     /** Φ and its gradient as on paper. */
@@ -99,7 +107,7 @@ final class PenalisedTest {
             return sum;
         }
 
-        /** Karush–Kuhn–Tucker: no slope where x is above its least, none upwards where x is at it; in parts of s. */
+        /** Karush–Kuhn–Tucker: no slope where x is above 0, none upwards where it is 0; slopes in parts of s, x in parts of x̄. */
         void requireConditions(double[] x, double tolerance) {
             double[] gradient = new double[x.length];
             for (double[] row : rows) {
@@ -108,21 +116,17 @@ final class PenalisedTest {
                     gradient[j] += row[j] / mean;
                 }
             }
-            int free = 0;
             for (int j = 0; j < x.length; j++) {
                 double s = SCAN.sensitivity.values()[j];
                 gradient[j] -= s;
                 for (int k = 0; k < x.length; k++) {
                     gradient[j] -= beta * weight(j, k) * pair.slope(x[j], x[k]);
                 }
-                if (x[j] > 1e-3 * typical) {
-                    free++;
-                    assertThat(gradient[j] / s).isCloseTo(0, within(tolerance));
-                } else {
-                    assertThat(gradient[j] / s).isLessThan(tolerance);
-                }
+                // How far a voxel would still go: upwards freely, downwards as far as there is something left.
+                double rise = gradient[j] / s;
+                double residual = rise > 0 ? rise : Math.min(-rise, x[j] / typical);
+                assertThat(residual).isLessThan(tolerance);
             }
-            assertThat(free).isGreaterThan(x.length / 4);
         }
 
         private static double mean(double[] row, double[] x) {
@@ -152,7 +156,8 @@ final class PenalisedTest {
         for (int j = 0; j < doubled.values().length; j++) {
             doubled.values()[j] *= 2;
         }
-        // Twice the sensitivity for as many events: half the activity. Without background that is all; here it weighs a little more.
+        // Twice the sensitivity for as many events: half the activity. Without background that is all; here it weighs a
+        // little more.
         Image half = new Estimator(SCAN.store(6, POOL), doubled, settings, POOL)
                 .run(PassListener.SILENT, Progress.SILENT)
                 .image();
@@ -185,8 +190,7 @@ final class PenalisedTest {
                 }
                 memory.room = 99;
                 Estimate resumed = run(settings, memory, 3);
-                assertThat(resumed.image().values())
-                        .isEqualTo(expected.image().values());
+                assertThat(resumed.image().values()).isEqualTo(expected.image().values());
                 assertThat(resumed.kept()).isEqualTo(expected.kept());
                 assertThat(resumed.passes().get(7).objective())
                         .isEqualTo(expected.passes().get(7).objective());
@@ -278,14 +282,15 @@ final class PenalisedTest {
         assertThatThrownBy(() -> settings(1, 1, Method.VARIANCE_REDUCED, null))
                 .hasMessageContaining("prior: expected a prior")
                 .hasMessageContaining("subsets: expected at least 2 subsets");
-        assertThatThrownBy(() -> new EstimationSettings(
-                        1, 1, 0, 0, Method.EM, null, new Relaxation(1, 1), null, null))
+        assertThatThrownBy(() -> new EstimationSettings(1, 1, 0, 0, Method.EM, null, new Relaxation(1, 1), null, null))
                 .hasMessageContaining("relaxation: expected only with method: bsrem");
         assertThatThrownBy(() -> new Relaxation(0, Double.NaN))
                 .hasMessageContaining("first")
                 .hasMessageContaining("decline");
         assertThatThrownBy(() -> new ChangeStop(Double.NaN)).hasMessageContaining("below");
-        assertThatThrownBy(() -> new HeldOutStop(1, 0)).hasMessageContaining("every").hasMessageContaining("patience");
+        assertThatThrownBy(() -> new HeldOutStop(1, 0))
+                .hasMessageContaining("every")
+                .hasMessageContaining("patience");
         assertThatThrownBy(() -> new StartSettings(null, null)).hasMessageContaining("found neither");
         assertThatThrownBy(() -> new StartSettings("a.nii.gz", 3)).hasMessageContaining("found both");
     }
