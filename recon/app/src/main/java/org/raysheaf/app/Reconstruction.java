@@ -120,21 +120,23 @@ record Reconstruction(
         Estimate estimate(EventSource part, CorrectedModel model, EventSelection selection, String name)
                 throws IOException {
             Progress progress = common.progress();
+            Image start =
+                    new FirstImage(part, model, selection).of(plan.estimation(), base, work.storage(), pool, progress);
             try (EventStore store = EventLoader.load(
                     part,
                     model.sheaves(),
                     model.support(),
                     selection,
-                    plan.estimation().subsets(),
+                    plan.estimation().parts(),
                     model.background(),
                     work.storage(),
                     pool,
                     progress)) {
-                return new Estimator(store, model.counts(), plan.estimation(), pool)
+                return new Estimator(store, model.counts(), start, plan.estimation(), pool)
                         .run(
                                 new PassLines(plan.estimation().passes(), common),
                                 progress,
-                                work.checkpoints(name, key(model, store)));
+                                work.checkpoints(name, key(model, store, start)));
             }
         }
 
@@ -154,12 +156,13 @@ record Reconstruction(
         }
 
         /** Digest of all that an image depends on beside its name: what a checkpoint must have in common with the work that goes on. */
-        private String key(CorrectedModel model, EventStore store) {
+        private String key(CorrectedModel model, EventStore store, @Nullable Image start) {
             return Cache.digest(
                     Raysheaf.version(),
                     list.digest().orElse("no checksums, " + list.events() + " events"),
                     DescriptionWriter.render("reconstruction", plan),
                     Cache.digest(model.counts().values()),
+                    start == null ? "uniform start" : Cache.digest(start.values()),
                     store.events() + " events, " + store.planes() + " planes, " + store.subsets() + " subsets");
         }
     }

@@ -13,7 +13,7 @@ import org.raysheaf.geometry.settings.Default;
  * @param system path of the system, from the description's folder: for a list that carries none, or a sensitivity without a list; if the
  *     list carries one too it must be the same
  * @param grid the voxels
- * @param estimation passes, subsets, lanes, filter
+ * @param estimation method, prior, passes, subsets, lanes, filter
  * @param halves whether to make the images of the odd and of the even events as well
  * @param corrections which corrections to make
  * @param frames parts of the list that get images of their own, or null for none
@@ -62,12 +62,11 @@ record ReconstructionPlan(
 
     /** The same with the number of lanes given on the command line, and halves if asked for there. */
     ReconstructionPlan with(int lanes, boolean wantHalves) {
-        EstimationSettings e = estimation;
         return new ReconstructionPlan(
                 list,
                 system,
                 grid,
-                new EstimationSettings(e.passes(), e.subsets(), lanes > 0 ? lanes : e.lanes(), e.postFilterFwhmMm()),
+                lanes > 0 ? estimation.withLanes(lanes) : estimation,
                 halves || wantHalves,
                 corrections,
                 frames,

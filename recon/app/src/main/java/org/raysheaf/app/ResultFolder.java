@@ -173,6 +173,9 @@ final class ResultFolder {
             results.put("frames", done.frames().stream().map(FrameImage::named).toList());
         }
         results.put("passes", passes(done.whole()));
+        results.put(
+                "kept_pass",
+                Map.of("pass", done.whole().kept(), "reason", done.whole().reason()));
         results.put("lanes", done.whole().lanes());
         results.put("threads", threads);
         results.put("seconds", done.whole().seconds());
@@ -196,6 +199,12 @@ final class ResultFolder {
             Map<String, Object> row = new LinkedHashMap<>();
             row.put("pass", pass.number());
             row.put("log_likelihood", pass.logLikelihood());
+            if (pass.penalty() > 0) {
+                row.put("penalty", pass.penalty());
+            }
+            if (!Double.isNaN(pass.heldOut())) {
+                row.put("held_out_log_likelihood", pass.heldOut());
+            }
             row.put("expected_events", pass.expectedEvents());
             row.put("seconds", pass.seconds());
             passes.add(row);
@@ -218,6 +227,10 @@ final class ResultFolder {
                 done.whole().subsets(),
                 done.whole().postFilterFwhmMm(),
                 UNIT));
+        if (done.plan().estimation().stop() != null) {
+            lines.add("stopped    image after pass " + done.whole().kept() + ": "
+                    + done.whole().reason());
+        }
         lines.addAll(new Accounting(done.whole().tally()).lines());
         lines.addAll(figures.lines());
         for (FrameImage frame : done.frames()) {

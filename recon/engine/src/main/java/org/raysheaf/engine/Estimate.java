@@ -9,6 +9,8 @@ import org.raysheaf.geometry.frame.Image;
  *
  * @param image activity concentration (Bq/mL), after the post-filter if there was one
  * @param passes what each pass did, in order
+ * @param kept number of the pass whose image this is
+ * @param reason why that one, in words
  * @param tally what became of the events of the list
  * @param events events that took part; fewer than the tally's used ones if only the odd or the even ones were selected
  * @param subsets updates per pass
@@ -19,6 +21,8 @@ import org.raysheaf.geometry.frame.Image;
 public record Estimate(
         Image image,
         List<PassReport> passes,
+        int kept,
+        String reason,
         EventTally tally,
         long events,
         int subsets,

@@ -34,6 +34,12 @@ final class Lanes {
         double apply(int first, int last, float[] sums);
     }
 
+    /** Does something with the voxels from first to last − 1 and returns a number to be added up. */
+    @FunctionalInterface
+    interface VoxelRun {
+        double apply(int first, int last);
+    }
+
     /**
      * How many lanes suit a problem. Adding up one more lane costs about as much per voxel as a quarter of a plane costs a ray, so lanes
      * are limited to a few per cent of the work, and to a memory of 1 GiB.
@@ -78,11 +84,7 @@ final class Lanes {
      */
     double collect(VoxelWork work) {
         float[] sums = accumulators[0];
-        int pieces = (sums.length + PIECE - 1) / PIECE;
-        double[] partial = new double[pieces];
-        Tasks.forEach(pool, pieces, piece -> {
-            int first = piece * PIECE;
-            int last = Math.min(sums.length, first + PIECE);
+        return voxels((first, last) -> {
             for (int lane = 1; lane < accumulators.length; lane++) {
                 float[] other = accumulators[lane];
                 for (int i = first; i < last; i++) {
@@ -90,8 +92,25 @@ final class Lanes {
                 }
                 Arrays.fill(other, first, last, 0);
             }
-            partial[piece] = work.apply(first, last, sums);
+            double part = work.apply(first, last, sums);
             Arrays.fill(sums, first, last, 0);
+            return part;
+        });
+    }
+
+    /**
+     * Goes through all voxels, in parallel over runs of them.
+     *
+     * @param work is given runs of voxels; may be called by several threads
+     * @return the sum of what the work returned, in the order of the voxels
+     */
+    double voxels(VoxelRun work) {
+        int size = accumulators[0].length;
+        int pieces = (size + PIECE - 1) / PIECE;
+        double[] partial = new double[pieces];
+        Tasks.forEach(pool, pieces, piece -> {
+            int first = piece * PIECE;
+            partial[piece] = work.apply(first, Math.min(size, first + PIECE));
         });
         double total = 0;
         for (double part : partial) {

@@ -1,6 +1,9 @@
 package org.raysheaf.engine;
 
+import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
+import java.util.function.IntPredicate;
+import java.util.stream.IntStream;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.Lattice;
 import org.raysheaf.geometry.frame.Image;
@@ -18,13 +21,22 @@ import org.raysheaf.geometry.port.Progress;
  * Bq/mL) and the background b_e/c_e. Sums over events can be had subset by subset; a subset with the part φ of all events stands for φ of
  * the sensitivity. Values are on the lattice, with its border.
  *
+ * <p>Events may be kept out of all subsets, to be asked later how well an image explains them; sums, φ and sensitivity are then those of the
+ * others.
+ *
  * <p>Used by one thread, works on the threads of the pool; the result never depends on how many there are.
  */
 final class Likelihood {
     private final EventStore store;
     private final float[] sensitivity;
     private final Lanes lanes;
+    /** Of each part into which the store has dealt the events, where the runs of the lanes begin. */
     private final int[][] runs;
+    /** The parts that make a subset. */
+    private final int[][] members;
+
+    private final int[] heldOutParts;
+    private final long events;
     private Progress progress = Progress.SILENT;
     private String stage = "";
 
@@ -38,13 +50,33 @@ final class Likelihood {
      * @throws IllegalArgumentException if the sensitivity has another shape, or if voxels of the support have none
      */
     Likelihood(EventStore store, Image sensitivity, int lanes, ForkJoinPool pool) {
+        this(store, sensitivity, store.subsets(), 0, lanes, pool);
+    }
+
+    /**
+     * Prepares the sums, with events kept out.
+     *
+     * @param subsets in how many subsets to take the parts of the store
+     * @param heldOutEvery k: part k − 1, 2k − 1 … of the store, and so every k-th event, is kept out; 0 for none
+     */
+    Likelihood(EventStore store, Image sensitivity, int subsets, int heldOutEvery, int lanes, ForkJoinPool pool) {
         this.store = store;
         this.sensitivity = store.lattice().fromImage(sensitivity);
+        heldOutParts = parts(part -> heldOut(part, heldOutEvery));
+        int[] used = parts(part -> !heldOut(part, heldOutEvery));
+        members = new int[subsets][];
+        for (int subset = 0; subset < subsets; subset++) {
+            int nth = subset;
+            members[subset] = IntStream.range(0, used.length)
+                    .filter(i -> i % subsets == nth)
+                    .map(i -> used[i])
+                    .toArray();
+        }
+        events = count(used);
         requireSeen();
         int count = lanes > 0
                 ? lanes
-                : Lanes.suited(
-                        store.planes() / store.subsets(), lattice().grid().voxels());
+                : Lanes.suited(store.planes() / subsets, lattice().grid().voxels());
         this.lanes = new Lanes(count, lattice(), pool);
         this.runs = new int[store.subsets()][];
         for (int subset = 0; subset < runs.length; subset++) {
@@ -54,7 +86,7 @@ final class Likelihood {
 
     /** A store that holds only some of the events stands for as much less exposure. */
     private void requireSeen() {
-        float share = (float) store.share();
+        float share = (float) (store.share() * events / store.events());
         for (int j = 0; j < sensitivity.length; j++) {
             sensitivity[j] *= share;
             if (support()[j] > 0 && !(sensitivity[j] > 0 && sensitivity[j] < Float.POSITIVE_INFINITY)) {
@@ -62,6 +94,20 @@ final class Likelihood {
                         + sensitivity[j] + "; make the support with FieldOfView.support");
             }
         }
+    }
+
+    private static boolean heldOut(int part, int every) {
+        return every > 0 && part % every == every - 1;
+    }
+
+    private int[] parts(IntPredicate wanted) {
+        return IntStream.range(0, store.subsets()).filter(wanted).toArray();
+    }
+
+    private long count(int[] parts) {
+        return Arrays.stream(parts)
+                .mapToLong(part -> store.start(part + 1) - store.start(part))
+                .sum();
     }
 
     /** Whom to tell of the events visited, and in which stage of the work they are. */
@@ -75,7 +121,12 @@ final class Likelihood {
     }
 
     int subsets() {
-        return runs.length;
+        return members.length;
+    }
+
+    /** Events in all subsets; those kept out do not count. */
+    long events() {
+        return events;
     }
 
     int laneCount() {
@@ -84,7 +135,7 @@ final class Likelihood {
 
     /** The part φ of all events that is in a subset. */
     double part(int subset) {
-        return (store.start(subset + 1) - store.start(subset)) / (double) store.events();
+        return count(members[subset]) / (double) events;
     }
 
     /** s, on the lattice (counts per Bq/mL); shared, not to be written. */
@@ -114,12 +165,49 @@ final class Likelihood {
      * @return Σ_e ln q_e over the subset
      */
     double visit(int subset, float[] image) {
-        int[] run = runs[subset];
         progress.remark(subsets() == 1 ? stage : stage + ", subset " + (subset + 1) + " of " + subsets());
+        return sum(members[subset], image, true);
+    }
+
+    /**
+     * How well an image explains the events, without a thought for how to make it better.
+     *
+     * @param image x on the lattice
+     * @return L(x) of all events in subsets
+     */
+    double value(float[] image) {
+        double sum = -expectedEvents(image);
+        for (int[] parts : members) {
+            sum += sum(parts, image, false);
+        }
+        return sum;
+    }
+
+    /**
+     * How well an image explains the events that were kept out.
+     *
+     * @param image x on the lattice
+     * @return L(x) of those events, with as much of the sensitivity as they stand for; NaN if there are none
+     */
+    double heldOut(float[] image) {
+        if (heldOutParts.length == 0) {
+            return Double.NaN;
+        }
+        progress.remark(stage + ", events held out");
+        double share = count(heldOutParts) / (double) events;
+        return sum(heldOutParts, image, false) - share * expectedEvents(image);
+    }
+
+    /** Σ_e ln q_e over parts of the store. */
+    private double sum(int[] parts, float[] image, boolean back) {
         double[] logSums = new double[lanes.count()];
         lanes.each(lane -> {
-            logSums[lane] = Visit.events(store, run[lane], run[lane + 1], image, lanes.accumulator(lane));
-            progress.advance(run[lane + 1] - run[lane]);
+            for (int part : parts) {
+                int first = runs[part][lane];
+                int end = runs[part][lane + 1];
+                logSums[lane] += Visit.events(store, first, end, image, back ? lanes.accumulator(lane) : null);
+                progress.advance(end - first);
+            }
         });
         double sum = 0;
         for (double logSum : logSums) {
@@ -136,5 +224,15 @@ final class Likelihood {
      */
     double collect(Lanes.VoxelWork work) {
         return lanes.collect(work);
+    }
+
+    /**
+     * Goes through all voxels of the lattice, in parallel over runs of them.
+     *
+     * @param work is given runs of voxels
+     * @return the sum of what the work returned, in the order of the voxels
+     */
+    double voxels(Lanes.VoxelRun work) {
+        return lanes.voxels(work);
     }
 }

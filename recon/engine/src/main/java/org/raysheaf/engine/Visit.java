@@ -19,12 +19,12 @@ final class Visit {
     private final Joseph joseph;
     private final int rays;
     private final float[] image;
-    private final float[] accumulator;
+    private final float @Nullable [] accumulator;
     // Σ ln q is kept as a sum and a product, over all pages of the run, so that pages leave no trace in the last bits.
     private double sum;
     private double product = 1;
 
-    private Visit(EventStore store, float[] image, float[] accumulator) {
+    private Visit(EventStore store, float[] image, float @Nullable [] accumulator) {
         this.joseph = new Joseph(store.lattice());
         this.rays = store.raysPerEvent();
         this.image = image;
@@ -38,10 +38,10 @@ final class Visit {
      * @param from first event of the run
      * @param to after the last event
      * @param image x on the lattice
-     * @param accumulator added to
+     * @param accumulator added to; null if only the sum is wanted
      * @return Σ_e ln q_e
      */
-    static double events(EventStore store, int from, int to, float[] image, float[] accumulator) {
+    static double events(EventStore store, int from, int to, float[] image, float @Nullable [] accumulator) {
         Visit visit = new Visit(store, image, accumulator);
         store.each(from, to, visit::page);
         return visit.sum + Math.log(visit.product);
@@ -66,7 +66,9 @@ final class Visit {
         for (int k = first; k < end; k++) {
             joseph.aim(walks, k);
             float mean = joseph.forward(image);
-            joseph.back(1 / mean, accumulator);
+            if (accumulator != null) {
+                joseph.back(1 / mean, accumulator);
+            }
             means *= mean;
             if (!(means > SMALL && means < LARGE)) {
                 logs += Math.log(means);
@@ -102,7 +104,7 @@ final class Visit {
                 mean += joseph.forward(image);
             }
             float ratio = 1 / mean;
-            for (int k = event * rays; k < (event + 1) * rays; k++) {
+            for (int k = event * rays; accumulator != null && k < (event + 1) * rays; k++) {
                 joseph.aim(walks, k);
                 joseph.back(ratio, accumulator);
             }
