@@ -53,39 +53,22 @@ final class Visit {
         int end = page.end() - page.offset();
         if (rays > 1) {
             sheaves(page.walks(), background, first, end);
-        } else if (background == null) {
-            lines(page.walks(), first, end);
         } else {
             lines(page.walks(), background, first, end);
         }
     }
 
-    private void lines(Walks walks, int first, int end) {
+    /** The rays of events that have one each: a ray is aimed once, and goes there and back. */
+    private void lines(Walks walks, float @Nullable [] background, int first, int end) {
+        float[] target = accumulator;
         double logs = sum;
         double means = product;
         for (int k = first; k < end; k++) {
             joseph.aim(walks, k);
-            float mean = joseph.forward(image);
-            if (accumulator != null) {
-                joseph.back(1 / mean, accumulator);
+            float mean = (background == null ? 0 : background[k]) + joseph.forward(image);
+            if (target != null) {
+                joseph.back(1 / mean, target);
             }
-            means *= mean;
-            if (!(means > SMALL && means < LARGE)) {
-                logs += Math.log(means);
-                means = 1;
-            }
-        }
-        sum = logs;
-        product = means;
-    }
-
-    private void lines(Walks walks, float[] background, int first, int end) {
-        double logs = sum;
-        double means = product;
-        for (int k = first; k < end; k++) {
-            joseph.aim(walks, k);
-            float mean = background[k] + joseph.forward(image);
-            joseph.back(1 / mean, accumulator);
             means *= mean;
             if (!(means > SMALL && means < LARGE)) {
                 logs += Math.log(means);
