@@ -146,7 +146,7 @@ public final class ConvergenceBench implements Callable<Integer> {
                     SystemOfList.of(opened.header(), file, described.systemBeside(plan), common, pool, Progress.SILENT);
             ListFile list = opened.withElements(systems.system().elements());
             Grid grid = described.grid().gridFor(systems.system());
-            CorrectedModel model = CorrectedModel.of(list, systems, described.corrections(), plan, grid, common, pool);
+            CorrectedModel model = CorrectedModel.of(list, systems, described, plan, grid, common, pool);
             Phantom parts = Phantoms.read(phantom);
             int[] regions = new int[grid.voxels()];
             for (int x = 0; x < grid.nx(); x++) {

@@ -258,4 +258,43 @@ class ReconstructVerbTest {
         assertThat(reconstruct(folder.resolve("list.h5"), "--replace").exit()).isZero();
         assertThat(result().at("/activity/noise/reason").asText()).contains("--halves");
     }
+
+    @Test
+    void aPriorAStartAndAStopRuleComeFromTheDescriptionAndAreReported() throws IOException {
+        list("list.h5", SYSTEM, 3000, 1);
+        String prior = "method: variance-reduced, subsets: 4, prior: {kind: relative_difference, strength: 0.1}";
+        Path first = text(
+                "first.yaml",
+                "raysheaf: reconstruction/1\nlist: list.h5\nestimation: {passes: 30, " + prior
+                        + ", stop: {kind: held_out, every: 5}, start: {coarse_passes: 2}}\n");
+        assertThat(reconstruct(first).exit()).isZero();
+        JsonNode passes = result().get("passes");
+        int kept = result().get("kept_pass").get("pass").asInt();
+        assertThat(kept).isBetween(1, passes.size());
+        assertThat(result().get("kept_pass").get("reason").asText()).contains("held-out events best");
+        for (JsonNode pass : passes) {
+            assertThat(pass.get("held_out_log_likelihood").asDouble())
+                    .isLessThanOrEqualTo(
+                            passes.get(kept - 1).get("held_out_log_likelihood").asDouble());
+            assertThat(pass.get("penalty").asDouble()).isPositive();
+        }
+        double total = result().get("activity").get("total_kBq").asDouble();
+
+        Files.move(out.resolve("activity.nii.gz"), folder.resolve("before.nii.gz"));
+        Path second = text(
+                "second.yaml",
+                "raysheaf: reconstruction/1\nlist: list.h5\nestimation: {passes: 9, " + prior
+                        + ", stop: {kind: change, below: 0.5}, start: {volume: before.nii.gz}}\n");
+        assertThat(reconstruct(second, "--replace").exit()).isZero();
+        assertThat(result().get("activity").get("total_kBq").asDouble() / total).isBetween(0.9, 1.1);
+        assertThat(result().get("passes").size()).isLessThan(9);
+        assertThat(result().get("passes").get(0).has("held_out_log_likelihood")).isFalse();
+
+        Path wrong = text(
+                "wrong.yaml",
+                "raysheaf: reconstruction/1\nlist: list.h5\nestimation: {prior: {kind: quadratic, strength: 1}}\n");
+        Outcome refused = reconstruct(wrong, "--replace");
+        assertThat(refused.exit()).isEqualTo(1);
+        assertThat(refused.err()).contains("add method: variance_reduced and subsets: 32");
+    }
 }
