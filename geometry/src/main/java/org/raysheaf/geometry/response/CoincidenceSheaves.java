@@ -5,6 +5,7 @@ import java.util.Collections;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.MonolithicBlock;
 import org.raysheaf.geometry.detector.PlacedBlock;
@@ -16,7 +17,7 @@ import org.raysheaf.geometry.sheaf.SheafCatalogue;
 import org.raysheaf.geometry.sheaf.SheafMaker;
 
 /**
- * Coincident pairs of crystals as sheaves of one ray: the line between the mean interaction points. The catalogue holds every pair that the
+ * Coincident pairs of crystals as sheaves of one ray: the line between the mean interaction points, weighted along it where times are used. The catalogue holds every pair that the
  * system admits, one part per pair of blocks. An event and the catalogue entry of the same pair have the same ray, so a pair that the
  * sensitivity leaves out is set aside in the list as well.
  */
@@ -32,6 +33,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     private final List<PlacedBlock[]> blockPairs;
     private final PairFactor.Maker factors;
     private final boolean[] silent;
+    private final @Nullable FlightTimes times;
 
     /**
      * The sheaves of a system.
@@ -44,7 +46,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 new PairLines(response),
                 admitted(response.system()),
                 () -> (a, b, line) -> 1,
-                new boolean[response.system().elements()]);
+                new boolean[response.system().elements()],
+                null);
     }
 
     private CoincidenceSheaves(
@@ -52,12 +55,14 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             PairLines lines,
             List<PlacedBlock[]> blockPairs,
             PairFactor.Maker factors,
-            boolean[] silent) {
+            boolean[] silent,
+            @Nullable FlightTimes times) {
         this.system = system;
         this.lines = lines;
         this.blockPairs = blockPairs;
         this.factors = factors;
         this.silent = silent;
+        this.times = times;
     }
 
     private static List<PlacedBlock[]> admitted(DetectorSystem system) {
@@ -89,7 +94,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                     PairFactor other = more.make();
                     return (a, b, line) -> one.of(a, b, line) * other.of(a, b, line);
                 },
-                silent);
+                silent,
+                times);
     }
 
     /**
@@ -105,7 +111,27 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             quiet[e] |= !(efficiencies[e] > 0);
         }
         CoincidenceSheaves weighted = with(() -> (a, b, line) -> efficiencies[a] * efficiencies[b]);
-        return new CoincidenceSheaves(system, lines, blockPairs, weighted.factors, quiet);
+        return new CoincidenceSheaves(system, lines, blockPairs, weighted.factors, quiet, times);
+    }
+
+    /**
+     * The same sheaves, events of which are weighted along their rays by their times of flight. The catalogue remains that of plain rays: the
+     * weights of all time differences that an event could have had add up to 1 everywhere on its ray.
+     *
+     * @param flightTimes what the times of the system's elements tell
+     * @return sheaves whose events need a time difference
+     */
+    public CoincidenceSheaves with(FlightTimes flightTimes) {
+        return new CoincidenceSheaves(system, lines, blockPairs, factors, silent, flightTimes);
+    }
+
+    /**
+     * What events know of where on their ray the decay was.
+     *
+     * @return the times of flight, or null if rays are plain
+     */
+    public @Nullable FlightTimes times() {
+        return times;
     }
 
     /**
@@ -135,7 +161,14 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
 
     @Override
     public Set<Attribute> attributes() {
-        return Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B);
+        return times == null
+                ? Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B)
+                : Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B, Attribute.TIME_DIFFERENCE);
+    }
+
+    @Override
+    public SheafBundle.WeightLaw law() {
+        return times == null ? SheafBundle.WeightLaw.PLAIN : SheafBundle.WeightLaw.GAUSSIAN;
     }
 
     @Override
@@ -152,13 +185,19 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * {@inheritDoc}
      *
      * <p>If the events have a {@link Attribute#DELAYED} column, delayed pairs are set aside. In a block of one piece the ray ends at the
-     * measured point, if the events have one; the response, and so the sensitivity, is that of the cell that holds the point.
+     * measured point, if the events have one; the response, and so the sensitivity, is that of the cell that holds the point. With {@link
+     * FlightTimes} pairs whose time difference is no number are set aside.
      *
      * @throws IllegalArgumentException if an element is not one of the system's
      */
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
-        visit(events, tally, (a, b, line) -> append(out, line, 1));
+        visit(events, tally, (a, b, line) -> {
+            int ray = append(out, line, 1);
+            if (times != null) {
+                out.place(ray, 0.5 * line.lengthMm() - line.offset, line.offsetSd);
+            }
+        });
     }
 
     /**
@@ -186,6 +225,8 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
             } else if (silent[a[i]] || silent[b[i]]) {
                 tally.setAside(EventTally.Reason.SILENT_ELEMENT);
+            } else if (times != null && !Float.isFinite(events.floats(Attribute.TIME_DIFFERENCE)[i])) {
+                tally.setAside(EventTally.Reason.NO_TIME_DIFFERENCE);
             } else if (!maker.line(a[i], b[i], line)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
@@ -198,6 +239,9 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                     line.bx = events.floats(Attribute.POSITION_B_X)[i];
                     line.by = events.floats(Attribute.POSITION_B_Y)[i];
                     line.bz = events.floats(Attribute.POSITION_B_Z)[i];
+                }
+                if (times != null) {
+                    times.place(a[i], b[i], events.floats(Attribute.TIME_DIFFERENCE)[i], line);
                 }
                 visitor.pair(a[i], b[i], line);
                 tally.use();
@@ -260,7 +304,9 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         }
     }
 
-    private static void append(SheafBundle out, LineOfResponse line, double weight) {
-        out.set(out.append(), line.ax, line.ay, line.az, line.bx, line.by, line.bz, weight);
+    private static int append(SheafBundle out, LineOfResponse line, double weight) {
+        int ray = out.append();
+        out.set(ray, line.ax, line.ay, line.az, line.bx, line.by, line.bz, weight);
+        return ray;
     }
 }

@@ -33,6 +33,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.description.DescriptionReader;
@@ -140,6 +141,11 @@ record CorrectedModel(
             Image support = FieldOfView.support(
                     counts, FieldOfView.cylinder(systems.system().fieldOfView().radiusMm()));
             Randoms randoms = randoms();
+            FlightTimes times = new TimesOfFlight(list, systems.system(), corrections.timeOfFlight())
+                    .choose(sheaves, randoms != null, applied, left);
+            if (times != null) {
+                sheaves = sheaves.with(times);
+            }
             Backgrounds backgrounds = new Backgrounds(sheaves, randoms, null, attenuation, perUnit);
             if (corrections.scatter() && attenuation != null && window != null) {
                 backgrounds = withScatter(
@@ -177,7 +183,8 @@ record CorrectedModel(
                         .run(PassListener.SILENT, Progress.SILENT)
                         .image();
                 progress.begin("estimating scatter", 1, "rounds");
-                Scatter scatter = Scatter.of(response, window, image, attenuation.muPerMm(), SCATTER_POINTS, pool);
+                Scatter scatter = Scatter.of(
+                        response, window, image, attenuation.muPerMm(), SCATTER_POINTS, sheaves.times(), pool);
                 Backgrounds.Balance balance =
                         new Backgrounds(sheaves, randoms, scatter, attenuation, perUnit).balance(list, pool);
                 double scale = balance.scatterScale();

@@ -11,11 +11,13 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.EventTally;
+import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Pose;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
 
@@ -241,26 +243,41 @@ public final class Backgrounds {
      * The background of every usable event.
      *
      * @param list the list
-     * @return b/c by number of the event among those used (Bq/mL · mm)
+     * @return b/c by number of the event among those used (Bq/mL · mm; with times of flight per mm of offset, so Bq/mL)
      * @throws IOException if the list cannot be read
+     * @throws IllegalArgumentException if there are randoms and times, but the list does not tell its pairing window
      */
     public EventBackground of(EventSource list) throws IOException {
         if (randoms == null && scatter == null) {
             return EventBackground.NONE;
         }
+        FlightTimes times = sheaves.times();
+        double perMm = times == null || randoms == null
+                ? 1
+                : randomsPerMm(list.header().pairing());
         float[] background = new float[(int) Math.min(Integer.MAX_VALUE - 8, list.events())];
         PairFactor factor = sheaves.factor();
         PairFactor through = attenuation == null ? null : attenuation.make();
         read(list, (event, a, b, line) -> {
             double c = line.etendueMm2Sr() / (2 * Math.PI) * factor.of(a, b, line) * countsPerUnit;
-            double random = randoms == null ? 0 : randoms.of(a, b) / c;
-            double scattered = scatter == null || through == null
-                    ? 0
-                    : 2 * Math.PI * scatter.perEtendue(a, b) / through.of(a, b, line);
+            double random = randoms == null ? 0 : randoms.of(a, b) * perMm / c;
+            double scattered = 0;
+            if (scatter != null && through != null) {
+                double per = times == null ? scatter.perEtendue(a, b) : scatter.perEtendueMm(a, b, line.offsetMm());
+                scattered = 2 * Math.PI * per / through.of(a, b, line);
+            }
             double sum = random + scattered;
             background[event] = sum < HOPELESS ? (float) sum : HOPELESS; // also where c is 0
         });
         return event -> background[(int) event];
+    }
+
+    /** Random pairs come at all time differences within the window alike, so at all offsets from −cτ/2 to cτ/2. */
+    private static double randomsPerMm(@Nullable PairingRecord pairing) {
+        if (pairing == null) {
+            throw new IllegalArgumentException("randoms of events with times need the pairing window");
+        }
+        return 1 / (2 * FlightTimes.offsetMm(1e3 * pairing.settings().windowNs()));
     }
 
     /** Hears of every usable event. */

@@ -5,6 +5,7 @@ import java.util.List;
 import java.util.SplittableRandom;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.PlacedBlock;
@@ -13,6 +14,7 @@ import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.matter.KleinNishina;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairLines;
 import org.raysheaf.geometry.response.Response;
@@ -29,7 +31,8 @@ import org.raysheaf.geometry.response.WindowShares;
  * <p>with effective areas A (in the energy window, for 511 keV), distances R from p, the integral I of the activity from p to the element on
  * the side of the unscattered photon, the acceptance w of the scattered one relative to 511 keV, and attenuation along both ways, τ' at the
  * lower energy. It is sampled coarsely (some points in the object, some elements of each block) and interpolated as scatter per étendue, which
- * is smooth. Scatter twice and more, and activity outside the image, are taken in by a common scale, see {@link #scaled}. Immutable,
+ * is smooth. With {@link FlightTimes} it is told apart by offset as well: a decay at the distance l from p on the way to a has the true offset
+ * (R_b − R_a)/2 + l, which the times blur. Scatter twice and more, and activity outside the image, are taken in by a common scale, see {@link #scaled}. Immutable,
  * safe for use by several threads.
  */
 public final class Scatter {
@@ -46,6 +49,11 @@ public final class Scatter {
     private final int nodes;
     private final float[] perEtendue;
     private final double scale;
+    private final @Nullable Offsets offsets;
+
+    /** Scatter per étendue and mm of offset: for nodes i and j as a and b, the row i · nodes + j; null where there is none. */
+    @SuppressWarnings("ArrayRecordComponent") // nobody compares them
+    private record Offsets(OffsetBins bins, float[] @Nullable [] perEtendueMm) {}
 
     private Scatter(
             DetectorSystem system,
@@ -54,7 +62,8 @@ public final class Scatter {
             int[] firstNode,
             int nodes,
             float[] perEtendue,
-            double scale) {
+            double scale,
+            @Nullable Offsets offsets) {
         this.system = system;
         this.columns = columns;
         this.rows = rows;
@@ -62,10 +71,11 @@ public final class Scatter {
         this.nodes = nodes;
         this.perEtendue = perEtendue;
         this.scale = scale;
+        this.offsets = offsets;
     }
 
     /**
-     * Estimates the scatter.
+     * Estimates the scatter, without regard to times.
      *
      * @param response effective areas in the energy window
      * @param window acceptance at lower energies
@@ -81,6 +91,29 @@ public final class Scatter {
             Image activityBqPerMl,
             Image muPerMm,
             int points,
+            ForkJoinPool pool) {
+        return of(response, window, activityBqPerMl, muPerMm, points, null, pool);
+    }
+
+    /**
+     * Estimates the scatter.
+     *
+     * @param response effective areas in the energy window
+     * @param window acceptance at lower energies
+     * @param activityBqPerMl image of the activity (Bq/mL)
+     * @param muPerMm map of attenuation at 511 keV (1/mm)
+     * @param points points in the object, some hundred
+     * @param times what the times of pairs tell, or null
+     * @param pool does the work
+     * @return scatter of every pair
+     */
+    public static Scatter of(
+            ElementResponse response,
+            WindowShares window,
+            Image activityBqPerMl,
+            Image muPerMm,
+            int points,
+            @Nullable FlightTimes times,
             ForkJoinPool pool) {
         DetectorSystem system = response.system();
         int blocks = system.blocks().size();
@@ -103,7 +136,9 @@ public final class Scatter {
         firstNode[blocks] = elements.size();
         int[] element = elements.stream().mapToInt(Integer::intValue).toArray();
         List<double[]> places = places(muPerMm, points);
-        Paths paths = new Paths(response, element, places, activityBqPerMl, muPerMm, pool);
+        Paths paths = new Paths(response, element, places, activityBqPerMl, muPerMm, times, pool);
+        OffsetBins bins = paths.bins;
+        float[] @Nullable [] byOffset = new float[bins == null ? 0 : element.length * element.length][];
         float[] table = new float[element.length * element.length];
         PairLines lines = new PairLines(response);
         pool.submit(() -> IntStream.range(0, element.length).parallel().forEach(i -> {
@@ -112,15 +147,44 @@ public final class Scatter {
                     for (int j = 0; j < i; j++) {
                         if (system.admits(element[i], element[j])) {
                             mine.lineAnywhere(element[i], element[j], line);
-                            double scattered = paths.scatter(i, j, window);
+                            double[] amounts = new double[bins == null ? 0 : bins.count()];
+                            double scattered = paths.scatter(i, j, window, amounts);
                             double ratio = line.etendueMm2Sr() > 0 ? scattered / line.etendueMm2Sr() : 0;
                             table[i * element.length + j] = (float) ratio;
                             table[j * element.length + i] = (float) ratio;
+                            if (bins != null && times != null && ratio > 0) {
+                                float[] row = bins.blurred(amounts, times.sdMm(element[i], element[j], line));
+                                byOffset[i * element.length + j] = scaled(row, 1 / line.etendueMm2Sr());
+                                byOffset[j * element.length + i] = reversed(row);
+                            }
                         }
                     }
                 }))
                 .join();
-        return new Scatter(system, columns, rows, firstNode, element.length, table, 1);
+        return new Scatter(
+                system,
+                columns,
+                rows,
+                firstNode,
+                element.length,
+                table,
+                1,
+                bins == null ? null : new Offsets(bins, byOffset));
+    }
+
+    private static float[] scaled(float[] row, double factor) {
+        for (int k = 0; k < row.length; k++) {
+            row[k] *= (float) factor;
+        }
+        return row;
+    }
+
+    private static float[] reversed(float[] row) {
+        float[] result = new float[row.length];
+        for (int k = 0; k < row.length; k++) {
+            result[k] = row[row.length - 1 - k];
+        }
+        return result;
     }
 
     private static int[] spread(int count) {
@@ -177,6 +241,11 @@ public final class Scatter {
         private final double[] seen;
         private final double[] tau;
         private final double[] activity;
+        // Only with times: distance, and the activity cell by cell from the point on, at (e · points + p) · cells.
+        private final double[] distance;
+        private final float[] cellActivity;
+        private final int cells;
+        private final @Nullable OffsetBins bins;
 
         Paths(
                 ElementResponse response,
@@ -184,6 +253,7 @@ public final class Scatter {
                 List<double[]> places,
                 Image activityImage,
                 Image mu,
+                @Nullable FlightTimes times,
                 ForkJoinPool pool) {
             this.elements = element.length;
             this.places = places;
@@ -194,12 +264,47 @@ public final class Scatter {
             seen = new double[size];
             tau = new double[size];
             activity = new double[size];
+            distance = new double[size];
             RaySums muSums = new RaySums(mu);
             RaySums activitySums = new RaySums(activityImage);
+            bins = times == null ? null : bins(response, element, times, activityImage);
+            cells = bins == null ? 0 : 1 + (int) (reachMm(activityImage) / bins.widthMm());
+            cellActivity = new float[Math.multiplyExact(size, cells)];
             pool.submit(() -> IntStream.range(0, elements)
                             .parallel()
                             .forEach(e -> fill(response, element[e], e, muSums.twin(), activitySums.twin())))
                     .join();
+        }
+
+        /** From any point to the furthest activity (mm): the diagonal of the image. */
+        private static double reachMm(Image image) {
+            Grid grid = image.grid();
+            double x = grid.nx() * grid.spacingXMm();
+            double y = grid.ny() * grid.spacingYMm();
+            double z = grid.nz() * grid.spacingZMm();
+            return Math.sqrt(x * x + y * y + z * z);
+        }
+
+        private OffsetBins bins(ElementResponse response, int[] element, FlightTimes times, Image activityImage) {
+            DetectorSystem system = response.system();
+            double uneven = 0;
+            for (double[] place : places) {
+                Vector3 point = new Vector3(place[0], place[1], place[2]);
+                double nearest = Double.POSITIVE_INFINITY;
+                double furthest = 0;
+                for (int e : element) {
+                    double way = system.centre(e).minus(point).norm();
+                    nearest = Math.min(nearest, way);
+                    furthest = Math.max(furthest, way);
+                }
+                uneven = Math.max(uneven, furthest - nearest);
+            }
+            double depth = 0;
+            for (int e : element) {
+                depth = Math.max(depth, system.size(e).norm());
+            }
+            double reach = 0.5 * uneven + reachMm(activityImage) + depth;
+            return new OffsetBins(times.leastSdMm(), reach, Math.hypot(times.mostSdMm(), 0.5 * depth));
         }
 
         private void fill(ElementResponse elementResponse, int element, int e, RaySums mu, RaySums active) {
@@ -233,11 +338,34 @@ public final class Scatter {
                 seen[at] = found.areaMm2() / square * (1 + 3 * found.varianceMm2() / square);
                 tau[at] = mu.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
                 activity[at] = active.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
+                distance[at] = Math.sqrt(square);
+                if (bins != null && activity[at] > 0) {
+                    cut(active, point, d, bins.widthMm(), at);
+                }
             }
         }
 
-        /** Σ over the points (Bq/mL · mm³ sr, like étendue · ∫ activity / 2π). */
-        double scatter(int i, int j, WindowShares window) {
+        /** Cuts the activity between a point and an element into cells; their sum stays exactly that of the whole. */
+        private void cut(RaySums active, Vector3 point, Vector3 direction, double widthMm, int at) {
+            double sum = 0;
+            for (int k = 0; k < cells; k++) {
+                double toMm = k == cells - 1 ? distance[at] : Math.min(distance[at], (k + 1) * widthMm);
+                if (k * widthMm >= toMm) {
+                    break;
+                }
+                Vector3 from = point.plus(direction.times(k * widthMm));
+                Vector3 to = point.plus(direction.times(toMm));
+                double cell = active.along(from.x(), from.y(), from.z(), to.x(), to.y(), to.z());
+                cellActivity[at * cells + k] = (float) cell;
+                sum += cell;
+            }
+            for (int k = 0; k < cells && sum > 0; k++) {
+                cellActivity[at * cells + k] *= (float) (activity[at] / sum);
+            }
+        }
+
+        /** Σ over the points (Bq/mL · mm³ sr, like étendue · ∫ activity / 2π); with times also added to the amounts, by true offset. */
+        double scatter(int i, int j, WindowShares window, double[] amounts) {
             double sum = 0;
             int n = places.size();
             for (int p = 0; p < n; p++) {
@@ -262,11 +390,28 @@ public final class Scatter {
                         * seen[a]
                         * seen[b]
                         * accepted;
-                sum += common
-                        * (activity[a] * Math.exp(-tau[a] - more * tau[b])
-                                + activity[b] * Math.exp(-tau[b] - more * tau[a]));
+                double fromA = common * Math.exp(-tau[a] - more * tau[b]);
+                double fromB = common * Math.exp(-tau[b] - more * tau[a]);
+                sum += activity[a] * fromA + activity[b] * fromB;
+                if (bins != null) {
+                    double turnMm = 0.5 * (distance[b] - distance[a]);
+                    deposit(bins, a, fromA, turnMm, 1, amounts);
+                    deposit(bins, b, fromB, turnMm, -1, amounts);
+                }
             }
             return sum;
+        }
+
+        /** Adds what comes from the cells between a point and an element, which lie one bin apart, in the one direction or the other. */
+        private void deposit(OffsetBins at, int way, double factor, double turnMm, int direction, double[] amounts) {
+            double first = at.place(turnMm) + 0.5 * direction;
+            int below = (int) Math.floor(first);
+            double upper = first - below;
+            for (int k = 0; k < cells; k++) {
+                double amount = factor * cellActivity[way * cells + k];
+                amounts[below + direction * k] += (1 - upper) * amount;
+                amounts[below + direction * k + 1] += upper * amount;
+            }
         }
     }
 
@@ -290,6 +435,39 @@ public final class Scatter {
         for (int i = 0; i < countA; i++) {
             for (int j = 4; j < 4 + countB; j++) {
                 sum += wa[i] * wa[j] * perEtendue[na[i] * nodes + na[j]];
+            }
+        }
+        return scale * sum;
+    }
+
+    /**
+     * The part of {@link #perEtendue} that has a measured offset.
+     *
+     * @param a one element
+     * @param b the other
+     * @param offsetMm c/2 times the time difference of a and b: where decays on their line would be, from its middle towards a (mm)
+     * @return scatter per étendue and mm of offset (Bq/mL)
+     * @throws IllegalStateException if the estimate was made without times
+     */
+    public double perEtendueMm(int a, int b, double offsetMm) {
+        if (offsets == null) {
+            throw new IllegalStateException("this scatter was estimated without times");
+        }
+        double place = offsets.bins.place(offsetMm);
+        int low = (int) Math.floor(place);
+        if (!(place >= 0 && low + 1 < offsets.bins.count())) {
+            return 0;
+        }
+        double share = place - low;
+        double[] weight = WEIGHTS.get();
+        int[] node = INDICES.get();
+        int countA = corners(system.blockIndexOf(a), a, node, weight, 0);
+        int countB = corners(system.blockIndexOf(b), b, node, weight, 4);
+        double sum = 0;
+        for (int i = 0; i < countA; i++) {
+            for (int j = 4; j < 4 + countB; j++) {
+                float[] row = offsets.perEtendueMm[node[i] * nodes + node[j]];
+                sum += row == null ? 0 : weight[i] * weight[j] * ((1 - share) * row[low] + share * row[low + 1]);
             }
         }
         return scale * sum;
@@ -342,7 +520,7 @@ public final class Scatter {
      * @return scatter times the factor
      */
     public Scatter scaled(double factor) {
-        return new Scatter(system, columns, rows, firstNode, nodes, perEtendue, scale * factor);
+        return new Scatter(system, columns, rows, firstNode, nodes, perEtendue, scale * factor, offsets);
     }
 
     /**
