@@ -9,22 +9,29 @@ import java.util.SplittableRandom;
 
 /**
  * Lines of response of an ideal ring: decays uniform in a cylinder on the axis, isotropic, recorded where the line meets the ring if
- * both ends do. The cylinder fills six tenths of the ring's radius and all of its length.
+ * both ends do. The cylinder fills a part of the ring's radius, six tenths unless said otherwise, and all of its length.
  */
 final class RingLines {
     private static final double FILLED = 0.6;
 
     private final double radiusMm;
     private final double lengthMm;
+    private final double filled;
 
     /** A ring of the given inner radius and axial length (mm). */
     RingLines(double radiusMm, double lengthMm) {
+        this(radiusMm, lengthMm, FILLED);
+    }
+
+    /** The same, the cylinder filling some part of the ring's radius. */
+    RingLines(double radiusMm, double lengthMm, double filled) {
         if (!(radiusMm > 0 && lengthMm > 0)) {
             throw new IllegalArgumentException(
                     "expected a ring of radius and length > 0 mm, found " + radiusMm + " and " + lengthMm);
         }
         this.radiusMm = radiusMm;
         this.lengthMm = lengthMm;
+        this.filled = filled;
     }
 
     /** Writes lines, six little-endian floats each; the same seed gives the same file. */
@@ -53,7 +60,7 @@ final class RingLines {
     }
 
     private boolean draw(SplittableRandom random, float[] line) {
-        double r = FILLED * radiusMm * Math.sqrt(random.nextDouble());
+        double r = filled * radiusMm * Math.sqrt(random.nextDouble());
         double z = lengthMm * (random.nextDouble() - 0.5);
         double angle = 2 * Math.PI * random.nextDouble();
         double cosine = 2 * random.nextDouble() - 1;

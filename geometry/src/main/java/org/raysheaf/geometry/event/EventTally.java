@@ -14,6 +14,8 @@ public final class EventTally {
     public enum Reason {
         /** Its two elements are too near each other on the detector to be paired. */
         BLOCKS_TOO_CLOSE("blocks closer than blocks_apart"),
+        /** Its time difference is no number, where times of flight are used. */
+        NO_TIME_DIFFERENCE("time difference is no number"),
         /** Its line misses the field of view. */
         OUTSIDE_FIELD_OF_VIEW("line misses the field of view"),
         /** One of its elements was found to be dead or was left out. */

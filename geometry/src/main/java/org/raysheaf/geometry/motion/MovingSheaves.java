@@ -41,6 +41,12 @@ public final class MovingSheaves implements SheafMaker {
         return still.raysPerSheaf();
     }
 
+    /** Rigid moves leave places along a ray as they are. */
+    @Override
+    public SheafBundle.WeightLaw law() {
+        return still.law();
+    }
+
     /** Lists run through time, so neighbours share a stay: they are made together, then moved together. */
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {

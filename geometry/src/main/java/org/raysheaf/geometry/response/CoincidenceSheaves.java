@@ -4,6 +4,7 @@ import java.util.ArrayList;
 import java.util.EnumSet;
 import java.util.List;
 import java.util.Set;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.event.Attribute;
@@ -18,7 +19,8 @@ import org.raysheaf.geometry.sheaf.SheafSampler;
  * Coincident pairs as sheaves: one line between the mean or measured interaction points, or several that are spread over what is not known of
  * them ({@link Positions}). The catalogue holds every pair of elements that the system admits, one part per pair of blocks. An event and the catalogue
  * entry of the same pair have the same rays, so a pair that the sensitivity leaves out is set aside in the list as well. Where rays end at
- * measured points no catalogue has those of the events; then {@link #sampler} draws from all that are possible.
+ * measured points no catalogue has those of the events; then {@link #sampler} draws from all that are possible. Where times of flight are used, rays
+ * of events are weighted along them.
  */
 public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     private final ElementResponse response;
@@ -31,6 +33,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
     private final Strata strata;
     private final PairFactor.Maker factors;
     private final boolean[] silent;
+    private final @Nullable FlightTimes times;
 
     /**
      * The sheaves of a system, one ray each.
@@ -48,10 +51,16 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         this.strata = new Strata(1);
         this.factors = () -> (a, b, line) -> 1;
         this.silent = new boolean[system.elements()];
+        this.times = null;
     }
 
     private CoincidenceSheaves(
-            CoincidenceSheaves from, PairLines lines, Positions positions, PairFactor.Maker factors, boolean[] silent) {
+            CoincidenceSheaves from,
+            PairLines lines,
+            Positions positions,
+            PairFactor.Maker factors,
+            boolean[] silent,
+            @Nullable FlightTimes times) {
         this.response = from.response;
         this.system = from.system;
         this.frames = from.frames;
@@ -62,6 +71,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         this.strata = new Strata(positions.rays());
         this.factors = factors;
         this.silent = silent;
+        this.times = times;
     }
 
     private static List<PlacedBlock[]> admitted(DetectorSystem system) {
@@ -89,7 +99,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             PairFactor other = more.make();
             return (a, b, line) -> one.of(a, b, line) * other.of(a, b, line);
         };
-        return new CoincidenceSheaves(this, lines, positions, both, silent);
+        return new CoincidenceSheaves(this, lines, positions, both, silent, times);
     }
 
     /**
@@ -99,7 +109,7 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      * @return sheaves of that many rays
      */
     public CoincidenceSheaves locating(Positions known) {
-        return new CoincidenceSheaves(this, lines, known, factors, silent);
+        return new CoincidenceSheaves(this, lines, known, factors, silent, times);
     }
 
     /**
@@ -115,7 +125,27 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             quiet[e] |= !(efficiencies[e] > 0);
         }
         CoincidenceSheaves weighted = with(() -> (a, b, line) -> efficiencies[a] * efficiencies[b]);
-        return new CoincidenceSheaves(this, lines, positions, weighted.factors, quiet);
+        return new CoincidenceSheaves(this, lines, positions, weighted.factors, quiet, times);
+    }
+
+    /**
+     * The same sheaves, events of which are weighted along their rays by their times of flight. The catalogue remains that of plain rays: the
+     * weights of all time differences that an event could have had add up to 1 everywhere on its ray.
+     *
+     * @param flightTimes what the times of the system's elements tell
+     * @return sheaves whose events need a time difference
+     */
+    public CoincidenceSheaves with(FlightTimes flightTimes) {
+        return new CoincidenceSheaves(this, lines, positions, factors, silent, flightTimes);
+    }
+
+    /**
+     * What events know of where on their ray the decay was.
+     *
+     * @return the times of flight, or null if rays are plain
+     */
+    public @Nullable FlightTimes times() {
+        return times;
     }
 
     /**
@@ -163,14 +193,21 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      */
     public SheafSampler sampler(long seed, double marginMm) {
         PairLines wide = new PairLines(response, frames, marginMm);
-        CoincidenceSheaves all = new CoincidenceSheaves(this, wide, positions, factors, silent);
+        CoincidenceSheaves all = new CoincidenceSheaves(this, wide, positions, factors, silent, null);
         return (replicate, first, points) ->
                 new SampledPairs(all, Strata.mix(seed ^ Strata.mix(replicate + 1)), first, points);
     }
 
     @Override
     public Set<Attribute> attributes() {
-        return Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B);
+        return times == null
+                ? Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B)
+                : Set.of(Attribute.ELEMENT_A, Attribute.ELEMENT_B, Attribute.TIME_DIFFERENCE);
+    }
+
+    @Override
+    public SheafBundle.WeightLaw law() {
+        return times == null ? SheafBundle.WeightLaw.PLAIN : SheafBundle.WeightLaw.GAUSSIAN;
     }
 
     @Override
@@ -190,14 +227,17 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
      *
      * <p>If the events have a {@link Attribute#DELAYED} column, delayed pairs are set aside. Rays end where the event was measured, in
      * blocks of one piece at the point, in crystals whose readout tells it at the depth, if the events have such columns; the étendue is that of
-     * the pair of elements.
+     * the pair of elements. With {@link FlightTimes} pairs whose time difference is no number are set aside.
      *
      * @throws IllegalArgumentException if an element is not one of the system's
      */
     @Override
     public void make(EventBlock events, SheafBundle out, EventTally tally) {
         if (positions.rays() == 1) {
-            each(events, measured.of(events), false, tally, (i, a, b, line) -> PairCaster.append(out, line, 1));
+            each(events, measured.of(events), false, tally, (i, a, b, line) -> {
+                PairCaster.append(out, line, 1);
+                place(out, line);
+            });
             return;
         }
         PairRays rays = new PairRays(response, frames, strata);
@@ -206,7 +246,24 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
             rays.aim(a, b, line);
             found.blur(i, a, b, rays);
             rays.append(out, 1);
+            place(out, line);
         });
+    }
+
+    /** Places the weight of the newest sheaf along each of its rays, from the middle of the ray. */
+    private void place(SheafBundle out, LineOfResponse line) {
+        if (times == null) {
+            return;
+        }
+        int rays = positions.rays();
+        for (int ray = (out.size() - 1) * rays; ray < out.size() * rays; ray++) {
+            float[] ends = out.rays();
+            int at = 6 * ray;
+            double x = ends[at + 3] - ends[at];
+            double y = ends[at + 4] - ends[at + 1];
+            double z = ends[at + 5] - ends[at + 2];
+            out.place(ray, 0.5 * Math.sqrt(x * x + y * y + z * z) - line.offset, line.offsetSd);
+        }
     }
 
     /**
@@ -242,9 +299,14 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
                 tally.setAside(EventTally.Reason.BLOCKS_TOO_CLOSE);
             } else if (silent[a[i]] || silent[b[i]]) {
                 tally.setAside(EventTally.Reason.SILENT_ELEMENT);
+            } else if (times != null && !Float.isFinite(events.floats(Attribute.TIME_DIFFERENCE)[i])) {
+                tally.setAside(EventTally.Reason.NO_TIME_DIFFERENCE);
             } else if (!found.find(i, a[i], b[i], maker, line, etendue)) {
                 tally.setAside(EventTally.Reason.OUTSIDE_FIELD_OF_VIEW);
             } else {
+                if (times != null) {
+                    times.place(a[i], b[i], events.floats(Attribute.TIME_DIFFERENCE)[i], line);
+                }
                 visitor.event(i, a[i], b[i], line);
                 tally.use();
             }

@@ -12,6 +12,9 @@ public final class LineOfResponse {
     double by;
     double bz;
     double etendue;
+    double depthVariance;
+    double offset;
+    double offsetSd;
 
     /** Makes an empty holder. */
     public LineOfResponse() {}
@@ -43,6 +46,33 @@ public final class LineOfResponse {
      */
     public double etendueMm2Sr() {
         return etendue;
+    }
+
+    /**
+     * How far the two photons interact from the ends of the line: the variances of both interaction points along the line, added.
+     *
+     * @return the variance (mm²)
+     */
+    public double depthVarianceMm2() {
+        return depthVariance;
+    }
+
+    /**
+     * Where on the line the times of an event put the decay. Known only for lines of events, from sheaves with {@link FlightTimes}.
+     *
+     * @return distance from the middle of the line towards end a (mm)
+     */
+    public double offsetMm() {
+        return offset;
+    }
+
+    /**
+     * Standard deviation of {@link #offsetMm}.
+     *
+     * @return the standard deviation (mm)
+     */
+    public double offsetSdMm() {
+        return offsetSd;
     }
 
     /**

@@ -211,6 +211,7 @@ public final class PairLines {
             setA(line, fa, oua + near.u, ova + near.v, near.w);
             setB(line, fb, oub + far.u, ovb + far.v, far.w);
         }
+        line.depthVariance = near.variance + far.variance;
         double square = d * d;
         return near.area * far.area / square * (1 + 3 * (near.variance + far.variance) / square);
     }

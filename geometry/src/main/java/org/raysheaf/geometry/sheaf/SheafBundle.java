@@ -3,8 +3,8 @@ package org.raysheaf.geometry.sheaf;
 /**
  * A run of sheaves in flat arrays, all with the same number of rays. A ray is a segment: six floats, start x y z and end x y z (mm).
  *
- * <p>Rays of sheaf i are i · raysPerSheaf to (i + 1) · raysPerSheaf − 1; the coordinates of ray k begin at 6 k. The weight along every
- * ray of this bundle is 1 (a coincident pair without timing). What a weight means depends on where the sheaf comes from:
+ * <p>Rays of sheaf i are i · raysPerSheaf to (i + 1) · raysPerSheaf − 1; the coordinates of ray k begin at 6 k. All rays have the same
+ * {@link WeightLaw} h(t) for the weight along them. What the weight of a ray as a whole means depends on where the sheaf comes from:
  *
  * <ul>
  *   <li>from an event ({@link SheafMaker}): the share of the ray in the event; the weights of a sheaf sum to 1;
@@ -19,15 +19,37 @@ public final class SheafBundle {
     private final int capacity;
     private final float[] rays;
     private final float[] weights;
+    private final WeightLaw law;
+    private final float[] centresMm;
+    private final float[] sdsMm;
     private int size;
+
+    /** The weight h(t) along a ray, t being the distance from its start (mm). */
+    public enum WeightLaw {
+        /** h = 1: a coincident pair without timing. */
+        PLAIN,
+        /** h is a normal density (1/mm) with a centre and a standard deviation of each ray's own: a pair with times of flight. */
+        GAUSSIAN
+    }
+
+    /**
+     * An empty bundle of plain rays.
+     *
+     * @param raysPerSheaf rays in every sheaf, at least 1
+     * @param capacity the most sheaves it holds, at least 1
+     */
+    public SheafBundle(int raysPerSheaf, int capacity) {
+        this(raysPerSheaf, capacity, WeightLaw.PLAIN);
+    }
 
     /**
      * An empty bundle.
      *
      * @param raysPerSheaf rays in every sheaf, at least 1
      * @param capacity the most sheaves it holds, at least 1
+     * @param law the weight along every ray
      */
-    public SheafBundle(int raysPerSheaf, int capacity) {
+    public SheafBundle(int raysPerSheaf, int capacity, WeightLaw law) {
         if (raysPerSheaf < 1 || capacity < 1) {
             throw new IllegalArgumentException(
                     "expected at least one ray and one sheaf: raysPerSheaf=" + raysPerSheaf + ", capacity=" + capacity);
@@ -36,6 +58,18 @@ public final class SheafBundle {
         this.capacity = capacity;
         this.rays = new float[Math.multiplyExact(6, Math.multiplyExact(raysPerSheaf, capacity))];
         this.weights = new float[raysPerSheaf * capacity];
+        this.law = law;
+        this.centresMm = new float[law == WeightLaw.PLAIN ? 0 : raysPerSheaf * capacity];
+        this.sdsMm = new float[centresMm.length];
+    }
+
+    /**
+     * The weight along every ray.
+     *
+     * @return the law
+     */
+    public WeightLaw law() {
+        return law;
     }
 
     /**
@@ -112,6 +146,36 @@ public final class SheafBundle {
         rays[at + 4] = (float) y2;
         rays[at + 5] = (float) z2;
         weights[ray] = (float) weight;
+    }
+
+    /**
+     * Sets where along a ray its weight lies, in a bundle of {@link WeightLaw#GAUSSIAN} rays.
+     *
+     * @param ray sheaf · raysPerSheaf + index of the ray in its sheaf
+     * @param centreMm centre of the density, from the start of the ray towards its end (mm)
+     * @param sdMm its standard deviation, above 0 (mm)
+     */
+    public void place(int ray, double centreMm, double sdMm) {
+        centresMm[ray] = (float) centreMm;
+        sdsMm[ray] = (float) sdMm;
+    }
+
+    /**
+     * Centres of the density along all rays.
+     *
+     * @return the shared array, one per ray, from its start (mm); empty if rays are plain
+     */
+    public float[] centresMm() {
+        return centresMm;
+    }
+
+    /**
+     * Standard deviations of the density along all rays.
+     *
+     * @return the shared array, one per ray (mm); empty if rays are plain
+     */
+    public float[] sdsMm() {
+        return sdsMm;
     }
 
     /**

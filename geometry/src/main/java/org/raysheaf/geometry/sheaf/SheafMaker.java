@@ -34,10 +34,19 @@ public interface SheafMaker {
     int raysPerSheaf();
 
     /**
+     * The weight along the rays of the sheaves that this maker makes.
+     *
+     * @return the law, by default plain
+     */
+    default SheafBundle.WeightLaw law() {
+        return SheafBundle.WeightLaw.PLAIN;
+    }
+
+    /**
      * Appends the sheaf of every usable event, in order, and counts every event as used or set aside.
      *
      * @param events the events; they have the columns that {@link #attributes()} names
-     * @param out receives the sheaves, weights summing to 1; it must have room for all events
+     * @param out receives the sheaves, weights summing to 1; it must have room for all events, and the law of this maker
      * @param tally counts the events
      */
     void make(EventBlock events, SheafBundle out, EventTally tally);

@@ -32,6 +32,7 @@ import org.raysheaf.geometry.motion.MotionDescription;
 import org.raysheaf.geometry.motion.MovingSheaves;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.sheaf.SheafMaker;
 import org.raysheaf.io.cache.Cache;
@@ -120,6 +121,11 @@ record CorrectedModel(
                 GeometryFactors geometry = normalization.geometry();
                 sheaves = geometry == null ? sheaves : sheaves.with(geometry);
             }
+            FlightTimes times = new TimesOfFlight(list, systems.system(), corrections.timeOfFlight())
+                    .choose(sheaves, pairs.randoms() != null, applied);
+            if (times != null) {
+                sheaves = sheaves.with(times);
+            }
             Motion motion = motion(map);
             SheafMaker maker = motion == null ? sheaves : new MovingSheaves(sheaves, motion);
             // Counting with fewer pairs per becquerel multiplies the image.
@@ -206,7 +212,7 @@ record CorrectedModel(
             for (int round = 0; round < SCATTER_ROUNDS; round++) {
                 progress.begin("estimating scatter", 1, "rounds");
                 Image image = stage.roughImage(backgrounds);
-                Scatter scatter = stage.pairs.scatter(image, pool);
+                Scatter scatter = stage.pairs.scatter(image, stage.sheaves.times(), pool);
                 if (scatter == null) {
                     throw new IllegalStateException("scatter needs attenuation and window");
                 }

@@ -5,7 +5,7 @@ import org.raysheaf.geometry.settings.Default;
 import org.raysheaf.geometry.settings.Problems;
 
 /**
- * Which corrections a reconstruction makes, as a description gives them. Paths start from the description's folder.
+ * Which corrections a reconstruction makes, and what it uses of the events, as a description gives them. Paths start from the description's folder.
  *
  * @param window whether to count with what the energy window and scatter between crystals do to first interactions
  * @param lowestKeV lower end of the energy window; without it, what the list says about its pairing
@@ -15,6 +15,7 @@ import org.raysheaf.geometry.settings.Problems;
  * @param scatter whether to estimate scatter in the object; needs attenuation
  * @param losses whether to count with pairs spoilt by a third photon, where the list says how crowds were treated
  * @param efficiencies path of a file with the efficiency of each element, as {@code normalize} writes it
+ * @param timeOfFlight whether to use time differences
  * @param calibration path of a calibration, as {@code reconstruct --reference} writes it; the image is multiplied with its factor
  */
 record Corrections(
@@ -26,10 +27,11 @@ record Corrections(
         @Default("true") boolean scatter,
         @Default("true") boolean losses,
         @Nullable String efficiencies,
+        @Default("auto") TimeOfFlight timeOfFlight,
         @Nullable String calibration) {
     /** Everything that a list alone allows. */
     static final Corrections OF_A_BARE_LIST =
-            new Corrections(true, null, null, null, RandomsFrom.AUTO, true, true, null, null);
+            new Corrections(true, null, null, null, RandomsFrom.AUTO, true, true, null, TimeOfFlight.AUTO, null);
 
     /** Where the rate of random coincidences comes from. */
     enum RandomsFrom {
@@ -41,6 +43,16 @@ record Corrections(
         SINGLES,
         /** They are not corrected for. */
         NONE
+    }
+
+    /** Whether time differences weight events along their lines. */
+    enum TimeOfFlight {
+        /** If the list and the system have them, and they are fine enough to make a difference. */
+        AUTO,
+        /** However coarse they are. */
+        ALWAYS,
+        /** Never. */
+        NEVER
     }
 
     /**

@@ -6,9 +6,11 @@ import java.util.List;
 import java.util.Locale;
 import java.util.Map;
 import org.raysheaf.geometry.detector.DetectorSystem;
+import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.port.Progress;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.io.list.ListFile;
 import org.raysheaf.io.overview.ListFigures;
 import org.raysheaf.io.overview.ListOverview;
@@ -37,6 +39,15 @@ final class ListLook {
         ListFigures seen = overview.figures();
         for (String line : lines(seen)) {
             figures.put(line.substring(0, 11).strip(), line.substring(11));
+        }
+        FlightTimes times = FlightTimes.of(system);
+        if (times != null && list.attributes().contains(Attribute.TIME_DIFFERENCE)) {
+            figures.put(
+                    "flight",
+                    String.format(
+                            Locale.ROOT,
+                            "time differences tell the place on a line to %.1f mm (standard deviation of the times alone)",
+                            times.leastSdMm()));
         }
         List<String> warnings = new ArrayList<>(list.warnings());
         warnings.addAll(ListWarnings.of(seen, list.header()));

@@ -74,7 +74,7 @@ final class NormalizeVerb extends Verb {
                 list, systems, Corrections.OF_A_BARE_LIST, MuMap.of(phantom).attenuation(), new Applied());
         CoincidenceSheaves sheaves =
                 pairs.sheaves(new Positions(1, false, false)); // by elements, like the efficiencies
-        Scatter scatter = pairs.scatter(activity, pool);
+        Scatter scatter = pairs.scatter(activity, null, pool);
         if (scatter != null) {
             // As in a reconstruction: what is clear of the source tells how much scattered twice and more.
             Backgrounds.Balance balance = new Backgrounds(

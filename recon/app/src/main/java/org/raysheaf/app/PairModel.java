@@ -17,6 +17,7 @@ import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.Positions;
 import org.raysheaf.geometry.response.WindowShares;
 
@@ -73,12 +74,12 @@ record PairModel(
         return attenuation == null ? sheaves : sheaves.with(attenuation);
     }
 
-    /** Scatter of an activity, or null if attenuation or window are not known. */
+    /** Scatter of an activity, by time where times are used, or null if attenuation or window are not known. */
     @Nullable
-    Scatter scatter(Image activityBqPerMl, ForkJoinPool pool) {
+    Scatter scatter(Image activityBqPerMl, @Nullable FlightTimes times, ForkJoinPool pool) {
         return attenuation == null || window == null
                 ? null
-                : Scatter.of(response, window, activityBqPerMl, attenuation.muPerMm(), SCATTER_POINTS, pool);
+                : Scatter.of(response, window, activityBqPerMl, attenuation.muPerMm(), SCATTER_POINTS, times, pool);
     }
 
     private static @Nullable WindowShares window(

@@ -7,7 +7,9 @@ import java.util.stream.IntStream;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.engine.ray.EventBackground;
 import org.raysheaf.geometry.event.EventSource;
+import org.raysheaf.geometry.event.PairingRecord;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
 import org.raysheaf.geometry.response.PairVisitor;
@@ -220,36 +222,58 @@ public final class Backgrounds {
      *
      * @param list the list
      * @param pool does the work
-     * @return b/c by number of the event among those used (Bq/mL · mm)
+     * @return b/c by number of the event among those used (Bq/mL · mm; with times of flight per mm of offset, so Bq/mL)
      * @throws IOException if the list cannot be read
+     * @throws IllegalArgumentException if there are randoms and times, but the list does not tell its pairing window
      */
     public EventBackground of(EventSource list, ForkJoinPool pool) throws IOException {
         if (randoms == null && scatter == null) {
             return EventBackground.NONE;
         }
+        FlightTimes times = sheaves.times();
+        double perMm = times == null || randoms == null
+                ? 1
+                : randomsPerMm(list.header().pairing());
         float[] background = new float[(int) Math.min(Integer.MAX_VALUE - 8, list.events())];
         int[] used = new int[1];
-        EventPairs.read(list, sheaves, pool, OfEvents::new, block -> {
+        EventPairs.read(list, sheaves, pool, () -> new OfEvents(times, perMm), block -> {
             System.arraycopy(block.values, 0, background, used[0], block.size);
             used[0] += block.size;
         });
         return event -> background[(int) event];
     }
 
+    /** Random pairs come at all time differences within the window alike, so at all offsets from −cτ/2 to cτ/2. */
+    private static double randomsPerMm(@Nullable PairingRecord pairing) {
+        if (pairing == null) {
+            throw new IllegalArgumentException("randoms of events with times need the pairing window");
+        }
+        return 1 / (2 * FlightTimes.offsetMm(1e3 * pairing.settings().windowNs()));
+    }
+
     /** The backgrounds of a block of events. */
     private final class OfEvents implements PairVisitor {
+        private final @Nullable FlightTimes times;
+        private final double perMm;
         private final PairFactor factor = sheaves.factor();
         private final @Nullable PairFactor through = attenuation == null ? null : attenuation.make();
         private float[] values = new float[1 << 10];
         private int size;
 
+        OfEvents(@Nullable FlightTimes times, double perMm) {
+            this.times = times;
+            this.perMm = perMm;
+        }
+
         @Override
         public void pair(int a, int b, LineOfResponse line) {
             double c = line.etendueMm2Sr() / (2 * Math.PI) * factor.of(a, b, line) * countsPerUnit;
-            double random = randoms == null ? 0 : randoms.of(a, b) / c;
-            double scattered = scatter == null || through == null
-                    ? 0
-                    : 2 * Math.PI * scatter.perEtendue(a, b) / through.of(a, b, line);
+            double random = randoms == null ? 0 : randoms.of(a, b) * perMm / c;
+            double scattered = 0;
+            if (scatter != null && through != null) {
+                double per = times == null ? scatter.perEtendue(a, b) : scatter.perEtendueMm(a, b, line.offsetMm());
+                scattered = 2 * Math.PI * per / through.of(a, b, line);
+            }
             double sum = random + scattered;
             if (size == values.length) {
                 values = Arrays.copyOf(values, 2 * size);

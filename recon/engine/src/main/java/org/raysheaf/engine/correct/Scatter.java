@@ -5,6 +5,7 @@ import java.util.List;
 import java.util.SplittableRandom;
 import java.util.concurrent.ForkJoinPool;
 import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.PlacedBlock;
 import org.raysheaf.geometry.frame.Grid;
@@ -12,6 +13,7 @@ import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.matter.KleinNishina;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairLines;
 import org.raysheaf.geometry.response.Response;
@@ -28,7 +30,8 @@ import org.raysheaf.geometry.response.WindowShares;
  * <p>with effective areas A (in the energy window, for 511 keV), distances R from p, the integral I of the activity from p to the element on
  * the side of the unscattered photon, the acceptance w of the scattered one relative to 511 keV, and attenuation along both ways, τ' at the
  * lower energy. It is sampled coarsely (some points in the object, some elements of each block) and interpolated as scatter per étendue, which
- * is smooth. Scatter twice and more, and activity outside the image, are taken in by a common scale, see {@link #scaled}. Immutable,
+ * is smooth. With {@link FlightTimes} it is told apart by offset as well: a decay at the distance l from p on the way to a has the true offset
+ * (R_b − R_a)/2 + l, which the times blur. Scatter twice and more, and activity outside the image, are taken in by a common scale, see {@link #scaled}. Immutable,
  * safe for use by several threads.
  */
 public final class Scatter {
@@ -40,15 +43,21 @@ public final class Scatter {
     private final ScatterMesh mesh;
     private final float[] perEtendue;
     private final double scale;
+    private final @Nullable Offsets offsets;
 
-    private Scatter(ScatterMesh mesh, float[] perEtendue, double scale) {
+    /** Scatter per étendue and mm of offset: for nodes i and j as a and b, the row i · nodes + j; null where there is none. */
+    @SuppressWarnings("ArrayRecordComponent") // nobody compares them
+    private record Offsets(OffsetBins bins, float[] @Nullable [] perEtendueMm) {}
+
+    private Scatter(ScatterMesh mesh, float[] perEtendue, double scale, @Nullable Offsets offsets) {
         this.mesh = mesh;
         this.perEtendue = perEtendue;
         this.scale = scale;
+        this.offsets = offsets;
     }
 
     /**
-     * Estimates the scatter.
+     * Estimates the scatter, without regard to times.
      *
      * @param response effective areas in the energy window
      * @param window acceptance at lower energies
@@ -65,11 +74,36 @@ public final class Scatter {
             Image muPerMm,
             int points,
             ForkJoinPool pool) {
+        return of(response, window, activityBqPerMl, muPerMm, points, null, pool);
+    }
+
+    /**
+     * Estimates the scatter.
+     *
+     * @param response effective areas in the energy window
+     * @param window acceptance at lower energies
+     * @param activityBqPerMl image of the activity (Bq/mL)
+     * @param muPerMm map of attenuation at 511 keV (1/mm)
+     * @param points points in the object, some hundred
+     * @param times what the times of pairs tell, or null
+     * @param pool does the work
+     * @return scatter of every pair
+     */
+    public static Scatter of(
+            ElementResponse response,
+            WindowShares window,
+            Image activityBqPerMl,
+            Image muPerMm,
+            int points,
+            @Nullable FlightTimes times,
+            ForkJoinPool pool) {
         DetectorSystem system = response.system();
         ScatterMesh mesh = new ScatterMesh(system);
         int[] element = mesh.sampled();
         List<double[]> places = places(muPerMm, points);
-        Paths paths = new Paths(response, element, places, activityBqPerMl, muPerMm, pool);
+        Paths paths = new Paths(response, element, places, activityBqPerMl, muPerMm, times, pool);
+        OffsetBins bins = paths.bins;
+        float[] @Nullable [] byOffset = new float[bins == null ? 0 : element.length * element.length][];
         float[] table = new float[element.length * element.length];
         PairLines lines = new PairLines(response);
         pool.submit(() -> IntStream.range(0, element.length).parallel().forEach(i -> {
@@ -78,15 +112,36 @@ public final class Scatter {
                     for (int j = 0; j < i; j++) {
                         if (system.admits(element[i], element[j])) {
                             mine.lineAnywhere(element[i], element[j], line);
-                            double scattered = paths.scatter(i, j, window);
+                            double[] amounts = new double[bins == null ? 0 : bins.count()];
+                            double scattered = paths.scatter(i, j, window, amounts);
                             double ratio = line.etendueMm2Sr() > 0 ? scattered / line.etendueMm2Sr() : 0;
                             table[i * element.length + j] = (float) ratio;
                             table[j * element.length + i] = (float) ratio;
+                            if (bins != null && times != null && ratio > 0) {
+                                float[] row = bins.blurred(amounts, times.sdMm(element[i], element[j], line));
+                                byOffset[i * element.length + j] = scaled(row, 1 / line.etendueMm2Sr());
+                                byOffset[j * element.length + i] = reversed(row);
+                            }
                         }
                     }
                 }))
                 .join();
-        return new Scatter(mesh, table, 1);
+        return new Scatter(mesh, table, 1, bins == null ? null : new Offsets(bins, byOffset));
+    }
+
+    private static float[] scaled(float[] row, double factor) {
+        for (int k = 0; k < row.length; k++) {
+            row[k] *= (float) factor;
+        }
+        return row;
+    }
+
+    private static float[] reversed(float[] row) {
+        float[] result = new float[row.length];
+        for (int k = 0; k < row.length; k++) {
+            result[k] = row[row.length - 1 - k];
+        }
+        return result;
     }
 
     /** Points spread over the dense voxels by a stratified draw with a fixed seed: x, y, z, µ, volume. */
@@ -136,6 +191,11 @@ public final class Scatter {
         private final double[] seen;
         private final double[] tau;
         private final double[] activity;
+        // Only with times: distance, and the activity cell by cell from the point on, at (e · points + p) · cells.
+        private final double[] distance;
+        private final float[] cellActivity;
+        private final int cells;
+        private final @Nullable OffsetBins bins;
 
         Paths(
                 ElementResponse response,
@@ -143,6 +203,7 @@ public final class Scatter {
                 List<double[]> places,
                 Image activityImage,
                 Image mu,
+                @Nullable FlightTimes times,
                 ForkJoinPool pool) {
             this.elements = element.length;
             this.places = places;
@@ -153,12 +214,47 @@ public final class Scatter {
             seen = new double[size];
             tau = new double[size];
             activity = new double[size];
+            distance = new double[size];
             RaySums muSums = new RaySums(mu);
             RaySums activitySums = new RaySums(activityImage);
+            bins = times == null ? null : bins(response, element, times, activityImage);
+            cells = bins == null ? 0 : 1 + (int) (reachMm(activityImage) / bins.widthMm());
+            cellActivity = new float[Math.multiplyExact(size, cells)];
             pool.submit(() -> IntStream.range(0, elements)
                             .parallel()
                             .forEach(e -> fill(response, element[e], e, muSums.twin(), activitySums.twin())))
                     .join();
+        }
+
+        /** From any point to the furthest activity (mm): the diagonal of the image. */
+        private static double reachMm(Image image) {
+            Grid grid = image.grid();
+            double x = grid.nx() * grid.spacingXMm();
+            double y = grid.ny() * grid.spacingYMm();
+            double z = grid.nz() * grid.spacingZMm();
+            return Math.sqrt(x * x + y * y + z * z);
+        }
+
+        private OffsetBins bins(ElementResponse response, int[] element, FlightTimes times, Image activityImage) {
+            DetectorSystem system = response.system();
+            double uneven = 0;
+            for (double[] place : places) {
+                Vector3 point = new Vector3(place[0], place[1], place[2]);
+                double nearest = Double.POSITIVE_INFINITY;
+                double furthest = 0;
+                for (int e : element) {
+                    double way = system.centre(e).minus(point).norm();
+                    nearest = Math.min(nearest, way);
+                    furthest = Math.max(furthest, way);
+                }
+                uneven = Math.max(uneven, furthest - nearest);
+            }
+            double depth = 0;
+            for (int e : element) {
+                depth = Math.max(depth, system.size(e).norm());
+            }
+            double reach = 0.5 * uneven + reachMm(activityImage) + depth;
+            return new OffsetBins(times.leastSdMm(), reach, Math.hypot(times.mostSdMm(), 0.5 * depth));
         }
 
         private void fill(ElementResponse elementResponse, int element, int e, RaySums mu, RaySums active) {
@@ -192,11 +288,34 @@ public final class Scatter {
                 seen[at] = found.areaMm2() / square * (1 + 3 * found.varianceMm2() / square);
                 tau[at] = mu.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
                 activity[at] = active.along(place[0], place[1], place[2], end.x(), end.y(), end.z());
+                distance[at] = Math.sqrt(square);
+                if (bins != null && activity[at] > 0) {
+                    cut(active, point, d, bins.widthMm(), at);
+                }
             }
         }
 
-        /** Σ over the points (Bq/mL · mm³ sr, like étendue · ∫ activity / 2π). */
-        double scatter(int i, int j, WindowShares window) {
+        /** Cuts the activity between a point and an element into cells; their sum stays exactly that of the whole. */
+        private void cut(RaySums active, Vector3 point, Vector3 direction, double widthMm, int at) {
+            double sum = 0;
+            for (int k = 0; k < cells; k++) {
+                double toMm = k == cells - 1 ? distance[at] : Math.min(distance[at], (k + 1) * widthMm);
+                if (k * widthMm >= toMm) {
+                    break;
+                }
+                Vector3 from = point.plus(direction.times(k * widthMm));
+                Vector3 to = point.plus(direction.times(toMm));
+                double cell = active.along(from.x(), from.y(), from.z(), to.x(), to.y(), to.z());
+                cellActivity[at * cells + k] = (float) cell;
+                sum += cell;
+            }
+            for (int k = 0; k < cells && sum > 0; k++) {
+                cellActivity[at * cells + k] *= (float) (activity[at] / sum);
+            }
+        }
+
+        /** Σ over the points (Bq/mL · mm³ sr, like étendue · ∫ activity / 2π); with times also added to the amounts, by true offset. */
+        double scatter(int i, int j, WindowShares window, double[] amounts) {
             double sum = 0;
             int n = places.size();
             for (int p = 0; p < n; p++) {
@@ -221,11 +340,28 @@ public final class Scatter {
                         * seen[a]
                         * seen[b]
                         * accepted;
-                sum += common
-                        * (activity[a] * Math.exp(-tau[a] - more * tau[b])
-                                + activity[b] * Math.exp(-tau[b] - more * tau[a]));
+                double fromA = common * Math.exp(-tau[a] - more * tau[b]);
+                double fromB = common * Math.exp(-tau[b] - more * tau[a]);
+                sum += activity[a] * fromA + activity[b] * fromB;
+                if (bins != null) {
+                    double turnMm = 0.5 * (distance[b] - distance[a]);
+                    deposit(bins, a, fromA, turnMm, 1, amounts);
+                    deposit(bins, b, fromB, turnMm, -1, amounts);
+                }
             }
             return sum;
+        }
+
+        /** Adds what comes from the cells between a point and an element, which lie one bin apart, in the one direction or the other. */
+        private void deposit(OffsetBins at, int way, double factor, double turnMm, int direction, double[] amounts) {
+            double first = at.place(turnMm) + 0.5 * direction;
+            int below = (int) Math.floor(first);
+            double upper = first - below;
+            for (int k = 0; k < cells; k++) {
+                double amount = factor * cellActivity[way * cells + k];
+                amounts[below + direction * k] += (1 - upper) * amount;
+                amounts[below + direction * k + 1] += upper * amount;
+            }
         }
     }
 
@@ -241,13 +377,35 @@ public final class Scatter {
     }
 
     /**
+     * The part of {@link #perEtendue} that has a measured offset.
+     *
+     * @param a one element
+     * @param b the other
+     * @param offsetMm c/2 times the time difference of a and b: where decays on their line would be, from its middle towards a (mm)
+     * @return scatter per étendue and mm of offset (Bq/mL)
+     * @throws IllegalStateException if the estimate was made without times
+     */
+    public double perEtendueMm(int a, int b, double offsetMm) {
+        if (offsets == null) {
+            throw new IllegalStateException("this scatter was estimated without times");
+        }
+        double place = offsets.bins.place(offsetMm);
+        int low = (int) Math.floor(place);
+        if (!(place >= 0 && low + 1 < offsets.bins.count())) {
+            return 0;
+        }
+        double share = place - low;
+        return scale * mesh.interpolate(offsets.perEtendueMm, low, share, a, b);
+    }
+
+    /**
      * The same, scaled.
      *
      * @param factor what to multiply it with
      * @return scatter times the factor
      */
     public Scatter scaled(double factor) {
-        return new Scatter(mesh, perEtendue, scale * factor);
+        return new Scatter(mesh, perEtendue, scale * factor, offsets);
     }
 
     /**

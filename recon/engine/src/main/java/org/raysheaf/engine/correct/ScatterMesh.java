@@ -3,6 +3,7 @@ package org.raysheaf.engine.correct;
 import java.util.ArrayList;
 import java.util.List;
 import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.detector.CrystalBlock;
 import org.raysheaf.geometry.detector.DetectorSystem;
 import org.raysheaf.geometry.detector.PlacedBlock;
@@ -99,6 +100,26 @@ final class ScatterMesh {
                 along += weights[j] * table[row + corners[j]];
             }
             sum += weights[i] * along;
+        }
+        return sum;
+    }
+
+    /**
+     * A value between two neighbouring places of rows, for a pair of elements out of a square table of rows over the sampled ones.
+     *
+     * @param table rows, null where all is 0
+     * @param low the lower place
+     * @param share how far the place wanted is from it to the next, 0 to 1
+     */
+    double interpolate(float[] @Nullable [] table, int low, double share, int a, int b) {
+        double sum = 0;
+        for (int i = CORNERS * a; i < CORNERS * (a + 1); i++) {
+            for (int j = CORNERS * b; j < CORNERS * (b + 1); j++) {
+                float[] row = table[corners[i] * sampled.length + corners[j]];
+                if (row != null) {
+                    sum += weights[i] * weights[j] * ((1 - share) * row[low] + share * row[low + 1]);
+                }
+            }
         }
         return sum;
     }

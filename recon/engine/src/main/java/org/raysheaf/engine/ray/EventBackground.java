@@ -10,7 +10,7 @@ public interface EventBackground {
      * Background of one event.
      *
      * @param event number of the event among those the sheaf maker used, from 0, in the order of the list
-     * @return b/c (unit of the image times mm), at least 0
+     * @return b/c (unit of the image times mm; if rays are timed, unit of the image), at least 0
      */
     float of(long event);
 }

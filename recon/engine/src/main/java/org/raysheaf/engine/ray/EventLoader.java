@@ -88,7 +88,7 @@ public final class EventLoader {
             pieces[i] = new Piece(columns, lattice);
         }
         shardEvents = (int) Math.max(1, Math.min(most, shardRays / raysPerEvent));
-        shard = new Walks(lattice, shardEvents * raysPerEvent);
+        shard = new Walks(lattice, shardEvents * raysPerEvent, maker.law());
         shardBackground = background == EventBackground.NONE ? null : new float[shardEvents];
         for (int s = 0; s < subsets; s++) {
             segments.add(new ArrayList<>());
@@ -106,11 +106,13 @@ public final class EventLoader {
     }
 
     private Shelf shelf(Storage storage) throws IOException {
-        long bytes = most * (Walks.BYTES * (long) raysPerEvent + (shardBackground == null ? 0 : Float.BYTES));
+        long bytes = most
+                * ((Walks.BYTES + (shard.timed() ? Walks.TIMED_BYTES : 0)) * (long) raysPerEvent
+                        + (shardBackground == null ? 0 : Float.BYTES));
         Scratch scratch = storage.scratch();
         return bytes <= storage.memoryBytes() || scratch == null
                 ? new MemoryShelf()
-                : new ScratchShelf(scratch.open(), shard.lattice(), raysPerEvent);
+                : new ScratchShelf(scratch.open(), shard.lattice(), raysPerEvent, maker.law());
     }
 
     /**
@@ -254,14 +256,14 @@ public final class EventLoader {
     /** Some events of a block on their way to walks; what one thread works on. */
     private final class Piece {
         final EventBlock events;
-        final SheafBundle bundle = new SheafBundle(raysPerEvent, PIECE);
+        final SheafBundle bundle = new SheafBundle(raysPerEvent, PIECE, maker.law());
         final Walks walks;
         final boolean[] meets = new boolean[PIECE];
         final EventTally tally = new EventTally();
 
         Piece(Set<Attribute> columns, Lattice lattice) {
             events = new EventBlock(columns, PIECE);
-            walks = new Walks(lattice, PIECE * raysPerEvent);
+            walks = new Walks(lattice, PIECE * raysPerEvent, maker.law());
         }
 
         void make(EventBlock block, int from, int to) {
@@ -272,7 +274,7 @@ public final class EventLoader {
             for (int i = 0; i < bundle.size(); i++) {
                 meets[i] = false;
                 for (int k = i * raysPerEvent; k < (i + 1) * raysPerEvent; k++) {
-                    walks.set(k, bundle.rays(), k, bundle.weights()[k]);
+                    walks.set(k, bundle, k);
                     meets[i] |= walks.trim(k, support);
                 }
             }

@@ -11,7 +11,7 @@ import org.raysheaf.geometry.event.EventTally;
  * {@link RayOrder} within their subset. They come page by page, wherever they lie. Subset s holds every S-th event, in the order of the list, from the s-th on, so subsets are
  * alike.
  *
- * <p>Memory: {@value Walks#BYTES} bytes per ray, and 4 per event if there is a background; while loading up to 16 more per event of the
+ * <p>Memory: {@value Walks#BYTES} bytes per ray, {@value Walks#TIMED_BYTES} more if rays are timed, and 4 per event if there is a background; while loading up to 16 more per event of the
  * list. Immutable once loaded; made by {@link EventLoader}.
  */
 public final class EventStore implements AutoCloseable {

@@ -18,6 +18,9 @@ public final class Joseph {
      */
     private static final float ROUNDING = 3 << 22;
 
+    /** e^(−0.14). */
+    private static final float AT_CENTRE = 0.8693582f;
+
     private static final int ROUNDING_BITS = Float.floatToRawIntBits(ROUNDING);
 
     private final Lattice lattice;
@@ -31,7 +34,11 @@ public final class Joseph {
 
     private final float[] fractionsU;
     private final float[] fractionsV;
+    /** Per plane of a timed ray: its weight, 1 where the density is highest. */
+    private final float[] weights;
+
     private int planes;
+    private boolean timed;
     private int strideU;
     private int strideV;
     private float step;
@@ -53,6 +60,7 @@ public final class Joseph {
         lowers = new int[most];
         fractionsU = new float[most];
         fractionsV = new float[most];
+        weights = new float[most];
     }
 
     /**
@@ -70,6 +78,31 @@ public final class Joseph {
         sample(planes, counting, walks.u[k], walks.du[k], roundedU, fractionsU);
         sample(planes, counting, walks.v[k], walks.dv[k], roundedV, fractionsV);
         locate(walks.first(k) * lattice.stride(axis), lattice.stride(axis));
+        timed = walks.timed();
+        if (timed) {
+            weigh(planes, counting, walks.centres[k], walks.sharpness[k], weights);
+        }
+    }
+
+    /**
+     * The weights e^(−y), y = ½ ((j − centre) · sharpness)², of planes within {@link Walks#REACH} widths of the centre, so that y ≤ 4.5. From
+     * the Taylor series of e^(0.14 − y/16), the argument of which is at most 0.142 either way (error below 10⁻⁷ after six terms, and 1.2·10⁻⁷
+     * in single precision), and four squarings, which make that 16 times larger: 4·10⁻⁶. In this form eight planes are done at once;
+     * a recurrence from plane to plane would wait for itself, and lose digits along the way.
+     */
+    static void weigh(int planes, float[] counting, float centre, float sharpness, float[] weights) {
+        float scale = 0.17677669f * sharpness; // √(½ / 16)
+        float start = -centre * scale;
+        for (int j = 0; j < planes; j++) {
+            float x = start + scale * counting[j];
+            float z = 0.14f - x * x;
+            float e =
+                    AT_CENTRE * (1 + z * (1 + z * (0.5f + z * (0.16666667f + z * (0.041666668f + z * 0.008333334f)))));
+            e *= e;
+            e *= e;
+            e *= e;
+            weights[j] = e * e;
+        }
     }
 
     /** Splits the coordinates start + j · slope into the voxel below, still offset by ROUNDING, and the rest. */
@@ -94,12 +127,15 @@ public final class Joseph {
     }
 
     /**
-     * The weighted line integral of an image along the ray: step · Σ samples.
+     * The weighted line integral of an image along the ray: step · Σ samples, each times its density if the ray is timed.
      *
      * @param image values on the lattice, zeros in the border
-     * @return the integral (unit of the image times mm); 0 if the walk is empty
+     * @return the integral (unit of the image times mm, or unit of the image if timed); 0 if the walk is empty
      */
     public float forward(float[] image) {
+        if (timed) {
+            return step * (strideV == 1 ? timedSum(image, 1) : timedSum(image, strideV));
+        }
         // A constant stride lets the compiler test the bounds of two neighbours at once.
         return step * (strideV == 1 ? sum(image, 1) : sum(image, strideV));
     }
@@ -117,6 +153,19 @@ public final class Joseph {
         return sum;
     }
 
+    private float timedSum(float[] image, int next) {
+        float sum = 0;
+        for (int j = 0; j < planes; j++) {
+            int low = lowers[j];
+            int high = low + strideU;
+            float fv = fractionsV[j];
+            float a = image[low] + fv * (image[low + next] - image[low]);
+            float b = image[high] + fv * (image[high + next] - image[high]);
+            sum += weights[j] * (a + fractionsU[j] * (b - a));
+        }
+        return sum;
+    }
+
     /**
      * The exact transpose of {@link #forward}: adds amount · (weight of the voxel in the line integral) to every voxel.
      *
@@ -124,7 +173,13 @@ public final class Joseph {
      * @param accumulator values on the lattice, added to
      */
     public void back(float amount, float[] accumulator) {
-        if (strideV == 1) {
+        if (timed) {
+            if (strideV == 1) {
+                timedSpread(amount * step, accumulator, 1);
+            } else {
+                timedSpread(amount * step, accumulator, strideV);
+            }
+        } else if (strideV == 1) {
             spread(amount * step, accumulator, 1);
         } else {
             spread(amount * step, accumulator, strideV);
@@ -135,6 +190,22 @@ public final class Joseph {
         for (int j = 0; j < planes; j++) {
             int low = lowers[j];
             int high = low + strideU;
+            float b = amount * fractionsU[j];
+            float a = amount - b;
+            float aNext = a * fractionsV[j];
+            float bNext = b * fractionsV[j];
+            accumulator[low] += a - aNext;
+            accumulator[low + next] += aNext;
+            accumulator[high] += b - bNext;
+            accumulator[high + next] += bNext;
+        }
+    }
+
+    private void timedSpread(float whole, float[] accumulator, int next) {
+        for (int j = 0; j < planes; j++) {
+            int low = lowers[j];
+            int high = low + strideU;
+            float amount = whole * weights[j];
             float b = amount * fractionsU[j];
             float a = amount - b;
             float aNext = a * fractionsV[j];

@@ -10,6 +10,9 @@ import java.util.Arrays;
  * lattice. All four are measured in voxels of displacement, slopes by what they add from the middle to the end of the lattice, so that
  * points at distance 1 are rays that are nowhere much more than a voxel apart. Rays are sorted along a Hilbert curve through this space,
  * which never jumps; its index is computed as in J. Skilling, "Programming the Hilbert curve", AIP Conference Proceedings 707 (2004) 381.
+ *
+ * <p>A timed ray visits a short stretch only, so where that lies says more than where it points: the place of its
+ * middle takes three of the four dimensions, and one of its slopes the last.
  */
 final class RayOrder {
     /** Bits per coordinate, so 256 cells over twice the width of the lattice. */
@@ -58,13 +61,17 @@ final class RayOrder {
     private static long code(Walks walks, int k) {
         int axis = walks.axis(k);
         float half = 0.5f * walks.lattice().planes(axis);
-        float toMiddle = half - walks.first(k);
+        float toMiddle = walks.timed() ? 0.5f * walks.planes(k) : half - walks.first(k);
         float widthU = walks.lattice().planes(axis == 0 ? 1 : 0);
         float widthV = walks.lattice().planes(axis == 2 ? 1 : 2);
         int slopeU = cell(walks.du[k] * half, widthU);
         int slopeV = cell(walks.dv[k] * half, widthV);
         int placeV = cell(walks.v[k] + walks.dv[k] * toMiddle - 0.5f * widthV, widthV);
         int placeU = cell(walks.u[k] + walks.du[k] * toMiddle - 0.5f * widthU, widthU);
+        if (walks.timed()) {
+            int placeW = cell(walks.first(k) + 0.5f * walks.planes(k) - half, 2 * half);
+            return ((long) axis << (4 * BITS)) | hilbert(placeW, placeV, placeU, slopeU);
+        }
         return ((long) axis << (4 * BITS)) | hilbert(slopeU, slopeV, placeV, placeU);
     }
 

@@ -9,6 +9,7 @@ import java.util.List;
 import java.util.function.Consumer;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.port.Scratch;
+import org.raysheaf.geometry.sheaf.SheafBundle.WeightLaw;
 
 /**
  * Segments in a scratch file, column after column. A visit reads them page by page into arrays of its own, so that memory does not grow
@@ -28,14 +29,16 @@ final class ScratchShelf implements Shelf {
     private final Scratch.File file;
     private final Lattice lattice;
     private final int rays;
+    private final WeightLaw law;
     private final List<Segment> segments = new ArrayList<>();
 
     private record Segment(long at, int events, boolean background) {}
 
-    ScratchShelf(Scratch.File file, Lattice lattice, int raysPerEvent) {
+    ScratchShelf(Scratch.File file, Lattice lattice, int raysPerEvent, WeightLaw law) {
         this.file = file;
         this.lattice = lattice;
         this.rays = raysPerEvent;
+        this.law = law;
     }
 
     @Override
@@ -77,7 +80,7 @@ final class ScratchShelf implements Shelf {
     public void each(int segment, int from, int to, int number, Consumer<EventPage> visitor) {
         Segment s = segments.get(segment);
         int most = Math.min(PAGE, to - from);
-        Walks walks = new Walks(lattice, most * rays);
+        Walks walks = new Walks(lattice, most * rays, law);
         float[] background = s.background ? new float[most] : null;
         ByteBuffer bytes = buffer(most * rays);
         try {

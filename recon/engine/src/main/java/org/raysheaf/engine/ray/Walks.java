@@ -2,9 +2,11 @@ package org.raysheaf.engine.ray;
 
 import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
+import org.raysheaf.geometry.sheaf.SheafBundle;
+import org.raysheaf.geometry.sheaf.SheafBundle.WeightLaw;
 
 /**
- * Rays prepared for walking through a lattice, in flat arrays: 24 bytes each. A ray visits one voxel plane after another along its
+ * Rays prepared for walking through a lattice, in flat arrays: 24 bytes each, 32 if they are timed. A ray visits one voxel plane after another along its
  * dominant axis, the one across which it crosses most planes. On the j-th plane that it visits, j = 0, 1, …, it stands at
  *
  * <pre>
@@ -13,10 +15,28 @@ import java.util.concurrent.ForkJoinPool;
  *
  * <p>where u and v are the other two axes, in order; each plane counts with the length of the ray from plane to plane times the
  * weight of the ray. Planes lie between the two end points of the ray and within the grid. A ray that visits no plane is empty.
+ *
+ * <p>On a timed ray each plane also counts with a normal density (1/mm), e^(−½ ((j − centre)/width)²) / (√(2π) · width · length from plane to
+ * plane), centre and width in planes. Between planes the image is taken as linear, as in Joseph's sum, so the density is smeared by a triangle of
+ * one plane either way: width² = (σ / length)² + 1/6. Planes further than {@value #REACH} widths from the centre are left out, where {@link #LOSS} of the
+ * density lies; what is kept is divided by 1 − LOSS, so that the weights of a plane, integrated over all times, are those of the plain ray.
  */
 public final class Walks {
     /** Memory that one walk takes (bytes). */
     public static final int BYTES = 24;
+
+    /** Memory that centre and width of a timed walk take besides (bytes). */
+    public static final int TIMED_BYTES = 8;
+
+    /** How far from its centre, in widths, the density of a timed ray is followed. */
+    public static final double REACH = 3;
+
+    /** Share of a normal density that lies further out than {@link #REACH} standard deviations: 1 − erf(3/√2). */
+    public static final double LOSS = 2.699796063e-3;
+
+    private static final double DENSITY = 1 / ((1 - LOSS) * Math.sqrt(2 * Math.PI));
+
+    private static final float[] PLAIN = new float[0];
 
     /**
      * Coordinates keep this share of n − 1 away from 0 and n − 1, so that both neighbours of a sample exist. Rounding cannot undo that:
@@ -34,6 +54,7 @@ public final class Walks {
     private static final int PLANE = (1 << 15) - 1;
 
     private final Lattice lattice;
+    private final boolean timed;
     /** Dominant axis, first and last plane, packed: axis · 2³⁰ + first · 2¹⁵ + last. */
     int[] spans;
 
@@ -41,16 +62,32 @@ public final class Walks {
     float[] du;
     float[] v;
     float[] dv;
-    /** Length from plane to plane times the weight of the ray (mm). */
+    /** Length from plane to plane times the weight of the ray (mm); if timed, times the density at its centre (no unit). */
     float[] steps;
+
+    /** The plane, counted from the first, at which the density is highest; no array elements if plain. */
+    float[] centres;
+    /** One over the width (1/planes); no array elements if plain. */
+    float[] sharpness;
+
+    /**
+     * Room for plain walks; all are empty at first.
+     *
+     * @param lattice what they walk through
+     * @param capacity how many, at least 0
+     */
+    public Walks(Lattice lattice, int capacity) {
+        this(lattice, capacity, WeightLaw.PLAIN);
+    }
 
     /**
      * Room for walks; all are empty at first.
      *
      * @param lattice what they walk through
      * @param capacity how many, at least 0
+     * @param law the weight along them
      */
-    public Walks(Lattice lattice, int capacity) {
+    public Walks(Lattice lattice, int capacity, WeightLaw law) {
         this.lattice = lattice;
         spans = new int[capacity];
         u = new float[capacity];
@@ -58,6 +95,9 @@ public final class Walks {
         v = new float[capacity];
         dv = new float[capacity];
         steps = new float[capacity];
+        timed = law == WeightLaw.GAUSSIAN;
+        centres = timed ? new float[capacity] : PLAIN;
+        sharpness = timed ? new float[capacity] : PLAIN;
         Arrays.fill(spans, EMPTY);
     }
 
@@ -77,6 +117,15 @@ public final class Walks {
      */
     public int capacity() {
         return spans.length;
+    }
+
+    /**
+     * Whether planes count with a density along the ray.
+     *
+     * @return false if all count alike
+     */
+    public boolean timed() {
+        return timed;
     }
 
     /**
@@ -110,7 +159,50 @@ public final class Walks {
     }
 
     /**
-     * Prepares a ray. Rays of no length, with ends that are no finite numbers, or that miss the lattice become empty. Different walks
+     * Prepares a ray of a bundle of the same law.
+     *
+     * @param k number of the walk
+     * @param bundle the rays
+     * @param ray which ray of these
+     */
+    public void set(int k, SheafBundle bundle, int ray) {
+        set(k, bundle.rays(), ray, bundle.weights()[ray]);
+        if (timed && spans[k] != EMPTY) {
+            time(k, bundle.rays(), 6 * ray, bundle.centresMm()[ray], bundle.sdsMm()[ray]);
+        }
+    }
+
+    /** Gives a walk, prepared as a plain one, a density and shortens it to the reach of that. */
+    private void time(int k, float[] rays, int at, double centreMm, double sdMm) {
+        int axis = axis(k);
+        double from = lattice.coordinate(axis, rays[at], rays[at + 1], rays[at + 2]);
+        double to = lattice.coordinate(axis, rays[at + 3], rays[at + 4], rays[at + 5]);
+        double length = lattice.spacingMm(axis)
+                * Math.sqrt(1
+                        + square(du[k], lattice.spacingMm(axis == 0 ? 1 : 0) / lattice.spacingMm(axis))
+                        + square(dv[k], lattice.spacingMm(axis == 2 ? 1 : 2) / lattice.spacingMm(axis)));
+        double centre = from + Math.signum(to - from) * centreMm / length;
+        double width = Math.sqrt(square(sdMm, 1 / length) + 1.0 / 6);
+        int first = first(k);
+        int last = first + planes(k) - 1;
+        int low = (int) Math.max(first, Math.ceil(centre - REACH * width));
+        int high = (int) Math.min(last, Math.floor(centre + REACH * width));
+        if (!(Math.abs(centre) < Double.POSITIVE_INFINITY && width < Double.POSITIVE_INFINITY && low <= high)) {
+            spans[k] = EMPTY;
+            return;
+        }
+        shorten(k, low - first, high - first);
+        centres[k] = (float) (centre - low);
+        sharpness[k] = (float) (1 / width);
+        steps[k] *= (float) (DENSITY / (width * length));
+    }
+
+    private static double square(double value, double unit) {
+        return value * unit * (value * unit);
+    }
+
+    /**
+     * Prepares a plain ray. Rays of no length, with ends that are no finite numbers, or that miss the lattice become empty. Different walks
      * may be set by different threads at once.
      *
      * @param k number of the walk
@@ -214,10 +306,18 @@ public final class Walks {
             spans[k] = EMPTY;
             return false;
         }
+        shorten(k, from, to);
+        if (timed) {
+            centres[k] -= from;
+        }
+        return true;
+    }
+
+    /** Keeps only the planes from … to, counted from the first. */
+    private void shorten(int k, int from, int to) {
         u[k] += from * du[k];
         v[k] += from * dv[k];
         spans[k] = span(axis(k), first(k) + from, first(k) + to);
-        return true;
     }
 
     /** The bilinear sample of an image on the j-th plane of a walk. */
@@ -239,7 +339,7 @@ public final class Walks {
      * Copies a walk from elsewhere.
      *
      * @param k number of the walk here
-     * @param source walks through the same lattice
+     * @param source walks of the same law through the same lattice
      * @param from number of the walk there
      */
     public void copy(int k, Walks source, int from) {
@@ -249,11 +349,15 @@ public final class Walks {
         v[k] = source.v[from];
         dv[k] = source.dv[from];
         steps[k] = source.steps[from];
+        if (timed) {
+            centres[k] = source.centres[from];
+            sharpness[k] = source.sharpness[from];
+        }
     }
 
     /** The columns of single precision; shared. */
     float[][] floats() {
-        return new float[][] {u, du, v, dv, steps};
+        return timed ? new float[][] {u, du, v, dv, steps, centres, sharpness} : new float[][] {u, du, v, dv, steps};
     }
 
     /**
@@ -266,7 +370,7 @@ public final class Walks {
      * @return new walks
      */
     Walks arranged(long[] order, int run, boolean last, ForkJoinPool pool) {
-        Walks result = new Walks(lattice, 0);
+        Walks result = new Walks(lattice, 0, timed ? WeightLaw.GAUSSIAN : WeightLaw.PLAIN);
         result.spans = arranged(spans, order, run, pool);
         spans = last ? result.spans : spans;
         result.u = arranged(u, order, run, pool);
@@ -279,6 +383,12 @@ public final class Walks {
         dv = last ? result.dv : dv;
         result.steps = arranged(steps, order, run, pool);
         steps = last ? result.steps : steps;
+        if (timed) {
+            result.centres = arranged(centres, order, run, pool);
+            centres = last ? result.centres : centres;
+            result.sharpness = arranged(sharpness, order, run, pool);
+            sharpness = last ? result.sharpness : sharpness;
+        }
         return result;
     }
 

@@ -7,6 +7,7 @@ import static org.assertj.core.api.Assertions.within;
 import java.io.IOException;
 import java.util.ArrayList;
 import java.util.List;
+import java.util.Objects;
 import java.util.SplittableRandom;
 import java.util.concurrent.ForkJoinPool;
 import org.junit.jupiter.api.Test;
@@ -24,6 +25,7 @@ import org.raysheaf.geometry.phantom.Source;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.BlockPairKinds;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
+import org.raysheaf.geometry.response.FlightTimes;
 import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
 import org.raysheaf.geometry.response.PairLines;
@@ -191,6 +193,45 @@ class CorrectionsOfARingTest {
         // ∫ activity dl / 2π
         double trues = 100_000 * 10 / (2 * Math.PI);
         assertThat(scatter.perEtendue(HERE, THERE) / trues).isBetween(0.001, 0.05);
+    }
+
+    /** By offset, scatter adds up to what it is without times, looks alike from both ends, and lies where the activity is. */
+    @Test
+    void scatterByOffsetAddsUpToThePlainOne() {
+        Phantom water = Ring.water(12, 20, 0);
+        Phantom rod = new Phantom(new PhantomDescription(
+                "rod",
+                List.of(),
+                null,
+                List.of(),
+                List.of(new Source.Line("rod", new Vector3(8, 0, -10), new Vector3(8, 0, 10), 5))));
+        FlightTimes times = Objects.requireNonNull(FlightTimes.of(Ring.SYSTEM));
+        Image mu = PhantomMaps.attenuation(water, 1);
+        Image activity = PhantomMaps.activity(rod, 1);
+        Scatter plain = Scatter.of(Ring.FACES, Ring.window(), activity, mu, 200, POOL);
+        Scatter scatter = Scatter.of(Ring.FACES, Ring.window(), activity, mu, 200, times, POOL);
+        for (int there : new int[] {THERE, 3 * 25 + 2, 5 * 25 + 17}) {
+            assertThat(scatter.perEtendue(HERE, there)).isEqualTo(plain.perEtendue(HERE, there));
+            double sum = 0;
+            double moment = 0;
+            double stepMm = 0.5;
+            for (double x = -150; x <= 150; x += stepMm) {
+                double value = scatter.perEtendueMm(HERE, there, x);
+                assertThat(scatter.perEtendueMm(there, HERE, -x)).isCloseTo(value, within(1e-6 * (value + 1e-9)));
+                sum += value * stepMm;
+                moment += value * stepMm * x;
+            }
+            // the rectangle rule on straight pieces that are no whole number of steps
+            assertThat(sum).isCloseTo(plain.perEtendue(HERE, there), within(1e-3 * sum));
+            if (there == THERE) {
+                // Block 0 is at +x, 8 mm nearer to the rod. Photons that turn little have come straight from the rod,
+                // 8 mm from the middle of the line; the others have gone a few mm further.
+                assertThat(moment / sum).isCloseTo(8, within(2.0));
+            }
+        }
+        assertThat(scatter.scaled(2).perEtendueMm(HERE, THERE, 5))
+                .isCloseTo(2 * scatter.perEtendueMm(HERE, THERE, 5), within(1e-9));
+        assertThatThrownBy(() -> plain.perEtendueMm(HERE, THERE, 0)).hasMessageContaining("without times");
     }
 
     @Test
