@@ -69,8 +69,10 @@ final class RayOrder {
         int placeV = cell(walks.v[k] + walks.dv[k] * toMiddle - 0.5f * widthV, widthV);
         int placeU = cell(walks.u[k] + walks.du[k] * toMiddle - 0.5f * widthU, widthU);
         if (walks.timed()) {
+            // Short rays: where they are counts before where they go.
             int placeW = cell(walks.first(k) + 0.5f * walks.planes(k) - half, 2 * half);
-            return ((long) axis << (4 * BITS)) | hilbert(placeW, placeV, placeU, slopeU);
+            long place = hilbert(placeW >> 1, placeV >> 1, placeU >> 1);
+            return ((long) axis << (4 * BITS)) | (place << 10) | ((slopeV >> 3) << 5) | (slopeU >> 3);
         }
         return ((long) axis << (4 * BITS)) | hilbert(slopeU, slopeV, placeV, placeU);
     }
@@ -136,6 +138,46 @@ final class RayOrder {
         gray ^= gray >> 4;
         int index = SPREAD[a ^ gray] << 3 | SPREAD[b ^ gray] << 2 | SPREAD[c ^ gray] << 1 | SPREAD[d ^ gray];
         return Integer.toUnsignedLong(index);
+    }
+
+    /**
+     * The same transform of three coordinates.
+     *
+     * @param x0 coordinate, 0 to 127
+     * @param x1 coordinate, 0 to 127
+     * @param x2 coordinate, 0 to 127
+     * @return the index on the curve, 21 bits
+     */
+    static long hilbert(int x0, int x1, int x2) {
+        int a = x0;
+        int b = x1;
+        int c = x2;
+        for (int place = BITS - 2; place > 0; place--) {
+            int below = (1 << place) - 1;
+            a ^= below & -((a >> place) & 1);
+            int set = -((b >> place) & 1);
+            int swap = (a ^ b) & below & ~set;
+            a ^= (below & set) | swap;
+            b ^= swap;
+            set = -((c >> place) & 1);
+            swap = (a ^ c) & below & ~set;
+            a ^= (below & set) | swap;
+            c ^= swap;
+        }
+        b ^= a;
+        c ^= b;
+        int gray = c >> 1;
+        gray ^= gray >> 1;
+        gray ^= gray >> 2;
+        gray ^= gray >> 4;
+        long index = 0;
+        for (int bit = BITS - 2; bit >= 0; bit--) {
+            index = (index << 3)
+                    | ((((a ^ gray) >> bit) & 1) << 2)
+                    | ((((b ^ gray) >> bit) & 1) << 1)
+                    | (((c ^ gray) >> bit) & 1);
+        }
+        return index;
     }
 
     /**

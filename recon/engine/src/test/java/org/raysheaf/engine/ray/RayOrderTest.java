@@ -70,8 +70,8 @@ final class RayOrderTest {
     }
 
     /** The published loops, for any number of coordinates. */
-    private static long twin(int... x) {
-        for (int bit = 128; bit > 1; bit >>= 1) {
+    private static long twin(int bits, int... x) {
+        for (int bit = 1 << (bits - 1); bit > 1; bit >>= 1) {
             for (int i = 0; i < x.length; i++) {
                 if ((x[i] & bit) != 0) {
                     x[0] ^= bit - 1;
@@ -86,13 +86,13 @@ final class RayOrderTest {
             x[i] ^= x[i - 1];
         }
         int gray = 0;
-        for (int bit = 128; bit > 1; bit >>= 1) {
+        for (int bit = 1 << (bits - 1); bit > 1; bit >>= 1) {
             if ((x[x.length - 1] & bit) != 0) {
                 gray ^= bit - 1;
             }
         }
         long index = 0;
-        for (int bit = 7; bit >= 0; bit--) {
+        for (int bit = bits - 1; bit >= 0; bit--) {
             for (int coordinate : x) {
                 index = (index << 1) | (((coordinate ^ gray) >> bit) & 1);
             }
@@ -105,7 +105,9 @@ final class RayOrderTest {
         Random random = new Random(33);
         for (int i = 0; i < 10_000; i++) {
             int[] x = random.ints(4, 0, 256).toArray();
-            assertThat(RayOrder.hilbert(x[0], x[1], x[2], x[3])).isEqualTo(twin(x));
+            assertThat(RayOrder.hilbert(x[0], x[1], x[2], x[3])).isEqualTo(twin(8, x.clone()));
+            int[] y = {x[0] >> 1, x[1] >> 1, x[2] >> 1};
+            assertThat(RayOrder.hilbert(y[0], y[1], y[2])).isEqualTo(twin(7, y.clone()));
         }
     }
 
