@@ -96,7 +96,7 @@ public final class ConvergenceBench implements Callable<Integer> {
         Image end = null;
         double top = Double.NEGATIVE_INFINITY;
         for (String how : ends) {
-            String[] words = how.split(":");
+            String[] words = how.split(":", -1);
             Run run = new Run(data, words[0], Integer.parseInt(words[1]), Integer.parseInt(words[2]));
             List<Image> last = run.images(false);
             Image image = last.get(last.size() - 1);
@@ -113,7 +113,7 @@ public final class ConvergenceBench implements Callable<Integer> {
         double range = top - data.objective(data.uniform());
         out.printf(Locale.ROOT, "the objective rises by %.1f from a uniform image%n", range);
         for (String method : methods) {
-            String[] words = method.split(":");
+            String[] words = method.split(":", -1);
             int pass = 0;
             for (Image image : new Run(data, words[0], Integer.parseInt(words[1]), passes).images(true)) {
                 double gap = (top - data.objective(image)) / range;
@@ -129,6 +129,7 @@ public final class ConvergenceBench implements Callable<Integer> {
     }
 
     /** A list with its model, and the regions of a phantom in its grid. */
+    @SuppressWarnings("ArrayRecordComponent") // nobody compares them
     private record Data(
             ListFile list,
             CorrectedModel model,
