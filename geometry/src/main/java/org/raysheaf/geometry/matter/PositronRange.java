@@ -132,4 +132,29 @@ public final class PositronRange {
         } while (distance > csdaMm);
         return distance;
     }
+
+    /**
+     * The distribution seen along one axis: what {@link #drawMm} draws, in a direction drawn at random.
+     *
+     * @param xMm distance along the axis from the decay (mm), on either side
+     * @return share of annihilations per mm; over all x it adds up to 1
+     */
+    public double profile(double xMm) {
+        double x = Math.abs(xMm);
+        if (x >= csdaMm) {
+            return 0;
+        }
+        // A distance r is spread evenly over −r … r, so the profile is ∫ f(r)/2r dr from x to the bound.
+        double within = shareOfFirst * within(k1) + (1 - shareOfFirst) * within(k2);
+        return (shareOfFirst * farther(k1, x) + (1 - shareOfFirst) * farther(k2, x)) / within;
+    }
+
+    private double farther(double k, double x) {
+        return k / 2 * (Math.exp(-k * x) - Math.exp(-k * csdaMm));
+    }
+
+    /** Share of k² r e^(−kr) that lies within the bound. */
+    private double within(double k) {
+        return 1 - Math.exp(-k * csdaMm) * (1 + k * csdaMm);
+    }
 }

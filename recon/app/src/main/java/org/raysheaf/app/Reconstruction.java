@@ -35,6 +35,7 @@ import org.raysheaf.io.list.ListFile;
  * @param whole the image of all events (Bq/mL)
  * @param odd the image of the odd events, if halves were asked for
  * @param even the image of the even events, if halves were asked for
+ * @param blur the blur that was undone, or null
  * @param frames the images of parts of the list
  */
 record Reconstruction(
@@ -46,6 +47,7 @@ record Reconstruction(
         Estimate whole,
         @Nullable Estimate odd,
         @Nullable Estimate even,
+        @Nullable BlurChoice blur,
         List<FrameImage> frames) {
     static Reconstruction of(
             Path listPath,
@@ -65,7 +67,8 @@ record Reconstruction(
         noteUnusedDepths(list, systems, common);
         Grid grid = plan.grid().gridFor(systems.system());
         List<Frame> frames = Frame.of(plan.frames(), list, listPath);
-        Maker maker = new Maker(list, systems, plan, base, grid, work, common, pool);
+        BlurChoice blur = BlurChoice.of(plan, list, listPath, systems.system(), grid, pool);
+        Maker maker = new Maker(list, systems, plan, base, grid, blur, work, common, pool);
         CorrectedModel model = maker.model(list);
         Estimate whole = maker.estimate(list, model, EventSelection.ALL, "all");
         Estimate odd = plan.halves() ? maker.estimate(list, model, EventSelection.ODD, "odd") : null;
@@ -74,7 +77,7 @@ record Reconstruction(
         for (Frame frame : frames) {
             images.add(maker.image(frame));
         }
-        return new Reconstruction(list, systems, plan, grid, model, whole, odd, even, images);
+        return new Reconstruction(list, systems, plan, grid, model, whole, odd, even, blur, images);
     }
 
     private static void noteUnusedDepths(ListFile list, Systems systems, Common common) {
@@ -110,6 +113,7 @@ record Reconstruction(
             ReconstructionPlan plan,
             @Nullable Path base,
             Grid grid,
+            @Nullable BlurChoice blur,
             WorkFolder work,
             Common common,
             ForkJoinPool pool) {
@@ -132,7 +136,13 @@ record Reconstruction(
                     work.storage(),
                     pool,
                     progress)) {
-                return new Estimator(store, model.counts(), start, plan.estimation(), pool)
+                return new Estimator(
+                                store,
+                                model.counts(),
+                                blur == null ? null : blur.model(),
+                                start,
+                                plan.estimation(),
+                                pool)
                         .run(
                                 new PassLines(plan.estimation().passes(), common),
                                 progress,

@@ -19,6 +19,7 @@ import org.raysheaf.geometry.settings.Default;
  * @param frames parts of the list that get images of their own, or null for none
  * @param motion path of a description of how detector or subject moved, or null if both stood still
  * @param raysPerEvent lines that stand for an event: 1, or more that are spread over its crystals or the blur of its measured points
+ * @param blur what blurs activity before rays see it, to be undone; null to undo nothing
  * @param sensitivity how the sensitivity is found
  */
 record ReconstructionPlan(
@@ -31,6 +32,7 @@ record ReconstructionPlan(
         @Nullable FrameSettings frames,
         @Nullable String motion,
         @Default("1") int raysPerEvent,
+        @Nullable BlurSettings blur,
         @Default("{}") SensitivitySettings sensitivity) {
     ReconstructionPlan {
         new Positions(raysPerEvent, false, false); // states the bounds
@@ -48,6 +50,7 @@ record ReconstructionPlan(
                 null,
                 null,
                 1,
+                null,
                 SensitivitySettings.AUTO);
     }
 
@@ -72,6 +75,7 @@ record ReconstructionPlan(
                 frames,
                 motion,
                 raysPerEvent,
+                blur,
                 sensitivity);
     }
 }

@@ -172,6 +172,8 @@ final class ResultFolder {
         if (!done.frames().isEmpty()) {
             results.put("frames", done.frames().stream().map(FrameImage::named).toList());
         }
+        BlurChoice blur = done.blur();
+        results.put("blur", blur == null ? new NotKnown("nothing was undone; see the key blur") : blur.named());
         results.put("passes", passes(done.whole()));
         results.put(
                 "kept_pass",

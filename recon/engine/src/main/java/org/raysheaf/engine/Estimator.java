@@ -7,6 +7,7 @@ import java.util.Locale;
 import java.util.Optional;
 import java.util.concurrent.ForkJoinPool;
 import org.jspecify.annotations.Nullable;
+import org.raysheaf.engine.blur.BlurModel;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.port.Checkpoints;
@@ -44,14 +45,15 @@ public final class Estimator {
      *     support have no sensitivity
      */
     public Estimator(EventStore store, Image sensitivity, EstimationSettings settings, ForkJoinPool pool) {
-        this(store, sensitivity, null, settings, pool);
+        this(store, sensitivity, null, null, settings, pool);
     }
 
     /**
-     * Prepares an estimate that starts from an image.
+     * Prepares an estimate that starts from an image, of activity before it was blurred.
      *
      * @param store the events, dealt into {@link EstimationSettings#parts} subsets
-     * @param sensitivity expected counts of the whole list per Bq/mL in each voxel; above 0 wherever the store's support is
+     * @param sensitivity expected counts of the whole list per Bq/mL in each voxel, as without blur; above 0 wherever the store's support is
+     * @param blur what blurs activity before rays see it, or null for nothing
      * @param start activity concentration (Bq/mL) on the store's grid, finite; null for a uniform one. Where it is less than {@value #FAINT} of
      *     what is typical, that is taken, since what is nothing could not grow
      * @param settings method, passes, subsets, lanes, filter
@@ -62,6 +64,7 @@ public final class Estimator {
     public Estimator(
             EventStore store,
             Image sensitivity,
+            @Nullable BlurModel blur,
             @Nullable Image start,
             EstimationSettings settings,
             ForkJoinPool pool) {
@@ -71,8 +74,8 @@ public final class Estimator {
         }
         this.store = store;
         this.settings = settings;
-        this.likelihood =
-                new Likelihood(store, sensitivity, settings.subsets(), settings.heldOutEvery(), settings.lanes(), pool);
+        this.likelihood = new Likelihood(
+                store, sensitivity, blur, settings.subsets(), settings.heldOutEvery(), settings.lanes(), pool);
         this.objective = new Objective(likelihood, settings.prior());
         this.rule = rule(start);
         this.best = new float[settings.heldOutEvery() > 0 ? rule.image().length : 0];

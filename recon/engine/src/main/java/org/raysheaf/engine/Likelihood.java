@@ -4,6 +4,9 @@ import java.util.Arrays;
 import java.util.concurrent.ForkJoinPool;
 import java.util.function.IntPredicate;
 import java.util.stream.IntStream;
+import org.jspecify.annotations.Nullable;
+import org.raysheaf.engine.blur.Blur;
+import org.raysheaf.engine.blur.BlurModel;
 import org.raysheaf.engine.ray.EventStore;
 import org.raysheaf.engine.ray.Lattice;
 import org.raysheaf.geometry.frame.Image;
@@ -24,6 +27,9 @@ import org.raysheaf.geometry.port.Progress;
  * <p>Events may be kept out of all subsets, to be asked later how well an image explains them; sums, φ and sensitivity are then those of the
  * others.
  *
+ * <p>With a blur B the lengths and the sensitivity are those of the blurred image: Bᵀ stands before both sums over events and before s, so
+ * whoever asks sees nothing but other numbers.
+ *
  * <p>Used by one thread, works on the threads of the pool; the result never depends on how many there are.
  */
 final class Likelihood {
@@ -37,6 +43,11 @@ final class Likelihood {
 
     private final int[] heldOutParts;
     private final long events;
+    private final @Nullable Blur blur;
+    /** The blurred image on the way to the events, then what the events say about it. */
+    private final float[] blurred;
+
+    private final float[] unblurred;
     private Progress progress = Progress.SILENT;
     private String stage = "";
 
@@ -50,18 +61,34 @@ final class Likelihood {
      * @throws IllegalArgumentException if the sensitivity has another shape, or if voxels of the support have none
      */
     Likelihood(EventStore store, Image sensitivity, int lanes, ForkJoinPool pool) {
-        this(store, sensitivity, store.subsets(), 0, lanes, pool);
+        this(store, sensitivity, null, store.subsets(), 0, lanes, pool);
     }
 
     /**
-     * Prepares the sums, with events kept out.
+     * Prepares the sums, with blur and with events kept out.
      *
+     * @param sensitivity as without blur
+     * @param model what blurs the image, or null for nothing
      * @param subsets in how many subsets to take the parts of the store
      * @param heldOutEvery k: part k − 1, 2k − 1 … of the store, and so every k-th event, is kept out; 0 for none
      */
-    Likelihood(EventStore store, Image sensitivity, int subsets, int heldOutEvery, int lanes, ForkJoinPool pool) {
+    Likelihood(
+            EventStore store,
+            Image sensitivity,
+            @Nullable BlurModel model,
+            int subsets,
+            int heldOutEvery,
+            int lanes,
+            ForkJoinPool pool) {
         this.store = store;
-        this.sensitivity = store.lattice().fromImage(sensitivity);
+        float[] geometric = store.lattice().fromImage(sensitivity);
+        blur = model == null ? null : new Blur(model, lattice(), support(), pool);
+        blurred = new float[blur == null ? 0 : geometric.length];
+        unblurred = new float[blurred.length];
+        this.sensitivity = blur == null ? geometric : new float[geometric.length];
+        if (blur != null) {
+            blur.transpose(geometric, this.sensitivity);
+        }
         heldOutParts = parts(part -> heldOut(part, heldOutEvery));
         int[] used = parts(part -> !heldOut(part, heldOutEvery));
         members = new int[subsets][];
@@ -166,7 +193,16 @@ final class Likelihood {
      */
     double visit(int subset, float[] image) {
         progress.remark(subsets() == 1 ? stage : stage + ", subset " + (subset + 1) + " of " + subsets());
-        return sum(members[subset], image, true);
+        return sum(members[subset], seen(image), true);
+    }
+
+    /** What the events see of an image. */
+    private float[] seen(float[] image) {
+        if (blur == null) {
+            return image;
+        }
+        blur.apply(image, blurred);
+        return blurred;
     }
 
     /**
@@ -177,8 +213,9 @@ final class Likelihood {
      */
     double value(float[] image) {
         double sum = -expectedEvents(image);
+        float[] seen = seen(image);
         for (int[] parts : members) {
-            sum += sum(parts, image, false);
+            sum += sum(parts, seen, false);
         }
         return sum;
     }
@@ -195,17 +232,17 @@ final class Likelihood {
         }
         progress.remark(stage + ", events held out");
         double share = count(heldOutParts) / (double) events;
-        return sum(heldOutParts, image, false) - share * expectedEvents(image);
+        return sum(heldOutParts, seen(image), false) - share * expectedEvents(image);
     }
 
     /** Σ_e ln q_e over parts of the store. */
-    private double sum(int[] parts, float[] image, boolean back) {
+    private double sum(int[] parts, float[] seen, boolean back) {
         double[] logSums = new double[lanes.count()];
         lanes.each(lane -> {
             for (int part : parts) {
                 int first = runs[part][lane];
                 int end = runs[part][lane + 1];
-                logSums[lane] += Visit.events(store, first, end, image, back ? lanes.accumulator(lane) : null);
+                logSums[lane] += Visit.events(store, first, end, seen, back ? lanes.accumulator(lane) : null);
                 progress.advance(end - first);
             }
         });
@@ -223,7 +260,16 @@ final class Likelihood {
      * @return the sum of what the work returned, in the order of the voxels
      */
     double collect(Lanes.VoxelWork work) {
-        return lanes.collect(work);
+        Blur operator = blur;
+        if (operator == null) {
+            return lanes.collect(work);
+        }
+        lanes.collect((first, last, sums) -> {
+            System.arraycopy(sums, first, blurred, first, last - first);
+            return 0;
+        });
+        operator.transpose(blurred, unblurred);
+        return lanes.voxels((first, last) -> work.apply(first, last, unblurred));
     }
 
     /**

@@ -12,6 +12,8 @@ import org.junit.jupiter.api.AfterAll;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.params.ParameterizedTest;
 import org.junit.jupiter.params.provider.ValueSource;
+import org.raysheaf.engine.blur.BlurModel;
+import org.raysheaf.engine.blur.Mixture;
 import org.raysheaf.engine.ray.EventBackground;
 import org.raysheaf.engine.ray.EventLoader;
 import org.raysheaf.engine.ray.EventSelection;
@@ -60,6 +62,27 @@ final class EstimatorTest {
         }
         assertThat(weightedSum(estimate.image())).isCloseTo(store.events(), within(BALANCE * EVENTS));
         assertThat(estimate.passes()).hasSize(12);
+    }
+
+    /** With a blur too: what Bᵀ does to both sides keeps them in balance, to the rounding of its sums of a few hundred terms. */
+    @Test
+    void blurredUpdatesExplainAllEventsAndTheLikelihoodNeverFalls() throws Exception {
+        EventStore store = load(EventSelection.ALL, 1);
+        BlurModel blur =
+                new BlurModel(new Mixture(List.of(new Mixture.Part(0.6, 0.7), new Mixture.Part(0.4, 2))), null);
+        Estimate estimate = new Estimator(store, SENSITIVITY, blur, null, new EstimationSettings(12, 1, 4, 0), POOL)
+                .run(PassListener.SILENT, Progress.SILENT);
+        double before = Double.NEGATIVE_INFINITY;
+        for (PassReport pass : estimate.passes()) {
+            assertThat(pass.expectedEvents() / store.events()).isCloseTo(1, within(10 * BALANCE));
+            assertThat(pass.logLikelihood()).isGreaterThan(before);
+            before = pass.logLikelihood();
+        }
+        double plain = run(store, new EstimationSettings(12, 1, 4, 0), POOL)
+                .passes()
+                .get(11)
+                .logLikelihood();
+        assertThat(before).isNotEqualTo(plain);
     }
 
     @Test

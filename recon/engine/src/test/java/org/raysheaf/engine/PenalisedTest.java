@@ -262,7 +262,7 @@ final class PenalisedTest {
     void startsFromAnImageAndRisesFromThere() throws Exception {
         Image before = run(settings(10, 1, Method.EM, null));
         EstimationSettings one = settings(1, 1, Method.EM, null);
-        Image next = new Estimator(SCAN.store(1, POOL), SCAN.sensitivity, before, one, POOL)
+        Image next = new Estimator(SCAN.store(1, POOL), SCAN.sensitivity, null, before, one, POOL)
                 .run(PassListener.SILENT, Progress.SILENT)
                 .image();
         Image eleven = run(settings(11, 1, Method.EM, null));

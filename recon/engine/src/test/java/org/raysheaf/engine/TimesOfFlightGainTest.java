@@ -187,7 +187,6 @@ final class TimesOfFlightGainTest {
     @Tag("proof")
     void varianceFallsAsThePublicationSays() throws IOException {
         double[] variance = {variance(false), variance(true)};
-        System.out.printf("variance gain %.3f, publication %.3f%n", variance[0] / variance[1], GAIN);
         assertThat(variance[0] / variance[1]).isCloseTo(GAIN, within(0.15 * GAIN));
     }
 

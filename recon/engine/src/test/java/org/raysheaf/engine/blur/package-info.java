@@ -1,0 +1,4 @@
+@NullMarked
+package org.raysheaf.engine.blur;
+
+import org.jspecify.annotations.NullMarked;
