@@ -40,6 +40,7 @@ record BlurChoice(BlurModel model, Map<String, Object> named) {
         if (settings.positronRange()) {
             Mixture range = Mixture.ofRange(scheme(list.header().nuclide(), path));
             named.put("positron_range_rms_mm", range.rmsMm());
+            named.put("positron_range_fwhm_mm", range.widthMm(0.5));
             named.put("positron_range_fwtm_mm", range.widthMm(0.1));
             kernel = kernel.then(range);
         }
@@ -48,9 +49,15 @@ record BlurChoice(BlurModel model, Map<String, Object> named) {
         named.put("crystal_width", width);
         ChordWidths chords = null;
         if (width || settings.acollinearityFwhmDeg() > 0) {
+            if (plan.motion() != null) {
+                throw new IOException(
+                        "blur: the widths of acollinearity and crystals would have to follow the motion, which"
+                                + " they do not yet; with motion, write blur: {acollinearity_fwhm_deg: 0, crystal_width: false}");
+            }
             chords = ChordWidths.of(system, grid, settings.acollinearityFwhmDeg(), width, pool);
             named.put("acollinearity_and_crystals_fwhm_in_the_middle_mm", chords.centralFwhmMm());
         }
+        named.put("gaussians", kernel.parts());
         named.put("note", "undoing blur sharpens edges and lets them overshoot by some per cent");
         return new BlurChoice(new BlurModel(kernel, chords), named);
     }

@@ -13,7 +13,7 @@ import org.raysheaf.geometry.settings.Problems;
  *     (degrees), 0 to 5
  * @param crystalWidth whether crystals are wider than a line; without it, where an event is one ray that ends in the middle of
  *     crystals: several rays are spread over them, and measured points do not know them
- * @param kernel a measured blur beside these, as a sum of Gaussians; empty for none
+ * @param kernel a measured blur beside these, as a sum of up to four Gaussians; empty for none. The work grows with their number
  */
 record BlurSettings(
         @Default("true") boolean positronRange,
@@ -35,6 +35,7 @@ record BlurSettings(
         }
     }
 
+    private static final int MOST_GAUSSIANS = 4;
     private static final double ROUNDING = 1e-6;
 
     BlurSettings {
@@ -42,6 +43,10 @@ record BlurSettings(
         double sum = kernel.stream().mapToDouble(Gaussian::share).sum();
         new Problems("blur")
                 .within("acollinearity_fwhm_deg", acollinearityFwhmDeg, 0, 5)
+                .rule(
+                        kernel.size() <= MOST_GAUSSIANS,
+                        "kernel",
+                        "expected at most " + MOST_GAUSSIANS + " Gaussians, found " + kernel.size())
                 .rule(
                         kernel.isEmpty() || Math.abs(sum - 1) <= ROUNDING,
                         "kernel",

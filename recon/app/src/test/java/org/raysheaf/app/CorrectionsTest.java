@@ -134,22 +134,7 @@ class CorrectionsTest {
     }
 
     private static double mean(Image image, double fromMm, double toMm, double lowMm, double highMm) {
-        Grid grid = image.grid();
-        double sum = 0;
-        int n = 0;
-        for (int x = 0; x < grid.nx(); x++) {
-            for (int y = 0; y < grid.ny(); y++) {
-                for (int z = 0; z < grid.nz(); z++) {
-                    Vector3 p = grid.centre(x, y, z);
-                    double r = Math.hypot(p.x(), p.y());
-                    if (r >= fromMm && r < toMm && p.z() >= lowMm && p.z() < highMm) {
-                        sum += image.at(x, y, z);
-                        n++;
-                    }
-                }
-            }
-        }
-        return sum / n;
+        return Region.mean(image, Region.shell(fromMm, toMm, lowMm, highMm));
     }
 
     private static double cupping(Image image) {

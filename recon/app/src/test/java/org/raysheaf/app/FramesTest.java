@@ -22,17 +22,6 @@ import org.raysheaf.io.hdf5.Hdf5Writer;
 
 /** Frames and gates of a list of F-18 that decays through ten minutes and beats once a second. */
 class FramesTest {
-    private static final String SYSTEM = """
-            raysheaf: system/1
-            name: pair
-            field_of_view: {radius_mm: 10, length_mm: 24}
-            materials: [{name: lyso, attenuation_length_mm: 12}]
-            blocks:
-              - {kind: crystal_block, name: tile, columns: 8, rows: 8, pitch_mm: [3, 3, 10], crystal_mm: [2.8, 2.8, 10], material: lyso}
-            placements:
-              - {kind: single, block: tile, centre_mm: [20, 0, 0], facing: [-1, 0, 0]}
-              - {kind: single, block: tile, centre_mm: [-20, 0, 0], facing: [1, 0, 0]}
-            """;
     private static final int EVENTS = 40_000;
     private static final double DURATION_S = 3600;
     private static final double HALF_LIFE_S = 6586.2;
@@ -59,21 +48,12 @@ class FramesTest {
             gates[i] = (byte) (times[i] % 40 < 10 ? 1 : 0);
         }
         Path file = folder.resolve("list.h5");
-        try (Hdf5Writer writer = Hdf5Writer.create(file, false)) {
-            writer.root().attribute("raysheaf", "list/1");
-            writer.root().attribute("live_time_s", DURATION_S);
+        try (Hdf5Writer writer = TilePair.begin(file, DURATION_S)) {
             writer.root().attribute("duration_s", DURATION_S);
             writer.root().attribute("nuclide", "F-18");
             writer.root().attribute("half_life_s", HALF_LIFE_S);
             writer.root().attribute("positron_branching", 0.9673);
-            writer.root().attribute("start", "2026-12-01T09:00:00Z");
-            writer.root().text("system", SYSTEM);
-            for (int tile = 0; tile < 2; tile++) {
-                int[] values = random.ints(EVENTS, 64 * tile, 64 * (tile + 1)).toArray();
-                writer.root()
-                        .column(tile == 0 ? "element_a" : "element_b", ElementType.UINT32, 1 << 10, Compression.NONE)
-                        .append(values, 0, EVENTS);
-            }
+            TilePair.randomPairs(writer, EVENTS, random);
             writer.root()
                     .column("time_ps", ElementType.INT64, 1 << 10, Compression.NONE)
                     .append(ps, 0, EVENTS);

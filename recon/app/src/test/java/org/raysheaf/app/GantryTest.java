@@ -20,7 +20,6 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.ListHeader;
-import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
 import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.io.list.ListFile;
@@ -133,20 +132,7 @@ class GantryTest {
     }
 
     private static double mean(Image image, Vector3 centre, double radiusMm) {
-        Grid grid = image.grid();
-        double sum = 0;
-        int n = 0;
-        for (int x = 0; x < grid.nx(); x++) {
-            for (int y = 0; y < grid.ny(); y++) {
-                for (int z = 0; z < grid.nz(); z++) {
-                    if (grid.centre(x, y, z).minus(centre).norm() <= radiusMm) {
-                        sum += image.at(x, y, z);
-                        n++;
-                    }
-                }
-            }
-        }
-        return sum / n;
+        return Region.mean(image, Region.ball(centre, radiusMm));
     }
 
     @Test

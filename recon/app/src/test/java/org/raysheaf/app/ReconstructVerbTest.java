@@ -23,18 +23,8 @@ import org.raysheaf.io.hdf5.Hdf5Writer;
 
 /** What a reconstruction takes, refuses and leaves behind; the lists are such as a few lines of h5py write. */
 class ReconstructVerbTest {
-    private static final String SYSTEM = """
-            raysheaf: system/1
-            name: pair
-            field_of_view: {radius_mm: 10, length_mm: 24}
-            materials: [{name: lyso, attenuation_length_mm: 12}]
-            blocks:
-              - {kind: crystal_block, name: tile, columns: 8, rows: 8, pitch_mm: [3, 3, 10], crystal_mm: [2.8, 2.8, 10], material: lyso}
-            placements:
-              - {kind: single, block: tile, centre_mm: [20, 0, 0], facing: [-1, 0, 0]}
-              - {kind: single, block: tile, centre_mm: [-20, 0, 0], facing: [1, 0, 0]}
-            """;
-    private static final int TILE = 64;
+    private static final String SYSTEM = TilePair.SYSTEM;
+    private static final int TILE = TilePair.CRYSTALS;
 
     @TempDir
     private static Path cache;

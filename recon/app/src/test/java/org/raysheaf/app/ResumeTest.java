@@ -18,23 +18,10 @@ import org.junit.jupiter.api.condition.DisabledOnOs;
 import org.junit.jupiter.api.condition.OS;
 import org.junit.jupiter.api.io.TempDir;
 import org.raysheaf.app.Calls.Outcome;
-import org.raysheaf.io.hdf5.Compression;
-import org.raysheaf.io.hdf5.ElementType;
 import org.raysheaf.io.hdf5.Hdf5Writer;
 
 /** A reconstruction that is killed, in a program of its own, goes on to the same bits. */
 class ResumeTest {
-    private static final String SYSTEM = """
-            raysheaf: system/1
-            name: pair
-            field_of_view: {radius_mm: 10, length_mm: 24}
-            materials: [{name: lyso, attenuation_length_mm: 12}]
-            blocks:
-              - {kind: crystal_block, name: tile, columns: 8, rows: 8, pitch_mm: [3, 3, 10], crystal_mm: [2.8, 2.8, 10], material: lyso}
-            placements:
-              - {kind: single, block: tile, centre_mm: [20, 0, 0], facing: [-1, 0, 0]}
-              - {kind: single, block: tile, centre_mm: [-20, 0, 0], facing: [1, 0, 0]}
-            """;
     private static final int EVENTS = 3000;
     /** So many that a run of a few seconds is sure to be met in the middle of them. */
     private static final int PASSES = 600;
@@ -50,17 +37,8 @@ class ResumeTest {
     @BeforeEach
     void writeListAndPlan() throws IOException {
         SplittableRandom random = new SplittableRandom(3);
-        try (Hdf5Writer writer = Hdf5Writer.create(folder.resolve("list.h5"), false)) {
-            writer.root().attribute("raysheaf", "list/1");
-            writer.root().attribute("live_time_s", 60.0);
-            writer.root().attribute("start", "2026-12-01T09:00:00Z");
-            writer.root().text("system", SYSTEM);
-            for (int tile = 0; tile < 2; tile++) {
-                int[] values = random.ints(EVENTS, 64 * tile, 64 * (tile + 1)).toArray();
-                writer.root()
-                        .column(tile == 0 ? "element_a" : "element_b", ElementType.UINT32, 1 << 10, Compression.NONE)
-                        .append(values, 0, EVENTS);
-            }
+        try (Hdf5Writer writer = TilePair.begin(folder.resolve("list.h5"), 60)) {
+            TilePair.randomPairs(writer, EVENTS, random);
             writer.commit();
         }
         plan = Files.writeString(

@@ -27,9 +27,7 @@ import org.raysheaf.geometry.event.Attribute;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.EventSource;
 import org.raysheaf.geometry.event.EventTally;
-import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
-import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
@@ -133,22 +131,7 @@ class TimesOfFlightTest {
     }
 
     private static double mean(Image image, double fromMm, double toMm) {
-        Grid grid = image.grid();
-        double sum = 0;
-        int n = 0;
-        for (int x = 0; x < grid.nx(); x++) {
-            for (int y = 0; y < grid.ny(); y++) {
-                for (int z = 0; z < grid.nz(); z++) {
-                    Vector3 p = grid.centre(x, y, z);
-                    double r = Math.hypot(p.x(), p.y());
-                    if (r >= fromMm && r < toMm && Math.abs(p.z()) < 16) {
-                        sum += image.at(x, y, z);
-                        n++;
-                    }
-                }
-            }
-        }
-        return sum / n;
+        return Region.mean(image, Region.shell(fromMm, toMm, -16, 16));
     }
 
     /** Both images are near the truth, the one with times nearer. */

@@ -13,9 +13,7 @@ import org.junit.jupiter.api.Tag;
 import org.junit.jupiter.api.Test;
 import org.junit.jupiter.api.io.TempDir;
 import org.raysheaf.app.Calls.Outcome;
-import org.raysheaf.geometry.frame.Grid;
 import org.raysheaf.geometry.frame.Image;
-import org.raysheaf.geometry.frame.Vector3;
 import org.raysheaf.io.volume.VolumeFile;
 
 /** A hot rod of 2.5 mm in a warm cylinder of water, seen by heron-12 with all physics: with its blur undone more of the rod's activity is found where it is. */
@@ -78,8 +76,8 @@ class UndoneBlurTest {
             Path out = folder.resolve("out");
             run("reconstruct", list, "--with", plan, "--out", out, "--replace");
             Image image = VolumeFile.read(out.resolve("activity.nii.gz")).image();
-            rods[seed] = mean(image, 5, 0.9);
-            warm += mean(image, -5, 4) / SEEDS;
+            rods[seed] = Region.mean(image, Region.rod(5, 0.9, 8));
+            warm += Region.mean(image, Region.rod(-5, 4, 8)) / SEEDS;
             total += image.sum() * image.grid().voxelVolumeMm3() * 1e-3 / SEEDS;
         }
         double rod = 0;
@@ -91,25 +89,6 @@ class UndoneBlurTest {
             squares += (r - rod) * (r - rod);
         }
         return new Found(rod, Math.sqrt(squares / (SEEDS - 1) / SEEDS), warm, total);
-    }
-
-    /** Within a radius of (x, 0), in the middle 16 mm. */
-    private static double mean(Image image, double xMm, double radiusMm) {
-        Grid grid = image.grid();
-        double sum = 0;
-        int n = 0;
-        for (int x = 0; x < grid.nx(); x++) {
-            for (int y = 0; y < grid.ny(); y++) {
-                for (int z = 0; z < grid.nz(); z++) {
-                    Vector3 p = grid.centre(x, y, z);
-                    if (Math.hypot(p.x() - xMm, p.y()) < radiusMm && Math.abs(p.z()) < 8) {
-                        sum += image.at(x, y, z);
-                        n++;
-                    }
-                }
-            }
-        }
-        return sum / n;
     }
 
     @Test
