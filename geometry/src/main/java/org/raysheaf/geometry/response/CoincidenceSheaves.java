@@ -23,6 +23,9 @@ import org.raysheaf.geometry.sheaf.SheafSampler;
  * of events are weighted along them.
  */
 public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
+    private static final double GOLDEN = (Math.sqrt(5) - 1) / 2;
+    private static final double SQRT_TWO = Math.sqrt(2);
+
     private final ElementResponse response;
     private final DetectorSystem system;
     private final double[] frames;
@@ -375,8 +378,11 @@ public final class CoincidenceSheaves implements SheafMaker, SheafCatalogue {
         PlacedBlock a = blockPairs.get(part)[0];
         PlacedBlock b = blockPairs.get(part)[1];
         for (int i = 0; i < a.kind().elements(); i++) {
-            // Along the diagonals, so that all elements of both blocks come in turn.
-            for (int j = (every - i % every) % every; j < b.kind().elements(); j += every) {
+            // Each row begins elsewhere, in no step with the columns of a block: else only some offsets would ever be
+            // met.
+            double begin = (i + 1) * GOLDEN + part * SQRT_TWO;
+            int start = (int) (every * (begin - Math.floor(begin)));
+            for (int j = start; j < b.kind().elements(); j += every) {
                 int first = a.firstElement() + i;
                 int second = b.firstElement() + j;
                 if (!silent[first] && !silent[second] && maker.line(first, second, line)) {
