@@ -76,11 +76,9 @@ final class NormalizeVerb extends Verb {
                 pairs.sheaves(new Positions(1, false, false)); // by elements, like the efficiencies
         Scatter scatter = pairs.scatter(activity, null, pool);
         if (scatter != null) {
-            // As in a reconstruction: what is clear of the source tells how much scattered twice and more.
-            Backgrounds.Balance balance = new Backgrounds(
-                            sheaves, pairs.randoms(), scatter, pairs.attenuation(), pairs.pairsPerUnit())
-                    .balance(list, pool);
-            scatter = scatter.scaled(balance.scatterScale());
+            // Not scaled on clear lines as in a reconstruction: what is missing there is scatter or efficiency, and
+            // nobody knows yet which.
+            scatter = scatter.scaled(Backgrounds.Balance.PRIOR_SCALE);
         }
         Efficiencies found = Efficiencies.of(
                 list,

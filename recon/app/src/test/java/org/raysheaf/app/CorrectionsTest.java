@@ -41,6 +41,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.geometry.response.CoincidenceSheaves;
 import org.raysheaf.geometry.response.ElementResponse;
+import org.raysheaf.geometry.response.LineOfResponse;
 import org.raysheaf.geometry.response.PairFactor;
 import org.raysheaf.geometry.response.WindowShares;
 import org.raysheaf.io.efficiency.EfficiencyFile;
@@ -360,9 +361,41 @@ class CorrectionsTest {
                 chi += pull * pull / (elements - dead.length);
             }
         }
-        System.out.printf("efficiencies: reduced chi square %.3f, scale %.4f (expected %.4f)%n", chi, scale, 1 / most);
         assertThat(chi).isBetween(0.8, 1.2);
-        assertThat(scale * most).isCloseTo(1, within(0.02));
+        // Only the product of efficiencies and block geometry has an absolute size: over true pairs, to which the fit
+        // gives it, it must be that
+        // of the thinning, whatever the one leaves to the other.
+        assertThat(productOverTruth(equal, out, truth) * most * most).isCloseTo(1, within(0.04));
+    }
+
+    /** Σ of the products found over Σ of the products drawn, over the unscattered pairs of the list before it was thinned. */
+    private static double productOverTruth(Path list, Path efficiencies, double[] truth) throws IOException {
+        Normalization found = Normalization.read(efficiencies, systems(list));
+        double[] efficiency = found.efficiencies();
+        PairFactor geometry = Objects.requireNonNull(found.geometry()).make();
+        LineOfResponse unused = new LineOfResponse();
+        double sum = 0;
+        double drawn = 0;
+        ListFile file = ListFile.open(list);
+        Set<Attribute> columns = EnumSet.copyOf(file.attributes());
+        columns.addAll(file.truth());
+        EventBlock block = new EventBlock(columns, 1 << 14);
+        try (EventSource.Cursor cursor = file.open()) {
+            while (cursor.next(block)) {
+                for (int i = 0; i < block.size(); i++) {
+                    int a = block.ints(Attribute.ELEMENT_A)[i];
+                    int b = block.ints(Attribute.ELEMENT_B)[i];
+                    boolean straight = block.bytes(Attribute.DELAYED)[i] == 0
+                            && block.bytes(Attribute.SAME_DECAY)[i] == 1
+                            && block.bytes(Attribute.OBJECT_SCATTERS)[i] == 0;
+                    if (straight) {
+                        sum += efficiency[a] * efficiency[b] * geometry.of(a, b, unused);
+                        drawn += truth[a] * truth[b];
+                    }
+                }
+            }
+        }
+        return sum / drawn;
     }
 
     /**

@@ -88,7 +88,7 @@ public final class Backgrounds {
             double attenuationLow,
             double attenuationMean) {
         /** What is known of the scale beforehand: scatter twice and more adds some per cent in small animals. */
-        private static final double PRIOR_SCALE = 1.07;
+        public static final double PRIOR_SCALE = 1.07;
 
         private static final double PRIOR_SD = 0.1;
 
