@@ -11,7 +11,7 @@ import org.raysheaf.geometry.sheaf.SheafCatalogue;
 
 /**
  * A quasi-random sample of the pairs of a system, each weighted so that sums over the sample estimate sums over all pairs without bias. Every
- * pair of blocks has a part of its own. In it the six coordinates of a Sobol sequence (as shifted, modulo 1, by random numbers that belong to part
+ * pair of blocks has parts of its own. In them the six coordinates of a Sobol sequence (as shifted, modulo 1, by random numbers that belong to pair
  * and replicate: Cranley & Patterson, SIAM Journal on Numerical Analysis 13 (1976) 904) say which two elements and, by what is left of
  * each coordinate within its element, where in them. Immutable, safe for use by several threads.
  *
@@ -20,6 +20,9 @@ import org.raysheaf.geometry.sheaf.SheafCatalogue;
  */
 final class SampledPairs implements SheafCatalogue {
     private static final int AXES = 6;
+    /** The most points of a part; longer samples have several parts for each pair of blocks. */
+    private static final int BATCH = 1 << 14;
+
     /** Which coordinate (u v w of a, u v w of b) each dimension of the sequence serves: the first ones are the most even. */
     private static final int[] AXIS_OF = {0, 3, 1, 4, 2, 5};
 
@@ -28,7 +31,10 @@ final class SampledPairs implements SheafCatalogue {
     private final int first;
     private final int points;
     private final long seed;
+    private final int batches;
+    /** The first batch, which all parts share. */
     private final double[] sequence;
+
     private final List<Cells> cells = new ArrayList<>();
 
     /** Elements of a block along u, v, w. */
@@ -44,18 +50,29 @@ final class SampledPairs implements SheafCatalogue {
         this.first = first;
         this.points = points;
         this.seed = seed;
-        this.sequence = new double[AXES * points];
-        SobolSequenceGenerator sobol = new SobolSequenceGenerator(AXES);
-        for (int i = 0; i < points; i++) {
-            double[] next = i == 0 ? sobol.skipTo(first) : sobol.nextVector();
-            for (int d = 0; d < AXES; d++) {
-                sequence[AXES * i + AXIS_OF[d]] = next[d];
-            }
-        }
+        this.batches = (points + BATCH - 1) / BATCH;
+        this.sequence = sequence(0);
         for (PlacedBlock block : sheaves.system().blocks()) {
             CrystalBlock lattice = block.kind().lattice();
             cells.add(new Cells(lattice.columns(), lattice.rows(), lattice.layers()));
         }
+    }
+
+    /** Six coordinates for each point of a batch. */
+    private double[] sequence(int batch) {
+        double[] coordinates = new double[AXES * size(batch)];
+        SobolSequenceGenerator sobol = new SobolSequenceGenerator(AXES);
+        for (int at = 0; at < coordinates.length; at += AXES) {
+            double[] next = at == 0 ? sobol.skipTo(first + batch * BATCH) : sobol.nextVector();
+            for (int d = 0; d < AXES; d++) {
+                coordinates[at + AXIS_OF[d]] = next[d];
+            }
+        }
+        return coordinates;
+    }
+
+    private int size(int batch) {
+        return Math.min(BATCH, points - batch * BATCH);
     }
 
     @Override
@@ -65,31 +82,34 @@ final class SampledPairs implements SheafCatalogue {
 
     @Override
     public int parts() {
-        return sheaves.parts();
+        return Math.multiplyExact(sheaves.parts(), batches);
     }
 
     @Override
     public int capacity(int part) {
-        return points;
+        return size(part % batches);
     }
 
     @Override
     public void fill(int part, SheafBundle out) {
-        PlacedBlock a = sheaves.block(part, 0);
-        PlacedBlock b = sheaves.block(part, 1);
+        int pair = part / batches;
+        int batch = part % batches;
+        PlacedBlock a = sheaves.block(pair, 0);
+        PlacedBlock b = sheaves.block(pair, 1);
         Cells ofA = cells.get(a.index());
         Cells ofB = cells.get(b.index());
         double each = (double) ofA.count() * ofB.count() / points;
         double[] shift = new double[AXES];
         for (int axis = 0; axis < AXES; axis++) {
-            shift[axis] = unit(Strata.mix(Strata.mix(seed + part) + axis));
+            shift[axis] = unit(Strata.mix(Strata.mix(seed + pair) + axis));
         }
+        double[] coordinates = batch == 0 ? sequence : sequence(batch);
         double[] shares = new double[AXES];
         PairCaster caster = sheaves.caster();
         SplittableRandom blur = new SplittableRandom(Strata.mix(seed - part) + first);
-        for (int i = 0; i < points; i++) {
+        for (int i = 0; i < size(batch); i++) {
             for (int axis = 0; axis < AXES; axis++) {
-                double x = sequence[AXES * i + axis] + shift[axis];
+                double x = coordinates[AXES * i + axis] + shift[axis];
                 shares[axis] = x < 1 ? x : x - 1;
             }
             int one = a.firstElement() + take(ofA, shares, 0);

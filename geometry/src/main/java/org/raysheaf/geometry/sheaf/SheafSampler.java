@@ -12,7 +12,7 @@ public interface SheafSampler {
      *
      * @param replicate which of the independent sequences
      * @param first place in the sequence where the sample begins; samples that follow each other may be averaged
-     * @param points how many sheaves are tried in every part, best a power of two that divides first
+     * @param points how many sheaves are tried for every pair of blocks, best a power of two that divides first
      * @return the sample
      */
     SheafCatalogue draw(int replicate, int first, int points);

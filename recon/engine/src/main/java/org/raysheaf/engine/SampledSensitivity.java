@@ -64,7 +64,9 @@ public record SampledSensitivity(Image mean, Image standardError, double relativ
             int points = Math.max(FIRST_ROUND, drawn);
             for (int replicate = 0; replicate < REPLICATES; replicate++) {
                 SheafCatalogue sample = sampler.draw(replicate, drawn, points);
-                sheaves += (long) sample.parts() * points;
+                for (int part = 0; part < sample.parts(); part++) {
+                    sheaves += sample.capacity(part);
+                }
                 add(Sensitivity.of(sample, grid, pool, Progress.SILENT), points, sums[replicate]);
             }
             drawn += points;
