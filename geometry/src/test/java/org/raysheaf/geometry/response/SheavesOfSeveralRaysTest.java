@@ -303,13 +303,20 @@ class SheavesOfSeveralRaysTest {
                         new Placement.Single("square", new Vector3(-0.5, 0, 0), Vector3.X, Vector3.Z)));
         CoincidenceSheaves sheaves = new CoincidenceSheaves(ElementResponse.ofFaces(system));
         SheafCatalogue sample = sheaves.sampler(3, 10).draw(0, 0, 4096);
-        SheafBundle bundle = new SheafBundle(1, sample.capacity(0));
-        sample.fill(0, bundle);
+        assertThat(2 * weight(sample, 0)).isCloseTo(0.1998248957, within(0.001 * 0.2));
+        SheafCatalogue longer = sheaves.sampler(3, 10).draw(0, 65536, 65536);
+        assertThat(longer.parts()).isEqualTo(4);
         double sum = 0;
-        for (int i = 0; i < bundle.size(); i++) {
-            sum += bundle.weights()[i];
+        for (int part = 0; part < longer.parts(); part++) {
+            sum += weight(longer, part);
         }
-        assertThat(2 * sum).isCloseTo(0.1998248957, within(0.001 * 0.2));
+        assertThat(2 * sum).isCloseTo(0.1998248957, within(0.0002 * 0.2));
+        // the second part goes on in the sequence where the first ends
+        SheafBundle second = new SheafBundle(1, longer.capacity(1));
+        longer.fill(1, second);
+        SheafBundle alone = new SheafBundle(1, longer.capacity(1));
+        sheaves.sampler(3, 10).draw(0, 65536 + 16384, 16384).fill(0, alone);
+        assertThat(second.rays()).isEqualTo(alone.rays());
     }
 
     /** The sample of a catalogue whose pairs all count alike: weights add up to those of the catalogue. */
