@@ -72,9 +72,6 @@ class SampledSensitivityTest {
                 }
             }
         }
-        System.err.printf(
-                "n %d mean z %.3f, mean z² %.3f, far %.5f, rms %.5f of %.5f%n",
-                n, sum / n, squares / n, (double) far / n, Math.sqrt(ratios / n), sampled.relativeError());
         assertThat(sampled.relativeError()).isLessThan(0.005);
         assertThat(sum / n).isCloseTo(0, within(0.2));
         assertThat(squares / n).isBetween(1.1, 1.8);
