@@ -66,6 +66,21 @@ public final class Pose {
         return ofAxes(Vector3.ZERO, turn(Vector3.X, k, c, s), turn(Vector3.Y, k, c, s), turn(Vector3.Z, k, c, s));
     }
 
+    /**
+     * Turned about the x axis by the first angle, then about y by the second, then about z by the third (right-hand rule), then moved: how
+     * descriptions tell a pose.
+     *
+     * @param turnDeg the three angles (degrees)
+     * @param shiftMm by how much it is moved (mm)
+     * @return the pose
+     */
+    public static Pose turnedAndShifted(Vector3 turnDeg, Vector3 shiftMm) {
+        return shift(shiftMm)
+                .after(rotation(Vector3.Z, Math.toRadians(turnDeg.z())))
+                .after(rotation(Vector3.Y, Math.toRadians(turnDeg.y())))
+                .after(rotation(Vector3.X, Math.toRadians(turnDeg.x())));
+    }
+
     private static Vector3 turn(Vector3 a, Vector3 k, double c, double s) {
         return a.times(c).plus(k.cross(a).times(s)).plus(k.times(k.dot(a) * (1 - c)));
     }

@@ -57,16 +57,9 @@ public record MotionDescription(
 
         /** The pose on the way to another one: 0 for this, 1 for that. */
         Pose towards(TimedPose next, double share) {
-            return pose(
+            return Pose.turnedAndShifted(
                     turnDeg.plus(next.turnDeg.minus(turnDeg).times(share)),
                     shiftMm.plus(next.shiftMm.minus(shiftMm).times(share)));
-        }
-
-        private static Pose pose(Vector3 turnDeg, Vector3 shiftMm) {
-            return Pose.shift(shiftMm)
-                    .after(Pose.rotation(Vector3.Z, Math.toRadians(turnDeg.z())))
-                    .after(Pose.rotation(Vector3.Y, Math.toRadians(turnDeg.y())))
-                    .after(Pose.rotation(Vector3.X, Math.toRadians(turnDeg.x())));
         }
     }
 

@@ -41,11 +41,7 @@ public final class Placed implements Solid {
      * @return the placed solid
      */
     public static Placed turned(Shape shape, Vector3 turnDeg, Vector3 centreMm) {
-        Pose aboutX = Pose.rotation(Vector3.X, Math.toRadians(turnDeg.x()));
-        Pose aboutY = Pose.rotation(Vector3.Y, Math.toRadians(turnDeg.y()));
-        Pose aboutZ = Pose.rotation(Vector3.Z, Math.toRadians(turnDeg.z()));
-        return new Placed(
-                shape, Pose.shift(centreMm).after(aboutZ).after(aboutY).after(aboutX));
+        return new Placed(shape, Pose.turnedAndShifted(turnDeg, centreMm));
     }
 
     private static double along(Vector3 axis, double x, double y, double z) {

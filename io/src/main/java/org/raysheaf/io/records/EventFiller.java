@@ -6,6 +6,7 @@ import java.util.List;
 import java.util.Map;
 import java.util.Set;
 import org.raysheaf.geometry.event.Attribute;
+import org.raysheaf.geometry.event.ColumnType;
 import org.raysheaf.geometry.event.EventBlock;
 import org.raysheaf.geometry.event.ValueRange;
 
@@ -110,8 +111,8 @@ final class EventFiller {
             return;
         }
         double[] values = column.doubles();
-        boolean isReal = target.attribute().type() == org.raysheaf.geometry.event.ColumnType.FLOAT32;
-        boolean isTime = target.attribute().type() == org.raysheaf.geometry.event.ColumnType.INT64;
+        boolean isReal = target.attribute().type() == ColumnType.FLOAT32;
+        boolean isTime = target.attribute().type() == ColumnType.INT64;
         for (int i = 0; i < size; i++) {
             double value = isTime ? Math.rint(values[i]) : values[i];
             boolean possible = value >= target.lowest() && value <= target.highest(); // not if it is NaN

@@ -25,8 +25,6 @@ import org.raysheaf.io.list.ListFile;
  * @param named as result.json says it
  */
 record BlurChoice(BlurModel model, Map<String, Object> named) {
-    private static final double FWHM_PER_SIGMA = 2 * Math.sqrt(2 * Math.log(2));
-
     /** What a plan asks for, or null if it asks for nothing. */
     static @Nullable BlurChoice of(
             ReconstructionPlan plan, ListFile list, Path path, DetectorSystem system, Grid grid, ForkJoinPool pool)
@@ -68,7 +66,7 @@ record BlurChoice(BlurModel model, Map<String, Object> named) {
         }
         List<Mixture.Part> parts = new ArrayList<>();
         for (BlurSettings.Gaussian gaussian : settings.kernel()) {
-            parts.add(new Mixture.Part(gaussian.share(), gaussian.fwhmMm() / FWHM_PER_SIGMA));
+            parts.add(Mixture.Part.ofFwhm(gaussian.share(), gaussian.fwhmMm()));
         }
         Mixture kernel = new Mixture(parts);
         named.put("measured_kernel_rms_mm", kernel.rmsMm());

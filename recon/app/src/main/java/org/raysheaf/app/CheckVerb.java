@@ -18,6 +18,7 @@ import org.raysheaf.geometry.phantom.Phantom;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.io.description.DescriptionReader;
 import org.raysheaf.io.list.ListFile;
+import org.raysheaf.io.list.ListFileException;
 import org.raysheaf.io.picture.BoxOutline;
 import org.raysheaf.io.picture.DetectorPicture;
 import org.raysheaf.io.records.RecordImport;
@@ -198,7 +199,7 @@ final class CheckVerb extends Verb {
         ListFile opened;
         try {
             opened = ListFile.open(file);
-        } catch (org.raysheaf.io.list.ListFileException notAList) {
+        } catch (ListFileException notAList) {
             try {
                 volume(file, figures);
                 return;

@@ -9,6 +9,7 @@ import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.port.Progress;
 import org.raysheaf.io.cache.Cache;
 import org.raysheaf.io.file.AtomicFile;
+import org.raysheaf.io.result.ResultFile;
 import picocli.CommandLine.Model.CommandSpec;
 import picocli.CommandLine.Option;
 import picocli.CommandLine.ParameterException;
@@ -136,7 +137,7 @@ final class Common {
     void print(Object results, Iterable<String> lines) {
         PrintStream out = System.out;
         if (json) {
-            out.print(org.raysheaf.io.result.ResultFile.render(results));
+            out.print(ResultFile.render(results));
         } else {
             lines.forEach(out::println);
         }

@@ -5,6 +5,7 @@ import java.nio.file.Path;
 import java.util.ArrayList;
 import java.util.LinkedHashMap;
 import java.util.List;
+import java.util.Locale;
 import java.util.Map;
 import org.jspecify.annotations.Nullable;
 import org.raysheaf.geometry.event.Attribute;
@@ -56,7 +57,9 @@ record Frame(String name, Map<String, Object> where, ListPart part) {
             where.put("from_s", edges[i]);
             where.put("to_s", edges[i + 1]);
             frames.add(new Frame(
-                    String.format("frame-%02d", i + 1), where, ListPart.between(list, edges[i], edges[i + 1])));
+                    String.format(Locale.ROOT, "frame-%02d", i + 1),
+                    where,
+                    ListPart.between(list, edges[i], edges[i + 1])));
         }
         return frames;
     }

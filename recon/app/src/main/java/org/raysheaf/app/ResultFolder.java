@@ -245,8 +245,7 @@ final class ResultFolder {
                     frame.frame().where()));
         }
         if (!done.model().left().isEmpty()) {
-            lines.add("           not corrected for "
-                    + String.join(", ", done.model().left()));
+            lines.add("left out   " + String.join("; ", done.model().left()));
         }
         lines.add("written    " + folder);
         for (String name : NAMES) {

@@ -36,11 +36,11 @@ record TimesOfFlight(EventSource list, DetectorSystem system, Corrections.TimeOf
             if (wanted == Corrections.TimeOfFlight.ALWAYS) {
                 throw new IOException("time_of_flight: always, but " + obstacle);
             }
-            applied.leave("time of flight: " + obstacle);
+            applied.leave("time of flight (" + obstacle + ")");
             return null;
         }
         if (wanted == Corrections.TimeOfFlight.NEVER) {
-            applied.leave("time of flight: the plan says never");
+            applied.leave("time of flight (the plan says never)");
             return null;
         }
         double sdMm = meanSdMm(sheaves, times);
@@ -48,8 +48,8 @@ record TimesOfFlight(EventSource list, DetectorSystem system, Corrections.TimeOf
         if (wanted == Corrections.TimeOfFlight.AUTO && sdMm > radiusMm) {
             applied.leave(String.format(
                     Locale.ROOT,
-                    "time of flight: it tells the place to %.1f mm (standard deviation), too little in a field of view of"
-                            + " radius %s mm",
+                    "time of flight (it tells the place to %.1f mm (standard deviation), too little in a field of view of"
+                            + " radius %s mm)",
                     sdMm,
                     radiusMm));
             return null;

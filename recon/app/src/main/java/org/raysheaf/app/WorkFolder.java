@@ -45,9 +45,7 @@ final class WorkFolder {
         this.results = results;
         this.folder = results.resolve(FOLDER);
         this.request = request;
-        Path parent = results.toAbsolutePath().getParent();
-        this.scratch =
-                scratch != null || parent == null ? Optional.ofNullable(scratch).orElse(results) : parent;
+        this.scratch = scratch != null ? scratch : results.toAbsolutePath().resolveSibling("");
         this.interruption = interruption;
     }
 

@@ -55,22 +55,13 @@ final class Likelihood {
      * Prepares the sums.
      *
      * @param store the events
-     * @param sensitivity expected counts of the whole list per Bq/mL in each voxel; above 0 wherever the store's support is
-     * @param lanes accumulator images; 0 lets the problem decide
-     * @param pool does the work
-     * @throws IllegalArgumentException if the sensitivity has another shape, or if voxels of the support have none
-     */
-    Likelihood(EventStore store, Image sensitivity, int lanes, ForkJoinPool pool) {
-        this(store, sensitivity, null, store.subsets(), 0, lanes, pool);
-    }
-
-    /**
-     * Prepares the sums, with blur and with events kept out.
-     *
-     * @param sensitivity as without blur
+     * @param sensitivity expected counts of the whole list per Bq/mL in each voxel, as without blur; above 0 wherever the store's support is
      * @param model what blurs the image, or null for nothing
      * @param subsets in how many subsets to take the parts of the store
      * @param heldOutEvery k: part k − 1, 2k − 1 … of the store, and so every k-th event, is kept out; 0 for none
+     * @param lanes accumulator images; 0 lets the problem decide
+     * @param pool does the work
+     * @throws IllegalArgumentException if the sensitivity has another shape, or if voxels of the support have none
      */
     Likelihood(
             EventStore store,

@@ -49,6 +49,17 @@ public record Mixture(List<Part> parts) {
      */
     public record Part(double weight, double sigmaMm) {
         /**
+         * A Gaussian of some width.
+         *
+         * @param weight its share of the whole, at least 0
+         * @param fwhmMm full width at half maximum (mm), at least 0
+         * @return the part
+         */
+        public static Part ofFwhm(double weight, double fwhmMm) {
+            return new Part(weight, fwhmMm / FWHM_PER_SIGMA);
+        }
+
+        /**
          * Its full width at half maximum.
          *
          * @return FWHM (mm)
